@@ -1,0 +1,111 @@
+// Runs of a study revision, and the results of their points.
+import { sql } from 'drizzle-orm'
+import {
+  check,
+  date,
+  doublePrecision,
+  index,
+  integer,
+  jsonb,
+  pgTable,
+  primaryKey,
+  text,
+  uuid,
+} from 'drizzle-orm/pg-core'
+import { float8Array, id, moment } from './columns.ts'
+import { person } from './person.ts'
+import { study, studyRevision } from './study.ts'
+
+export const RUN_STATES = ['queued', 'running', 'done', 'cancelled', 'failed'] as const
+export type RunState = (typeof RUN_STATES)[number]
+
+export const run = pgTable(
+  'run',
+  {
+    id: id(),
+    studyId: uuid('study_id')
+      .notNull()
+      .references(() => study.id),
+    revisionId: uuid('revision_id')
+      .notNull()
+      .references(() => studyRevision.id),
+    engineVersion: text('engine_version').notNull(),
+    points: integer('points').notNull(),
+    chunkPoints: integer('chunk_points').notNull(),
+    state: text('state', { enum: RUN_STATES }).notNull().default('queued'),
+    requestedBy: uuid('requested_by').references(() => person.id),
+    plannedAt: moment('planned_at').notNull().defaultNow(),
+    // The partition of point_column that holds this run's results.
+    plannedOn: date('planned_on', { mode: 'string' }).notNull().default(sql`(now() at time zone 'utc')::date`),
+    startedAt: moment('started_at'),
+    endedAt: moment('ended_at'),
+    cancelRequestedAt: moment('cancel_requested_at'),
+    // SHA-256 over the stored results in point order: the same for any number of workers, order or interruption.
+    contentHash: text('content_hash'),
+    bestPoint: integer('best_point'),
+    refined: jsonb('refined').$type<Record<string, unknown>>(),
+    // Why a failed run failed, for people.
+    fault: text('fault'),
+  },
+  (t) => [
+    index('run_study_planned').on(t.studyId, t.plannedAt),
+    check('run_state', sql`${t.state} in ('queued', 'running', 'done', 'cancelled', 'failed')`),
+    check('run_points', sql`${t.points} between 1 and 1000000`),
+    check('run_chunk_points', sql`${t.chunkPoints} >= 1`),
+  ],
+)
+
+/** One row per stored chunk; its existence is what makes the chunk done, whoever computed it. */
+export const runChunk = pgTable(
+  'run_chunk',
+  {
+    runId: uuid('run_id')
+      .notNull()
+      .references(() => run.id, { onDelete: 'cascade' }),
+    chunk: integer('chunk').notNull(),
+    firstPoint: integer('first_point').notNull(),
+    points: integer('points').notNull(),
+    bestPoint: integer('best_point'),
+    bestObjective: doublePrecision('best_objective'),
+    contentHash: text('content_hash'),
+    computeSeconds: doublePrecision('compute_seconds'),
+    storedAt: moment('stored_at').notNull().defaultNow(),
+  },
+  (t) => [primaryKey({ columns: [t.runId, t.chunk] })],
+)
+
+/** Partitioned by range of planned_on, one month a partition (SQL in the migration): old runs leave by DROP TABLE. */
+export const pointColumn = pgTable(
+  'point_column',
+  {
+    plannedOn: date('planned_on', { mode: 'string' }).notNull(),
+    runId: uuid('run_id').notNull(),
+    column: text('column').notNull(),
+    chunk: integer('chunk').notNull(),
+    vals: float8Array('vals').notNull(),
+  },
+  (t) => [primaryKey({ columns: [t.runId, t.column, t.chunk, t.plannedOn] })],
+)
+
+export const POINT_RESULT_KINDS = ['best', 'refined', 'pinned'] as const
+
+/** Full results kept with the record, so that no later engine can change what was shown. */
+export const pointResult = pgTable(
+  'point_result',
+  {
+    runId: uuid('run_id')
+      .notNull()
+      .references(() => run.id, { onDelete: 'cascade' }),
+    kind: text('kind', { enum: POINT_RESULT_KINDS }).notNull(),
+    point: integer('point').notNull(),
+    engineVersion: text('engine_version').notNull(),
+    case: jsonb('case').$type<Record<string, unknown>>().notNull(),
+    result: jsonb('result').$type<Record<string, unknown>>().notNull(),
+    storedAt: moment('stored_at').notNull().defaultNow(),
+  },
+  (t) => [primaryKey({ columns: [t.runId, t.kind, t.point] })],
+)
+
+export type Run = typeof run.$inferSelect
+export type RunChunk = typeof runChunk.$inferSelect
+export type PointResult = typeof pointResult.$inferSelect
