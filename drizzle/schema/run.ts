@@ -36,7 +36,9 @@ export const run = pgTable(
     requestedBy: uuid('requested_by').references(() => person.id),
     plannedAt: moment('planned_at').notNull().defaultNow(),
     // The partition of point_column that holds this run's results.
-    plannedOn: date('planned_on', { mode: 'string' }).notNull().default(sql`(now() at time zone 'utc')::date`),
+    plannedOn: date('planned_on', { mode: 'string' })
+      .notNull()
+      .default(sql`(now() at time zone 'utc')::date`),
     startedAt: moment('started_at'),
     endedAt: moment('ended_at'),
     cancelRequestedAt: moment('cancel_requested_at'),

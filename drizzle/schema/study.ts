@@ -1,6 +1,17 @@
 // Studies, their append-only revisions, and the drafts people have open.
 import { sql } from 'drizzle-orm'
-import { boolean, check, index, integer, jsonb, pgTable, primaryKey, text, uniqueIndex, uuid } from 'drizzle-orm/pg-core'
+import {
+  boolean,
+  check,
+  index,
+  integer,
+  jsonb,
+  pgTable,
+  primaryKey,
+  text,
+  uniqueIndex,
+  uuid,
+} from 'drizzle-orm/pg-core'
 import { id, moment } from './columns.ts'
 import { person } from './person.ts'
 import { project } from './project.ts'
