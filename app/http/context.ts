@@ -1,7 +1,6 @@
 // What the gate hands to loaders and actions through React Router's context.
 import { createContext } from 'react-router'
 import type { Role, Theme, Units } from '#drizzle/schema/person.ts'
-import type { Permission } from './permissions.ts'
 
 export type Viewer = {
   personId: string
@@ -30,7 +29,7 @@ export const visitorContext = createContext<Viewer | null>(null)
 export const projectContext = createContext<ProjectScope>()
 /** The content security policy's nonce for this response; scripts that carry it run. */
 export const nonceContext = createContext<string>()
+/** The refusal or defect that ended a resource route, so that its answer can say so. */
+export const failureContext = createContext<unknown>(undefined)
 /** Where the request came from, for the audit trail. */
 export const addressContext = createContext<string>('')
-
-export type { Permission }

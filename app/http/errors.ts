@@ -1,5 +1,4 @@
 // Errors that modules throw, and the responses they become. Only this file knows status codes.
-import { data } from 'react-router'
 
 const STATUS = {
   'bad-request': 400,
@@ -15,33 +14,45 @@ const STATUS = {
 
 export type AppErrorCode = keyof typeof STATUS
 
-/** A refusal with a sentence for the person: what is wrong and what to do. Anything else thrown is a defect. */
+export type AppErrorData = { code: AppErrorCode; message: string }
+
+/**
+ * A refusal with a sentence for the person: what is wrong and what to do. Anything else thrown is a defect.
+ *
+ * It has the shape that React Router gives to a thrown `data(…, { status })`, so a loader or action need not catch it:
+ * error boundaries receive status and `AppErrorData`, resource routes answer the same as JSON (`failureOf` and the
+ * response middleware see to that).
+ */
 export class AppError extends Error {
   readonly code: AppErrorCode
+  readonly type = 'DataWithResponseInit'
+  readonly data: AppErrorData
+  readonly init: { status: number }
+
   constructor(code: AppErrorCode, message: string) {
     super(message)
     this.name = 'AppError'
     this.code = code
+    this.data = { code, message }
+    this.init = { status: STATUS[code] }
   }
 }
 
 export function statusOf(error: unknown): number {
-  return error instanceof AppError ? STATUS[error.code] : 500
-}
-
-/** What a page route throws so that the error boundary receives status and sentence. */
-export function toRouteError(error: AppError) {
-  return data({ code: error.code, message: error.message }, { status: statusOf(error) })
+  return error instanceof AppError ? error.init.status : 500
 }
 
 /** What a resource route or the API answers. */
-export function toJsonResponse(error: AppError): Response {
-  return Response.json({ error: error.code, message: error.message }, { status: statusOf(error) })
+export function toJsonResponse({ code, message }: AppErrorData): Response {
+  return Response.json({ error: code, message }, { status: STATUS[code] })
 }
 
-/** The sentence of a caught route error, for error boundaries. */
-export function messageOf(routeErrorData: unknown): string | null {
-  if (typeof routeErrorData !== 'object' || routeErrorData === null) return null
-  const { message } = routeErrorData as { message?: unknown }
-  return typeof message === 'string' ? message : null
+/** The refusal inside a caught error, whether thrown here or handed to an error boundary; null for defects. */
+export function failureOf(error: unknown): AppErrorData | null {
+  if (error instanceof AppError) return error.data
+  if (typeof error !== 'object' || error === null || !('data' in error)) return null
+  const { data } = error
+  if (typeof data !== 'object' || data === null) return null
+  const { code, message } = data as Partial<AppErrorData>
+  return typeof code === 'string' && code in STATUS && typeof message === 'string' ? { code, message } : null
 }

@@ -20,7 +20,6 @@ CREATE TABLE "audit_entry" (
 --> statement-breakpoint
 CREATE TABLE "auth_flow" (
 	"id_hash" text PRIMARY KEY NOT NULL,
-	"state" text NOT NULL,
 	"nonce" text NOT NULL,
 	"code_verifier" text NOT NULL,
 	"return_to" text NOT NULL,
@@ -159,7 +158,6 @@ CREATE TABLE "study_revision" (
 	"study_id" uuid NOT NULL,
 	"number" integer NOT NULL,
 	"definition" jsonb NOT NULL,
-	"valid" boolean NOT NULL,
 	"created_by" uuid,
 	"created_at" timestamp with time zone DEFAULT now() NOT NULL,
 	CONSTRAINT "study_revision_number_from_one" CHECK ("study_revision"."number" >= 1)

@@ -44,7 +44,7 @@ export const person = pgTable(
 export const session = pgTable(
   'session',
   {
-    // SHA-256 of the cookie's value, in hexadecimal: a copy of this table signs nobody in.
+    // Keyed hash of the cookie's value: a copy of this table signs nobody in.
     idHash: text('id_hash').primaryKey(),
     // Names the session in lists and when revoking one, without being able to use it.
     publicId: uuid('public_id').notNull().unique().default(sql`gen_random_uuid()`),
@@ -65,9 +65,9 @@ export const session = pgTable(
 export const authFlow = pgTable(
   'auth_flow',
   {
-    // SHA-256 of the flow cookie's value: ties the provider's answer to the browser that asked.
+    // Hash over the flow cookie's value and the state parameter: only the browser that asked, with the answer to this
+    // very question, finds the row. Taking the row deletes it, so an answer counts once.
     idHash: text('id_hash').primaryKey(),
-    state: text('state').notNull(),
     nonce: text('nonce').notNull(),
     codeVerifier: text('code_verifier').notNull(),
     returnTo: text('return_to').notNull(),

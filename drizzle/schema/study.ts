@@ -51,8 +51,6 @@ export const studyRevision = pgTable(
       .references(() => study.id),
     number: integer('number').notNull(),
     definition: jsonb('definition').$type<Record<string, unknown>>().notNull(),
-    // False for what was kept without being ready to run (a blank start, a file with faults).
-    valid: boolean('valid').notNull(),
     createdBy: uuid('created_by').references(() => person.id),
     createdAt: moment('created_at').notNull().defaultNow(),
   },
