@@ -1,24 +1,32 @@
 /** The one registry of correlation cards: listings, documentation, validation and tests all walk it. */
 import type { Card, CardChoice, FluidProperty, MethodChoice } from './card.ts'
 import { crossflowCards } from './crossflow.ts'
+import { dropwiseCards } from './dropwise.ts'
 import { economicsCards } from './economics.ts'
 import { filmCards } from './film.ts'
+import { finCards } from './fins.ts'
 import { frictionCards } from './friction.ts'
+import { gasCards } from './gas.ts'
 import { geometryCards } from './geometry.ts'
 import { inundationCards } from './inundation.ts'
 import { shearCards } from './shear.ts'
 import { tubeSideCards } from './tube-side.ts'
 import { vapourDropCards } from './vapour-drop.ts'
+import { verticalFilmCards } from './vertical-film.ts'
 
 /** Every card, in the order a reader meets them. */
 export const cards: readonly Card[] = [
   ...filmCards,
   ...inundationCards,
   ...shearCards,
+  ...finCards,
+  ...dropwiseCards,
+  ...gasCards,
   ...tubeSideCards,
   ...frictionCards,
   ...vapourDropCards,
   ...crossflowCards,
+  ...verticalFilmCards,
   ...geometryCards,
   ...economicsCards,
 ]

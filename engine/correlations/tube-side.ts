@@ -94,7 +94,7 @@ export function siederTateTurbulent(re: number, pr: number, viscosityFactor = 1)
  */
 export function siederTate(re: number, pr: number, diameterOverLength: number, viscosityFactor = 1): number {
   if (re >= FULLY_TURBULENT) return siederTateTurbulent(re, pr, viscosityFactor)
-  const laminarRe = re < LAMINAR_LIMIT ? re : LAMINAR_LIMIT
+  const laminarRe = Math.min(re, LAMINAR_LIMIT)
   const laminar = Math.max(3.66, siederTateLaminar(laminarRe * pr * diameterOverLength, viscosityFactor))
   if (re <= LAMINAR_LIMIT) return laminar
   const w = (re - LAMINAR_LIMIT) / (FULLY_TURBULENT - LAMINAR_LIMIT)
