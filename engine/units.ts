@@ -577,11 +577,8 @@ const clip = (text: string) => (text.length > 40 ? `${text.slice(0, 40)}…` : t
 
 /** `value` in `unit` as SI, to fifteen digits, so that "19.05 mm" is 0.01905 and not 0.019049999999999998. */
 function scale(value: number, unit: Unit): number {
-  const shifted = value + (unit.shift ?? 0)
-  const inverse = Math.round(1 / unit.factor)
-  return unit.factor < 1 && Math.abs(inverse * unit.factor - 1) < 1e-15
-    ? shifted / inverse
-    : shifted * unit.factor
+  if (unit.factor === 1 && unit.shift === undefined) return value
+  return Number(((value + (unit.shift ?? 0)) * unit.factor).toPrecision(15))
 }
 
 type Shown = { unit: string; of: string }

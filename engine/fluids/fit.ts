@@ -149,15 +149,15 @@ export function fitFluid(
   const segments = ends.length - 1
   const data = new Float64Array(segments * STRIDE)
   const T = columns.T
-  const put = (offset: number, step: number, series: number[][]) => {
+  const put = (offset: number, series: number[][]) => {
     for (let s = 0; s < segments; s++)
-      for (let k = 0; k < TERMS; k++) data[s * STRIDE + offset + k * step] = series[s][k]
+      for (let k = 0; k < TERMS; k++) data[s * STRIDE + offset + k] = series[s][k]
   }
   const relative = (y: number[]) => fitPiecewise(T, y, ends, { relative: true, terms })
   const logarithm = (y: number[]) => fitPiecewise(T, y.map(Math.log), ends, { relative: false, terms })
   const liquid = [columns.rhoL, columns.cpL, columns.muL, columns.kL, columns.sigma]
   liquid.forEach((y, n) => {
-    put(LIQUID + n, liquid.length, relative(y))
+    put(LIQUID + n * TERMS, relative(y))
   })
   const lnP = logarithm(columns.p)
   const vapour = [
@@ -169,7 +169,7 @@ export function fitFluid(
     relative(columns.kV),
   ]
   vapour.forEach((series, n) => {
-    put(VAPOUR + n, vapour.length, series)
+    put(VAPOUR + n * TERMS, series)
   })
   const value = (s: number, z: number) => chebyshev(z, TERMS).reduce((sum, t, k) => sum + t * lnP[s][k], 0)
   const inverseX: number[] = []
@@ -225,7 +225,7 @@ export function fitCoolant(
     data[base + 1] = 0.5 * (ends[s] + ends[s + 1])
     data[base + 2] = 2 / (ends[s + 1] - ends[s])
     for (let k = 0; k < TERMS; k++)
-      for (let n = 0; n < 4; n++) data[base + COOLANT_SERIES + 4 * k + n] = series[n][s][k]
+      for (let n = 0; n < 4; n++) data[base + COOLANT_SERIES + n * TERMS + k] = series[n][s][k]
   }
   return {
     ...identity,

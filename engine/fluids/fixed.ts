@@ -7,6 +7,7 @@ import {
   INVERSE,
   LIQUID,
   STRIDE,
+  TERMS,
   VAPOUR,
 } from './model.ts'
 
@@ -55,10 +56,10 @@ export function fixedFluid(properties: FixedFluidProperties): FluidModel {
     properties.vapourConductivity,
   ]
   liquid.forEach((value, n) => {
-    data[LIQUID + n] = value ?? Number.NaN
+    data[LIQUID + n * TERMS] = value ?? Number.NaN
   })
   vapour.forEach((value, n) => {
-    data[VAPOUR + n] = value ?? Number.NaN
+    data[VAPOUR + n * TERMS] = value ?? Number.NaN
   })
   data[INVERSE] = Number.POSITIVE_INFINITY
   return {
@@ -79,9 +80,9 @@ export function fixedCoolant(properties: FixedCoolantProperties): CoolantModel {
   const data = new Float64Array(COOLANT_STRIDE)
   data[0] = Number.POSITIVE_INFINITY
   data[COOLANT_SERIES] = properties.density
-  data[COOLANT_SERIES + 1] = properties.specificHeat
-  data[COOLANT_SERIES + 2] = properties.viscosity
-  data[COOLANT_SERIES + 3] = properties.conductivity
+  data[COOLANT_SERIES + TERMS] = properties.specificHeat
+  data[COOLANT_SERIES + 2 * TERMS] = properties.viscosity
+  data[COOLANT_SERIES + 3 * TERMS] = properties.conductivity
   return {
     id: 'fixed',
     data,

@@ -1,19 +1,19 @@
 /**
  * The numeric record of a fluid or coolant and its evaluation: piecewise Chebyshev series in temperature,
- * several properties in one Clenshaw sweep, nothing allocated.
+ * several properties per look-up, nothing allocated.
  *
  * Library fluids, fixed properties and fitted uploads share one record, so every call site stays monomorphic.
  *
  * Layout of `data`, one block of STRIDE numbers per temperature segment, coldest first:
  *   [0] upper temperature of the segment (+Infinity in the last)      [1] middle   [2] 1 / half width   [K]
- *   [LIQUID …]  TERMS × (rho_l, cp_l, mu_l, k_l, sigma), term by term, term 0 first
- *   [VAPOUR …]  TERMS × (ln p, ln rho_v, h_fg, cp_v, mu_v, k_v)
+ *   [LIQUID …]  rho_l, cp_l, mu_l, k_l, sigma: TERMS coefficients each, term 0 first
+ *   [VAPOUR …]  ln p, ln rho_v, h_fg, cp_v, mu_v, k_v: likewise
  *   [INVERSE …] upper ln p, middle, 1 / half width, then TERMS of T(ln p)
  * Adjoining segments meet in value and slope. Outside the range temperature is clamped to its ends, except
  * that ln p goes on as a straight line in 1/T; the caller says so with a note (`outsideRange`).
  */
 
-/** Chebyshev terms of every series in every segment. */
+/** Chebyshev terms of every series in every segment; `series` and `logPressure` are written out for six. */
 export const TERMS = 6
 const LIQUID_SERIES = 5
 const VAPOUR_SERIES = 6
@@ -60,7 +60,7 @@ export type FluidModel = {
   readonly fixed: boolean
 }
 
-/** Blocks of a coolant: upper temperature, middle, 1 / half width, TERMS × (rho, cp, mu, k). */
+/** Blocks of a coolant: upper temperature, middle, 1 / half width, then TERMS each of rho, cp, mu, k. */
 export const COOLANT_SERIES = 3
 export const COOLANT_STRIDE = COOLANT_SERIES + 4 * TERMS
 
@@ -76,6 +76,25 @@ export type CoolantModel = {
   readonly fixed: boolean
 }
 
+/**
+ * Clenshaw's sum of the six-term series that begins at c[i], at x in [-1, 1].
+ * Written out, because the loop's counter and its empty first steps cost a third of the whole evaluation.
+ */
+function series(c: Float64Array, i: number, x: number): number {
+  const y = x + x
+  const b5 = c[i + 5]
+  const b4 = y * b5 + c[i + 4]
+  const b3 = y * b4 + (c[i + 3] - b5)
+  const b2 = y * b3 + (c[i + 2] - b4)
+  const b1 = y * b2 + (c[i + 1] - b3)
+  return x * b1 + (c[i] - b2)
+}
+
+/** `T` held inside the data's range; NaN stays NaN. */
+function clamp(model: FluidModel | CoolantModel, T: number): number {
+  return Math.min(Math.max(T, model.minTemperature), model.maxTemperature)
+}
+
 /** True where the data does not reach `T` [K] (also for NaN); the evaluators then answer with the nearest end. */
 export function outsideRange(model: FluidModel | CoolantModel, T: number): boolean {
   return !(T >= model.minTemperature && T <= model.maxTemperature)
@@ -84,97 +103,32 @@ export function outsideRange(model: FluidModel | CoolantModel, T: number): boole
 /** Liquid properties only (RHO_L, CP_L, MU_L, K_L, SIGMA) at `T` [K]: the film's share, evaluated at every step of a wall solve. */
 export function fillFilm(model: FluidModel, T: number, out: Float64Array): void {
   const c = model.data
-  const t =
-    T < model.minTemperature ? model.minTemperature : T > model.maxTemperature ? model.maxTemperature : T
+  const t = clamp(model, T)
   let base = 0
   while (t > c[base]) base += STRIDE
   const x = (t - c[base + 1]) * c[base + 2]
-  const y = x + x
-  let i = base + LIQUID + LIQUID_SERIES * (TERMS - 1)
-  const first = base + LIQUID
-  let r1 = 0
-  let r2 = 0
-  let c1 = 0
-  let c2 = 0
-  let m1 = 0
-  let m2 = 0
-  let k1 = 0
-  let k2 = 0
-  let s1 = 0
-  let s2 = 0
-  for (; i > first; i -= LIQUID_SERIES) {
-    const r = y * r1 + (c[i] - r2)
-    r2 = r1
-    r1 = r
-    const p = y * c1 + (c[i + 1] - c2)
-    c2 = c1
-    c1 = p
-    const m = y * m1 + (c[i + 2] - m2)
-    m2 = m1
-    m1 = m
-    const k = y * k1 + (c[i + 3] - k2)
-    k2 = k1
-    k1 = k
-    const s = y * s1 + (c[i + 4] - s2)
-    s2 = s1
-    s1 = s
-  }
-  out[RHO_L] = x * r1 + (c[i] - r2)
-  out[CP_L] = x * c1 + (c[i + 1] - c2)
-  out[MU_L] = x * m1 + (c[i + 2] - m2)
-  out[K_L] = x * k1 + (c[i + 3] - k2)
-  out[SIGMA] = x * s1 + (c[i + 4] - s2)
+  const at = base + LIQUID
+  out[RHO_L] = series(c, at, x)
+  out[CP_L] = series(c, at + TERMS, x)
+  out[MU_L] = series(c, at + 2 * TERMS, x)
+  out[K_L] = series(c, at + 3 * TERMS, x)
+  out[SIGMA] = series(c, at + 4 * TERMS, x)
 }
 
 /** The vapour's share of the state (P, RHO_V, H_FG, CP_V, MU_V, K_V) at `T` [K]. */
 export function fillVapour(model: FluidModel, T: number, out: Float64Array): void {
   const c = model.data
-  const t =
-    T < model.minTemperature ? model.minTemperature : T > model.maxTemperature ? model.maxTemperature : T
+  const t = clamp(model, T)
   let base = 0
   while (t > c[base]) base += STRIDE
   const x = (t - c[base + 1]) * c[base + 2]
-  const y = x + x
-  let i = base + VAPOUR + VAPOUR_SERIES * (TERMS - 1)
-  const first = base + VAPOUR
-  let p1 = 0
-  let p2 = 0
-  let r1 = 0
-  let r2 = 0
-  let h1 = 0
-  let h2 = 0
-  let c1 = 0
-  let c2 = 0
-  let m1 = 0
-  let m2 = 0
-  let k1 = 0
-  let k2 = 0
-  for (; i > first; i -= VAPOUR_SERIES) {
-    const p = y * p1 + (c[i] - p2)
-    p2 = p1
-    p1 = p
-    const r = y * r1 + (c[i + 1] - r2)
-    r2 = r1
-    r1 = r
-    const h = y * h1 + (c[i + 2] - h2)
-    h2 = h1
-    h1 = h
-    const d = y * c1 + (c[i + 3] - c2)
-    c2 = c1
-    c1 = d
-    const m = y * m1 + (c[i + 4] - m2)
-    m2 = m1
-    m1 = m
-    const k = y * k1 + (c[i + 5] - k2)
-    k2 = k1
-    k1 = k
-  }
-  out[P] = T === t || model.fixed ? Math.exp(x * p1 + (c[i] - p2)) : saturationPressure(model, T)
-  out[RHO_V] = Math.exp(x * r1 + (c[i + 1] - r2))
-  out[H_FG] = x * h1 + (c[i + 2] - h2)
-  out[CP_V] = x * c1 + (c[i + 3] - c2)
-  out[MU_V] = x * m1 + (c[i + 4] - m2)
-  out[K_V] = x * k1 + (c[i + 5] - k2)
+  const at = base + VAPOUR
+  out[P] = t === T ? Math.exp(series(c, at, x)) : saturationPressure(model, T)
+  out[RHO_V] = Math.exp(series(c, at + TERMS, x))
+  out[H_FG] = series(c, at + 2 * TERMS, x)
+  out[CP_V] = series(c, at + 3 * TERMS, x)
+  out[MU_V] = series(c, at + 4 * TERMS, x)
+  out[K_V] = series(c, at + 5 * TERMS, x)
 }
 
 /** The whole saturation state at `T` [K]: all SATURATION_LENGTH places of `out`. */
@@ -192,36 +146,31 @@ function logPressure(c: Float64Array, t: number): void {
   const scale = c[base + 2]
   const x = (t - c[base + 1]) * scale
   const y = x + x
-  let b1 = 0
-  let b2 = 0
-  let d1 = 0
-  let d2 = 0
-  let i = base + VAPOUR + VAPOUR_SERIES * (TERMS - 1)
-  const first = base + VAPOUR
-  for (; i > first; i -= VAPOUR_SERIES) {
-    const d = y * d1 + (2 * b1 - d2)
-    d2 = d1
-    d1 = d
-    const b = y * b1 + (c[i] - b2)
-    b2 = b1
-    b1 = b
-  }
+  const i = base + VAPOUR
+  const b5 = c[i + 5]
+  const b4 = y * b5 + c[i + 4]
+  const b3 = y * b4 + (c[i + 3] - b5)
+  const b2 = y * b3 + (c[i + 2] - b4)
+  const b1 = y * b2 + (c[i + 1] - b3)
+  // The same recurrence differentiated.
+  const d4 = b5 + b5
+  const d3 = y * d4 + (b4 + b4)
+  const d2 = y * d3 + (b3 + b3 - d4)
+  const d1 = y * d2 + (b2 + b2 - d3)
   pair[0] = x * b1 + (c[i] - b2)
   pair[1] = (b1 + x * d1 - d2) * scale
 }
 
 /** Saturation pressure [Pa] at `T` [K]. Beyond the range ln p goes on straight in 1/T. */
 export function saturationPressure(model: FluidModel, T: number): number {
-  const end =
-    T < model.minTemperature ? model.minTemperature : T > model.maxTemperature ? model.maxTemperature : T
+  const end = clamp(model, T)
   logPressure(model.data, end)
   return end === T ? Math.exp(pair[0]) : Math.exp(pair[0] + pair[1] * end * (1 - end / T))
 }
 
 /** Slope of the saturation line dp/dT [Pa/K] at `T` [K], from the pressure series itself. */
 export function saturationSlope(model: FluidModel, T: number): number {
-  const end =
-    T < model.minTemperature ? model.minTemperature : T > model.maxTemperature ? model.maxTemperature : T
+  const end = clamp(model, T)
   logPressure(model.data, end)
   const slope = pair[1]
   if (end === T) return slope * Math.exp(pair[0])
@@ -234,87 +183,45 @@ export function saturationTemperature(model: FluidModel, p: number): number {
   if (model.fixed || !(p > 0)) return Number.NaN
   const c = model.data
   const lnP = Math.log(p)
-  const last = (model.segments - 1) * STRIDE
   let base = 0
-  while (base < last && lnP > c[base + INVERSE]) base += STRIDE
+  while (lnP > c[base + INVERSE]) base += STRIDE
   const x = (lnP - c[base + INVERSE + 1]) * c[base + INVERSE + 2]
-  const y = x + x
-  const first = base + INVERSE + 3
-  let i = first + TERMS - 1
-  let b1 = 0
-  let b2 = 0
-  for (; i > first; i--) {
-    const b = y * b1 + (c[i] - b2)
-    b2 = b1
-    b1 = b
-  }
-  let t = x * b1 + (c[first] - b2)
-  const lo = model.minTemperature
-  const hi = model.maxTemperature
-  if (x < -1 || x > 1 || !(t > lo && t < hi)) {
-    // The ends need their own look: the straight line in 1/T begins there.
-    const end = base === 0 && lnP < c[base + INVERSE + 1] ? lo : hi
+  if (x < -1 || x > 1) {
+    const end = x < 0 ? model.minTemperature : model.maxTemperature
     logPressure(c, end)
-    const excess = lnP - pair[0]
-    if (end === lo ? excess <= 0 : excess >= 0) {
-      const inverse = 1 / end - excess / (pair[1] * end * end)
-      return inverse > 0 ? 1 / inverse : Number.POSITIVE_INFINITY
-    }
-    t = end
+    const inverse = 1 / end - (lnP - pair[0]) / (pair[1] * end * end)
+    return inverse > 0 ? 1 / inverse : Number.POSITIVE_INFINITY
   }
-  for (let n = 0; n < 8; n++) {
+  let t = series(c, base + INVERSE + 3, x)
+  // Newton on ln p: a step of 1e-5 K leaves about 1e-12 K.
+  for (let n = 0; n < 6; n++) {
     logPressure(c, t)
     const step = (lnP - pair[0]) / pair[1]
     t += step
-    if (step < 1e-7 && step > -1e-7) break
-    if (t < lo) t = lo
-    else if (t > hi) t = hi
+    if (step < 1e-5 && step > -1e-5) break
   }
   return t
 }
 
 /** Surface tension [N/m] at `T` [K]. */
 export function surfaceTension(model: FluidModel, T: number): number {
-  fillFilm(model, T, scratch)
-  return scratch[SIGMA]
+  const c = model.data
+  const t = clamp(model, T)
+  let base = 0
+  while (t > c[base]) base += STRIDE
+  return series(c, base + LIQUID + 4 * TERMS, (t - c[base + 1]) * c[base + 2])
 }
-const scratch = new Float64Array(SATURATION_LENGTH)
 
 /** Coolant properties (COOLANT_RHO, _CP, _MU, _K) at `T` [K]. */
 export function fillCoolant(model: CoolantModel, T: number, out: Float64Array): void {
   const c = model.data
-  const t =
-    T < model.minTemperature ? model.minTemperature : T > model.maxTemperature ? model.maxTemperature : T
+  const t = clamp(model, T)
   let base = 0
   while (t > c[base]) base += COOLANT_STRIDE
   const x = (t - c[base + 1]) * c[base + 2]
-  const y = x + x
-  const first = base + COOLANT_SERIES
-  let i = first + 4 * (TERMS - 1)
-  let r1 = 0
-  let r2 = 0
-  let c1 = 0
-  let c2 = 0
-  let m1 = 0
-  let m2 = 0
-  let k1 = 0
-  let k2 = 0
-  for (; i > first; i -= 4) {
-    const r = y * r1 + (c[i] - r2)
-    r2 = r1
-    r1 = r
-    const p = y * c1 + (c[i + 1] - c2)
-    c2 = c1
-    c1 = p
-    const m = y * m1 + (c[i + 2] - m2)
-    m2 = m1
-    m1 = m
-    const k = y * k1 + (c[i + 3] - k2)
-    k2 = k1
-    k1 = k
-  }
-  out[COOLANT_RHO] = x * r1 + (c[i] - r2)
-  out[COOLANT_CP] = x * c1 + (c[i + 1] - c2)
-  out[COOLANT_MU] = x * m1 + (c[i + 2] - m2)
-  out[COOLANT_K] = x * k1 + (c[i + 3] - k2)
+  const at = base + COOLANT_SERIES
+  out[COOLANT_RHO] = series(c, at, x)
+  out[COOLANT_CP] = series(c, at + TERMS, x)
+  out[COOLANT_MU] = series(c, at + 2 * TERMS, x)
+  out[COOLANT_K] = series(c, at + 3 * TERMS, x)
 }
