@@ -131,3 +131,13 @@ export function outsideRange(range: Range | undefined, value: number): number {
   if (value < range[0]) return value / range[0]
   return 0
 }
+
+/** 1-sigma of ln multiplier from "90 % of the data within ±X": ln(1 + X)/1.645. */
+export function sigmaFromBand(band: number): number {
+  return Math.log(1 + band) / 1.645
+}
+
+/** 1-sigma of ln multiplier from a mean absolute error: 1.253 MAE. */
+export function sigmaFromMeanError(meanAbsoluteError: number): number {
+  return 1.253 * meanAbsoluteError
+}

@@ -44,11 +44,12 @@ export function gnielinskiFromFriction(re: number, pr: number, frictionFactor: n
   return (f8 * (re - 1000) * pr) / (1 + 12.7 * Math.sqrt(f8) * (c * c - 1))
 }
 
-/** Petukhov and Kirillov, (f/8) Re Pr/(1.07 + 12.7 (f/8)^(1/2) (Pr^(2/3) − 1)), from a given Darcy factor. */
+/** Petukhov, Kirillov and Popov from a given Darcy factor, (f/8) Re Pr/(1.07 + 900/Re − 0.63/(1 + 10 Pr) + 12.7 (f/8)^(1/2) (Pr^(2/3) − 1)). */
 export function petukhovFromFriction(re: number, pr: number, frictionFactor: number): number {
   const f8 = frictionFactor / 8
   const c = Math.cbrt(pr)
-  return (f8 * re * pr) / (1.07 + 12.7 * Math.sqrt(f8) * (c * c - 1))
+  const constant = 1.07 + 900 / re - 0.63 / (1 + 10 * pr)
+  return (f8 * re * pr) / (constant + 12.7 * Math.sqrt(f8) * (c * c - 1))
 }
 
 /** Turbulent Gnielinski with Konakov friction and the mean entry factor; meant for Re ≥ 4000. */

@@ -77,9 +77,37 @@ export function kutateladzeReynolds(
 }
 
 /**
- * Mean coefficient of a laminar film on a vertical wall under downward interfacial stress τ, Pa:
- * δ⁴ + (4/3) τ δ³/((ρl − ρv) g) = 4 µ k ΔT x/(ρl (ρl − ρv) g hfg'), Γ = (ρl/µ)[(ρl − ρv) g δ³/3 + τ δ²/2],
- * h = Γ hfg'/(ΔT x). NaN for an upward stress (τ < 0): the film may flood.
+ * Film thickness at the distance x from the top under downward interfacial stress τ, Pa, from
+ * δ⁴ + (4/3) τ δ³/((ρl − ρv) g) = 4 µ k ΔT x/(ρl (ρl − ρv) g hfg'), m. NaN for an upward stress: the film may flood.
+ */
+export function plateFilmThickness(
+  distance: number,
+  subcooling: number,
+  liquidDensity: number,
+  vapourDensity: number,
+  liquidViscosity: number,
+  liquidConductivity: number,
+  latentHeat: number,
+  interfacialStress = 0,
+): number {
+  if (interfacialStress < 0) return Number.NaN
+  const weight = (liquidDensity - vapourDensity) * GRAVITY
+  const right =
+    (4 * liquidViscosity * liquidConductivity * subcooling * distance) / (liquidDensity * weight * latentHeat)
+  const c = ((4 / 3) * interfacialStress) / weight
+  let delta = Math.sqrt(Math.sqrt(right)) // the root without stress lies on the right
+  for (let i = 0; i < 60; i++) {
+    const d2 = delta * delta
+    const step = (d2 * d2 + c * d2 * delta - right) / (4 * d2 * delta + 3 * c * d2)
+    delta -= step
+    if (Math.abs(step) <= 1e-14 * delta) break
+  }
+  return delta
+}
+
+/**
+ * Mean coefficient of a laminar film under downward interfacial stress, h = Γ hfg'/(ΔT x) with
+ * Γ = (ρl/µ)[(ρl − ρv) g δ³/3 + τ δ²/2], W/(m² K). NaN for an upward stress.
  */
 export function shearedPlate(
   height: number,
@@ -91,22 +119,34 @@ export function shearedPlate(
   latentHeat: number,
   interfacialStress: number,
 ): number {
-  if (interfacialStress < 0) return Number.NaN
+  const delta = plateFilmThickness(
+    height,
+    subcooling,
+    liquidDensity,
+    vapourDensity,
+    liquidViscosity,
+    liquidConductivity,
+    latentHeat,
+    interfacialStress,
+  )
   const weight = (liquidDensity - vapourDensity) * GRAVITY
-  const right =
-    (4 * liquidViscosity * liquidConductivity * subcooling * height) / (liquidDensity * weight * latentHeat)
-  const c = ((4 / 3) * interfacialStress) / weight
-  let delta = Math.sqrt(Math.sqrt(right)) // the root without stress lies on the right
-  for (let i = 0; i < 60; i++) {
-    const d2 = delta * delta
-    const step = (d2 * d2 + c * d2 * delta - right) / (4 * d2 * delta + 3 * c * d2)
-    delta -= step
-    if (Math.abs(step) <= 1e-14 * delta) break
-  }
   const flow =
     (liquidDensity / liquidViscosity) *
     ((weight * delta * delta * delta) / 3 + (interfacialStress * delta * delta) / 2)
   return (flow * latentHeat) / (subcooling * height)
+}
+
+/** Sadasivan and Lienhard's latent-heat coefficient 0.683 − 0.228/Pr of a film without vapour drag. */
+export function sadasivanLienhard(liquidPrandtl: number): number {
+  return 0.683 - 0.228 / liquidPrandtl
+}
+
+/**
+ * Chen's factor on h of a PLATE, [(1 + 0.68 ζ + 0.02 ζ ξ)/(1 + 0.85 ξ − 0.15 ζ ξ)]^(1/4); the tube has 0.95 in place of
+ * 0.85. With the plain latent heat.
+ */
+export function chenPlateFactor(zeta: number, xi: number): number {
+  return ((1 + 0.68 * zeta + 0.02 * zeta * xi) / (1 + 0.85 * xi - 0.15 * zeta * xi)) ** 0.25
 }
 
 const symbols = {
@@ -161,5 +201,21 @@ export const verticalFilmCards = [
     requires: [],
     available: false,
     notes: ['An upward stress may leave no film: refused.'],
+  },
+  {
+    id: 'filmReference.filmSubcooling',
+    choice: 'filmReference',
+    name: 'Film subcooling and vapour drag on a plate',
+    equation:
+      "hfg' = hfg + (0.683 - 0.228/Pr) cp dT without drag; with drag h/h_Nusselt = [(1 + 0.68 z + 0.02 z x)/(1 + 0.85 x - 0.15 z x)]^(1/4)",
+    symbols: { z: 'cp dT/hfg', x: 'k dT/(mu hfg)' },
+    source: ['Sadasivan and Lienhard 1987, J. Heat Transfer 109:545', 'Chen 1961, J. Heat Transfer 83:48'],
+    range: { liquidPrandtl: 'not stated', jakob: [0, 2] },
+    scatter: 'within 0.7 % of the boundary-layer similarity solution',
+    sigmaLn: null,
+    evidence: 'limit-checked, from memory',
+    requires: ['liquidSpecificHeat'],
+    available: false,
+    notes: ['The plate has 0.85 where the tube has 0.95.'],
   },
 ] as const satisfies readonly Card[]
