@@ -1,0 +1,437 @@
+// A case: everything that fixes one evaluation. The schema here is the only one; form, file, API and job payload share it.
+import { z } from 'zod'
+import { coolants, findCoolant, findFluid, fluids } from '#engine/fluids/index.ts'
+import { economicsDefaults, materials } from '#engine/materials.ts'
+import { nearest } from '#engine/sweep/nearest.ts'
+import { type Dimension, parseQuantity } from '#engine/units.ts'
+import { type Fault, faultsFromIssues } from './fault.ts'
+
+export { type Fault, faultLine } from './fault.ts'
+
+/** Every message below reads "problem; remedy": `faultsFromIssues` splits it there. */
+const said = (problem: string, remedy: string): string => `${problem}; ${remedy}`
+
+type Bounds = {
+  /** Inclusive bounds [SI]. */
+  min?: number
+  max?: number
+  /** Exclusive lower bound [SI]. */
+  above?: number
+  whole?: boolean
+  /** The bounds as a reader wants them, e.g. "above 0 and at most 1 m". */
+  allowed: string
+}
+
+/** A number in SI, or text with a unit ("3/4 in", "60 kPa"). */
+export const quantity = (dimension: Dimension, bounds: Bounds) =>
+  z
+    .union([z.number(), z.string()], {
+      error: (issue) =>
+        said(
+          issue.input === undefined ? 'it is missing' : 'it is not a number',
+          `give a number in SI or text with a unit, ${bounds.allowed}`,
+        ),
+    })
+    .transform((given, ctx): number => {
+      const parsed = parseQuantity(given, dimension)
+      if (!parsed.ok) {
+        ctx.addIssue({ code: 'custom', message: said(parsed.problem, parsed.remedy), input: given })
+        return z.NEVER
+      }
+      const value = parsed.value
+      const wrong =
+        !Number.isFinite(value) ||
+        (bounds.min !== undefined && value < bounds.min) ||
+        (bounds.max !== undefined && value > bounds.max) ||
+        (bounds.above !== undefined && value <= bounds.above)
+      if (wrong) {
+        ctx.addIssue({
+          code: 'custom',
+          message: said(`${JSON.stringify(given)} is out of bounds`, `allowed is ${bounds.allowed}`),
+          input: given,
+        })
+        return z.NEVER
+      }
+      if (bounds.whole && !Number.isInteger(value)) {
+        ctx.addIssue({
+          code: 'custom',
+          message: said(`${JSON.stringify(given)} is not a whole number`, `allowed is ${bounds.allowed}`),
+          input: given,
+        })
+        return z.NEVER
+      }
+      return value
+    })
+
+/** An object that refuses keys it does not know and names the nearest it does. */
+const record = <Shape extends z.core.$ZodLooseShape>(shape: Shape) => {
+  const keys = Object.keys(shape)
+  return z.strictObject(shape, {
+    error: (issue) => {
+      if (issue.code === 'unrecognized_keys') {
+        const near = [...new Set(issue.keys.map((key) => nearest(key, keys)).filter((key) => key !== null))]
+        return said(
+          `there is no field ${issue.keys.map((key) => `"${key}"`).join(', ')} here`,
+          `${near.length ? `did you mean ${near.map((key) => `"${key}"`).join(', ')}? ` : ''}allowed are ${keys.join(', ')}`,
+        )
+      }
+      return said(
+        issue.input === undefined ? 'it is missing' : 'it is not an object',
+        `give an object with ${keys.join(', ')}`,
+      )
+    },
+  })
+}
+
+/** One of a few words. */
+const oneOf = <const Values extends readonly [string, ...string[]]>(values: Values) =>
+  z.enum(values, {
+    error: (issue) => {
+      const near = typeof issue.input === 'string' ? nearest(issue.input, values) : null
+      return said(
+        issue.input === undefined ? 'it is missing' : `${JSON.stringify(issue.input)} is not known`,
+        `${near ? `did you mean "${near}"? ` : ''}allowed are ${values.join(', ')}`,
+      )
+    },
+  })
+
+/** Up to four library ids near to one that is not known, or a few to begin with. */
+const nearIds = (given: string, known: readonly { id: string; name: string }[]): string => {
+  const wanted = given.toLowerCase().replace(/[^a-z0-9]/g, '')
+  const scored = known
+    .map((entry) => {
+      const id = entry.id.toLowerCase().replace(/[^a-z0-9]/g, '')
+      const name = entry.name.toLowerCase().replace(/[^a-z0-9]/g, '')
+      let score = 0
+      if (wanted && (id.includes(wanted) || wanted.includes(id))) score += 3
+      if (wanted && name.includes(wanted)) score += 2
+      let same = 0
+      while (same < wanted.length && same < id.length && wanted[same] === id[same]) same++
+      return { id: entry.id, score: score + same }
+    })
+    .sort((a, b) => b.score - a.score)
+  const first = nearest(
+    given,
+    known.map((entry) => entry.id),
+  )
+  const ids = [...(first ? [first] : []), ...scored.filter((s) => s.score > 0).map((s) => s.id)]
+  const near = [...new Set(ids)].slice(0, 4)
+  return near.length ? `near matches: ${near.join(', ')}` : `known are ${known.map((k) => k.id).join(', ')}`
+}
+
+const positive = (dimension: Dimension, max: number, text: string) =>
+  quantity(dimension, { above: 0, max, allowed: text })
+
+const propertyFields = {
+  liquidDensity: positive('density', 3e4, 'above 0 kg/m³'),
+  latentHeat: positive('specificEnthalpy', 1e8, 'above 0 J/kg'),
+  liquidViscosity: positive('viscosity', 1e3, 'above 0 Pa s'),
+  liquidConductivity: positive('conductivity', 1e3, 'above 0 W/(m K)'),
+  vapourDensity: positive('density', 3e4, 'above 0 kg/m³').optional(),
+  liquidSpecificHeat: positive('specificHeat', 1e6, 'above 0 J/(kg K)').optional(),
+  surfaceTension: positive('surfaceTension', 10, 'above 0 N/m').optional(),
+  vapourViscosity: positive('viscosity', 1, 'above 0 Pa s').optional(),
+  vapourConductivity: positive('conductivity', 100, 'above 0 W/(m K)').optional(),
+  vapourSpecificHeat: positive('specificHeat', 1e6, 'above 0 J/(kg K)').optional(),
+  pressure: positive('pressure', 1e9, 'above 0 Pa').optional(),
+  molarMass: positive('molarMass', 10, 'above 0 kg/mol').optional(),
+}
+
+const fluidSchema = z.union(
+  [
+    z
+      .string()
+      .transform((id, ctx): string => {
+        const card = findFluid(id)
+        if (card) return card.id
+        ctx.addIssue({
+          code: 'custom',
+          message: said(`there is no fluid "${id}" in the library`, nearIds(id, fluids)),
+          input: id,
+        })
+        return z.NEVER
+      }),
+    record({ properties: record(propertyFields) }),
+  ],
+  {
+    error: (issue) =>
+      said(
+        issue.input === undefined ? 'it is missing' : 'it is neither a library id nor properties given by hand',
+        'give a library id such as "r134a", or { "properties": { liquidDensity, latentHeat, liquidViscosity, liquidConductivity, … } }',
+      ),
+  },
+)
+
+const coolantFields = {
+  density: positive('density', 3e4, 'above 0 kg/m³'),
+  specificHeat: positive('specificHeat', 1e6, 'above 0 J/(kg K)'),
+  viscosity: positive('viscosity', 1e3, 'above 0 Pa s'),
+  conductivity: positive('conductivity', 1e3, 'above 0 W/(m K)'),
+}
+
+const coolantSchema = z.union(
+  [
+    z
+      .string()
+      .transform((id, ctx): string => {
+        const card = findCoolant(id)
+        if (card) return card.id
+        ctx.addIssue({
+          code: 'custom',
+          message: said(`there is no coolant "${id}"`, nearIds(id, coolants)),
+          input: id,
+        })
+        return z.NEVER
+      }),
+    record({ properties: record(coolantFields) }),
+  ],
+  {
+    error: (issue) =>
+      said(
+        issue.input === undefined ? 'it is missing' : 'it is neither a coolant id nor properties given by hand',
+        `give an id (${coolants.map((c) => c.id).join(', ')}) or { "properties": { density, specificHeat, viscosity, conductivity } }`,
+      ),
+  },
+)
+
+const temperature = quantity('temperature', {
+  above: 0,
+  max: 2000,
+  allowed: 'above 0 K and at most 2000 K (a bare number is in kelvin)',
+})
+const fouling = quantity('foulingResistance', { min: 0, max: 1, allowed: 'from 0 to 1 m²K/W' })
+
+const driveSchema = z.discriminatedUnion(
+  'kind',
+  [
+    record({
+      kind: z.literal('wallSubcooling'),
+      wallSubcooling: quantity('temperatureDifference', {
+        above: 0,
+        max: 500,
+        allowed: 'above 0 K and at most 500 K',
+      }),
+      coolant: record({
+        coolant: coolantSchema,
+        inletTemperature: temperature,
+        foulingResistance: fouling.default(0),
+      }).optional(),
+    }),
+    record({
+      kind: z.literal('coolant'),
+      coolant: coolantSchema,
+      inletTemperature: temperature,
+      velocity: positive('velocity', 100, 'above 0 and at most 100 m/s').optional(),
+      massFlow: positive('massFlow', 1e6, 'above 0 kg/s').optional(),
+      outletTemperature: temperature.optional(),
+      foulingResistance: fouling.default(0),
+    }),
+  ],
+  {
+    error: (issue) =>
+      said(
+        issue.input === undefined ? 'it is missing' : 'its kind is not known',
+        'give { "kind": "wallSubcooling", … } or { "kind": "coolant", … }',
+      ),
+  },
+)
+
+const surfaceSchema = z.discriminatedUnion(
+  'kind',
+  [
+    record({ kind: z.literal('plain') }),
+    record({
+      kind: z.literal('integralFin'),
+      finsPerMetre: positive('perLength', 1e4, 'above 0 per metre'),
+      finHeight: positive('length', 0.05, 'above 0 m'),
+      finThickness: positive('length', 0.05, 'above 0 m'),
+    }),
+    record({
+      kind: z.literal('dropwise'),
+      promoter: z.string({ error: () => said('it is missing', 'name the promoter') }),
+      contactAngle: quantity('angle', { above: 0, max: Math.PI, allowed: 'above 0 and at most π rad' }),
+      degradation: quantity('fraction', { above: 0, max: 1, allowed: 'above 0 and at most 1' }).default(0.5),
+    }),
+  ],
+  {
+    error: () =>
+      said('its kind is not known', 'give { "kind": "plain" }, { "kind": "integralFin", … } or { "kind": "dropwise", … }'),
+  },
+)
+
+const materialSchema = z.string().transform((id, ctx): string => {
+  const known = materials.find((entry) => entry.id === id.toLowerCase())
+  if (known) return known.id
+  ctx.addIssue({
+    code: 'custom',
+    message: said(`there is no material "${id}"`, nearIds(id, materials)),
+    input: id,
+  })
+  return z.NEVER
+})
+
+const tubeSchema = record({
+  outsideDiameter: positive('length', 1, 'above 0 and at most 1 m'),
+  wallThickness: positive('length', 0.1, 'above 0 and at most 0.1 m').optional(),
+  material: materialSchema.optional(),
+  conductivity: positive('conductivity', 5000, 'above 0 W/(m K)').optional(),
+  roughness: quantity('length', { min: 0, max: 0.01, allowed: 'from 0 to 0.01 m' }).default(1.5e-6),
+  outsideFoulingResistance: fouling.default(0),
+  surface: surfaceSchema.default({ kind: 'plain' }),
+})
+
+const whole = (max: number) =>
+  quantity('count', { min: 1, max, whole: true, allowed: `a whole number from 1 to ${max}` })
+
+const bundleSchema = record({
+  shape: oneOf(['rectangular', 'circular']).default('rectangular'),
+  layout: oneOf(['triangular30', 'triangular60', 'square90', 'square45']).default('triangular30'),
+  pitchRatio: quantity('none', { above: 1, max: 10, allowed: 'above 1 and at most 10' }),
+  rows: whole(MAX_ROWS()),
+  tubesPerRow: z
+    .union([z.literal('auto'), whole(2000)], {
+      error: (issue) =>
+        said(
+          issue.input === undefined ? 'it is missing' : 'it is neither a number nor "auto"',
+          'give a whole number from 1 to 2000, or "auto"',
+        ),
+    })
+    .optional(),
+  passes: whole(64).default(1),
+  coolantEntry: oneOf(['bottom', 'top']).default('bottom'),
+  length: positive('length', 1000, 'above 0 and at most 1000 m').optional(),
+})
+
+/** Most rows a case may have; the solver's arrays are made for as many. */
+function MAX_ROWS(): number {
+  return 500
+}
+
+const vapourSchema = record({
+  superheat: quantity('temperatureDifference', { min: 0, max: 300, allowed: 'from 0 to 300 K' }).default(0),
+  gas: record({
+    kind: oneOf(['air']),
+    moleFraction: quantity('fraction', { min: 0, max: 0.9, allowed: 'from 0 to 0.9' }),
+    ventFraction: quantity('fraction', { above: 0, max: 0.9, allowed: 'above 0 and at most 0.9' }).default(0.02),
+  }).optional(),
+})
+
+/** Choices of method, first the default. */
+export const METHOD_CHOICES = {
+  film: ['nusselt', 'chen'],
+  latentHeat: ['rohsenow', 'plain'],
+  propertyTemperature: ['oneThird', 'mean', 'saturation'],
+  inundation: ['condensateFlow', 'drainageMode', 'nusselt', 'kern', 'eissenberg', 'chen', 'none'],
+  vapourShear: [
+    'butterworth',
+    'shekriladzeGomelauri',
+    'rose',
+    'fujiiUeharaKurata',
+    'mcnaught',
+    'honda',
+    'none',
+  ],
+  fins: ['rose', 'beattyKatz'],
+  dropwise: ['rose', 'griffith', 'leFevreRose'],
+  gas: ['colburnHougen', 'none'],
+  tubeSide: ['gnielinski', 'siederTate', 'dittusBoelter'],
+  tubeFriction: ['churchill', 'colebrook'],
+  vapourPressureDrop: ['gaddisGnielinski', 'zukauskas', 'jakob', 'none'],
+  twoPhase: ['ishihara', 'none'],
+} as const
+
+export type MethodChoice = keyof typeof METHOD_CHOICES
+
+const methodsSchema = record({
+  film: oneOf(METHOD_CHOICES.film).default('nusselt'),
+  latentHeat: oneOf(METHOD_CHOICES.latentHeat).default('rohsenow'),
+  propertyTemperature: oneOf(METHOD_CHOICES.propertyTemperature).default('oneThird'),
+  inundation: oneOf(METHOD_CHOICES.inundation).default('condensateFlow'),
+  vapourShear: oneOf(METHOD_CHOICES.vapourShear).default('butterworth'),
+  fins: oneOf(METHOD_CHOICES.fins).default('rose'),
+  dropwise: oneOf(METHOD_CHOICES.dropwise).default('rose'),
+  gas: oneOf(METHOD_CHOICES.gas).default('colburnHougen'),
+  tubeSide: oneOf(METHOD_CHOICES.tubeSide).default('gnielinski'),
+  tubeFriction: oneOf(METHOD_CHOICES.tubeFriction).default('churchill'),
+  vapourPressureDrop: oneOf(METHOD_CHOICES.vapourPressureDrop).default('gaddisGnielinski'),
+  twoPhase: oneOf(METHOD_CHOICES.twoPhase).default('ishihara'),
+})
+
+export type Methods = z.output<typeof methodsSchema>
+
+const economicsSchema = record({
+  tubePrice: quantity('money', { min: 0, max: 1e9, allowed: 'at least 0 per m² of outside area' }).default(
+    economicsDefaults.tubePrice,
+  ),
+  energyPrice: quantity('energyPrice', { min: 0, max: 1e6, allowed: 'at least 0 per kWh' }).default(
+    economicsDefaults.energyPrice,
+  ),
+  hoursPerYear: quantity('count', { min: 0, max: 8784, allowed: 'from 0 to 8784 h' }).default(
+    economicsDefaults.hoursPerYear,
+  ),
+  years: quantity('count', { above: 0, max: 200, allowed: 'above 0 and at most 200 years' }).default(
+    economicsDefaults.years,
+  ),
+  interest: quantity('fraction', { min: 0, max: 1, allowed: 'from 0 to 1' }).default(economicsDefaults.interest),
+  pumpEfficiency: quantity('fraction', { above: 0, max: 1, allowed: 'above 0 and at most 1' }).default(
+    economicsDefaults.pumpEfficiency,
+  ),
+})
+
+/** The fields of a case without the checks across fields. */
+const caseObject = record({
+  fluid: fluidSchema,
+  saturationTemperature: temperature.optional(),
+  saturationPressure: positive('pressure', 1e9, 'above 0 Pa').optional(),
+  duty: positive('power', 1e12, 'above 0 W').optional(),
+  drive: driveSchema,
+  tube: tubeSchema,
+  bundle: bundleSchema,
+  vapour: vapourSchema.prefault({}),
+  methods: methodsSchema.prefault({}),
+  economics: economicsSchema.prefault({}),
+})
+
+/** A case with every default filled in; it parses to itself. */
+export type Case = z.output<typeof caseObject>
+/** A case as a person or a file gives it. */
+export type CaseInput = z.input<typeof caseObject>
+
+/** The schema of a case: fields, then what must hold between them. */
+export const caseSchema = caseObject.superRefine((value, ctx) => {
+  for (const fault of crossFaults(value))
+    ctx.addIssue({ code: 'custom', path: fault.path.split('.'), message: said(fault.problem, fault.remedy) })
+})
+
+/** The case, or everything that is wrong with it. */
+export function parseCase(input: unknown): { ok: true; case: Case } | { ok: false; faults: Fault[] } {
+  const parsed = caseSchema.safeParse(input)
+  if (parsed.success) return { ok: true, case: parsed.data }
+  const faults = faultsFromIssues(parsed.error.issues)
+  // The checks across fields run only on whole objects: a pair that excludes itself is said at once all the same.
+  for (const fault of exclusiveFaults(input))
+    if (!faults.some((known) => known.path === fault.path && known.problem === fault.problem)) faults.push(fault)
+  return { ok: false, faults }
+}
+
+const has = (value: unknown, key: string): boolean =>
+  typeof value === 'object' && value !== null && (value as Record<string, unknown>)[key] !== undefined
+
+const BOTH_DUTY_AND_LENGTH: Fault = {
+  path: 'duty',
+  problem: 'duty and bundle.length are both given',
+  remedy:
+    'give duty to size the length, or bundle.length to rate the duty; to hold a duty at a given length set limits.duty.min',
+}
+const BOTH_STATES: Fault = {
+  path: 'saturationPressure',
+  problem: 'saturationTemperature and saturationPressure are both given',
+  remedy: 'give exactly one of the two',
+}
+
+function exclusiveFaults(input: unknown): Fault[] {
+  const faults: Fault[] = []
+  if (has(input, 'duty') && has((input as { bundle?: unknown }).bundle, 'length')) faults.push(BOTH_DUTY_AND_LENGTH)
+  if (has(input, 'saturationTemperature') && has(input, 'saturationPressure')) faults.push(BOTH_STATES)
+  return faults
+}
