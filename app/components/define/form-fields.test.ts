@@ -3,6 +3,7 @@ import { displayUnit, parseQuantity } from '#engine/units.ts'
 import {
   type Definition,
   definitionFromFields,
+  type Fields,
   fieldOfFault,
   fieldsFromDefinition,
   listItems,
@@ -104,7 +105,7 @@ describe('the definition and the form', () => {
   })
 
   it('leaves out what has no say and keeps its text', () => {
-    const fields = {
+    const fields: Fields = {
       ...fieldsFromDefinition(definition, 'si'),
       'drive.kind': 'wallSubcooling',
       'drive.wallSubcooling': '5',
