@@ -1,6 +1,8 @@
 // The Define form: the base case, what is varied, limits; with the live margin beside it.
 import { type FormEvent, useCallback, useMemo, useRef, useState } from 'react'
 import { Form } from 'react-router'
+import { BundleDrawing } from '#app/components/bundle-drawing/bundle-drawing.tsx'
+import { bundleGeometry } from '#app/components/bundle-drawing/layout.ts'
 import { Button, StatusButton } from '#app/components/ui/button.tsx'
 import { MarginNote } from '#app/components/ui/margin-note.tsx'
 import { MarginPage, PageHead } from '#app/components/ui/page.tsx'
@@ -29,7 +31,6 @@ export type DefineFormProps = {
   busy: boolean
   /** The server's word on the last post, where scripts did not run or the server knows better. */
   refusal: string | null
-  picture: (preview: Preview) => React.ReactNode
   acts?: React.ReactNode
 }
 
@@ -44,7 +45,6 @@ export function DefineForm({
   standing,
   busy,
   refusal,
-  picture,
   acts,
 }: DefineFormProps) {
   const { fields, set, setAll, undo, canUndo } = useFields(definition, units)
@@ -114,7 +114,16 @@ export function DefineForm({
               faults={faults}
               settled={settled}
               cores={cores}
-              picture={picture(preview)}
+              picture={
+                preview.base ? (
+                  <BundleDrawing
+                    geometry={bundleGeometry(preview.base.case)}
+                    rows={preview.base.result.rows}
+                    name="the base case"
+                    table={false}
+                  />
+                ) : null
+              }
               onGo={go}
             />
           }
