@@ -41,7 +41,8 @@ export const run = pgTable(
       .default(sql`(now() at time zone 'utc')::date`),
     startedAt: moment('started_at'),
     endedAt: moment('ended_at'),
-    cancelRequestedAt: moment('cancel_requested_at'),
+    // Set while the run is held: its chunks leave the queue until it is resumed.
+    pausedAt: moment('paused_at'),
     // SHA-256 over the stored results in point order: the same for any number of workers, order or interruption.
     contentHash: text('content_hash'),
     bestPoint: integer('best_point'),
@@ -57,7 +58,7 @@ export const run = pgTable(
   ],
 )
 
-/** One row per stored chunk; its existence is what makes the chunk done, whoever computed it. */
+/** One row per stored chunk; its existence is what makes the chunk done, whoever computed it. It sums up its points. */
 export const runChunk = pgTable(
   'run_chunk',
   {
@@ -67,10 +68,16 @@ export const runChunk = pgTable(
     chunk: integer('chunk').notNull(),
     firstPoint: integer('first_point').notNull(),
     points: integer('points').notNull(),
+    // How many of its points came to each outcome, by the outcome's number.
+    outcomes: integer('outcomes').array().notNull(),
+    meetingLimits: integer('meeting_limits').notNull(),
     bestPoint: integer('best_point'),
     bestObjective: doublePrecision('best_objective'),
-    contentHash: text('content_hash'),
-    computeSeconds: doublePrecision('compute_seconds'),
+    // The best point's key results, in storage order.
+    bestResults: float8Array('best_results'),
+    // Summed over the threads that shared it.
+    computeSeconds: doublePrecision('compute_seconds').notNull(),
+    workerId: uuid('worker_id'),
     storedAt: moment('stored_at').notNull().defaultNow(),
   },
   (t) => [primaryKey({ columns: [t.runId, t.chunk] })],
@@ -108,6 +115,23 @@ export const pointResult = pgTable(
   (t) => [primaryKey({ columns: [t.runId, t.kind, t.point] })],
 )
 
+/** A worker process that serves this database: says every second that it lives and what it holds. */
+export const worker = pgTable('worker', {
+  id: id(),
+  host: text('host').notNull(),
+  processId: integer('process_id').notNull(),
+  threads: integer('threads').notNull(),
+  engineVersion: text('engine_version').notNull(),
+  startedAt: moment('started_at').notNull().defaultNow(),
+  seenAt: moment('seen_at').notNull().defaultNow(),
+  // Set from the administrator's page; the worker finishes what it holds, takes nothing more and ends.
+  drainRequestedAt: moment('drain_requested_at'),
+  holding: jsonb('holding').$type<WorkerHolding[]>().notNull().default([]),
+})
+
+export type WorkerHolding = { job: string; runId: string; chunk: number | null; since: string }
+
 export type Run = typeof run.$inferSelect
 export type RunChunk = typeof runChunk.$inferSelect
+export type Worker = typeof worker.$inferSelect
 export type PointResult = typeof pointResult.$inferSelect
