@@ -1,0 +1,50 @@
+// The live scatter plot. Loaded after hydration, and only where a plot is: plotly is larger than the rest together.
+import Plotly from 'plotly.js'
+import { useMemo } from 'react'
+import createPlotlyComponent from 'react-plotly.js/factory'
+import { type ChartTheme, type Scatter, scatterFigure } from './scatter.ts'
+
+// The style rules plotly would write into the page are in charts.css; an element of this id and class tells it so.
+if (!document.getElementById('plotly.js-style-global')) {
+  const rules = document.createElement('meta')
+  rules.id = 'plotly.js-style-global'
+  rules.className = 'no-inline-styles'
+  document.head.append(rules)
+}
+
+const Plot = createPlotlyComponent(Plotly)
+
+export type LiveScatterProps = {
+  spec: Scatter
+  theme: ChartTheme
+  height: number
+  onPick?: (id: number) => void
+  onBrush?: (area: { x: [number, number]; y: [number, number] } | null) => void
+}
+
+export function LiveScatter({ spec, theme, height, onPick, onBrush }: LiveScatterProps) {
+  const { data, layout } = useMemo(() => {
+    const figure = scatterFigure(spec, theme)
+    // A finger that drags means to scroll the page.
+    const fine = matchMedia('(pointer: fine)').matches
+    return { ...figure, layout: { ...figure.layout, dragmode: onBrush && fine ? 'select' : false } as const }
+  }, [spec, theme, onBrush])
+  return (
+    <Plot
+      data={data}
+      layout={layout}
+      config={{ displayModeBar: false, responsive: true, doubleClick: false, showTips: false }}
+      style={{ width: '100%', height }}
+      onClick={(event) => {
+        const id = event.points[0]?.customdata
+        if (typeof id === 'number') onPick?.(id)
+      }}
+      onSelected={(event) => {
+        const range = event?.range as { x?: number[]; y?: number[] } | undefined
+        if (!range?.x || !range.y) return
+        const sorted = (values: number[]) => [...values].sort((a, b) => a - b) as [number, number]
+        onBrush?.({ x: sorted(range.x), y: sorted(range.y) })
+      }}
+    />
+  )
+}
