@@ -1,7 +1,7 @@
 // The queue in PostgreSQL: what is waiting, and how a process puts work there or hears of it.
 import { type SQL, sql } from 'drizzle-orm'
 import PgBoss from 'pg-boss'
-import { pool, type Queryable } from '#app/db.server.ts'
+import { db, pool, type Queryable } from '#app/db.server.ts'
 import { ENGINE_VERSION } from '#engine/version.ts'
 
 export type ChunkJob = { runId: string; chunk: number }
@@ -110,6 +110,50 @@ export async function queuedChunks(
     where name = ${chunkQueue(run.engineVersion)} and state in ('created', 'retry', 'active')
       and data->>'runId' = ${run.id}`)
   return new Set(rows.map((row) => row.chunk))
+}
+
+/** A job as one worker holds it; whoever takes it over raises `retryCount`. */
+export type Lease = { queue: string; id: string; retryCount: number }
+
+const heldAs = (lease: Lease) => sql`
+  name = ${lease.queue} and id = ${lease.id} and state = 'active' and retry_count = ${lease.retryCount}`
+
+/** Locks a job as the lease left it, so that nobody takes it over before the transaction ends; false when it is lost. */
+export async function holdJob(tx: Pick<Queryable, 'execute'>, lease: Lease): Promise<boolean> {
+  const { rows } = await tx.execute(sql`select from pgboss.job where ${heldAs(lease)} for update`)
+  return rows.length > 0
+}
+
+/** Removes a job that has become pointless, if it is still held. */
+export async function dropJob(lease: Lease): Promise<void> {
+  await db.execute(sql`delete from pgboss.job where ${heldAs(lease)}`)
+}
+
+/** Gives a job back before its time, if it is still held. */
+export async function releaseJob(lease: Lease): Promise<void> {
+  await db.execute(sql`update pgboss.job set state = 'retry', start_after = now() where ${heldAs(lease)}`)
+}
+
+/** Renews leases; answers the ids of those that still hold. */
+export async function renewJobs(leases: readonly Lease[]): Promise<Set<string>> {
+  const { rows } = await db.execute<{ id: string }>(sql`
+    update pgboss.job set started_on = now()
+    where name = any(${sql.param([...new Set(leases.map((lease) => lease.queue))])}::text[])
+      and state = 'active'
+      and (id, retry_count) in (
+        select * from unnest(
+          ${sql.param(leases.map((lease) => lease.id))}::uuid[],
+          ${sql.param(leases.map((lease) => lease.retryCount))}::int[]))
+    returning id`)
+  return new Set(rows.map((row) => row.id))
+}
+
+/** Runs with a job that has lost more workers than chance explains. */
+export async function hopelessRuns(): Promise<string[]> {
+  const { rows } = await db.execute<{ run_id: string }>(sql`
+    select distinct data->>'runId' as run_id from pgboss.job
+    where name in (${chunkQueue(ENGINE_VERSION)}, ${finishQueue(ENGINE_VERSION)}) and state = 'failed'`)
+  return rows.map((row) => row.run_id)
 }
 
 async function wake(tx: Pick<Queryable, 'execute'>): Promise<void> {

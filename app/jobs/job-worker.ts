@@ -1,0 +1,21 @@
+// A worker process: `npm run worker`, any number of them on any number of hosts.
+import { pool } from '#app/db.server.ts'
+import { env, requireSettings } from '#app/env.server.ts'
+import { ENGINE_VERSION } from '#engine/version.ts'
+import { JobWorker } from './worker.server.ts'
+
+/** A connection cut without a word must not hold a job for ever. */
+Object.assign(pool.options, { query_timeout: 15_000, connectionTimeoutMillis: 5000, keepAlive: true })
+
+requireSettings('worker')
+const worker = new JobWorker({ threads: env.WORKER_THREADS, log: (line) => console.error(line) })
+
+for (const signal of ['SIGTERM', 'SIGINT'] as const)
+  process.once(signal, () => {
+    console.log('Worker: finishing what it holds.')
+    worker.drain()
+  })
+
+console.log(`Worker: ${worker.pool.threads} threads, engine ${ENGINE_VERSION}.`)
+await worker.work()
+await pool.end()
