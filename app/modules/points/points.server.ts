@@ -2,6 +2,7 @@
 import { and, eq, inArray } from 'drizzle-orm'
 import { db } from '#app/db.server.ts'
 import { AppError } from '#app/http/errors.ts'
+import type { LimitEffect } from '#app/modules/explore/finding.ts'
 import { keyResultValues, planOfRevision } from '#app/modules/runs/run-plan.server.ts'
 import { bestStored, getRun } from '#app/modules/runs/runs.server.ts'
 import { pointResult, type Run } from '#drizzle/schema/index.ts'
@@ -188,6 +189,43 @@ export async function paretoFront(
   const found = await points.matching(query.filters ?? { meetingLimits: true })
   const [x, y] = await Promise.all([points.column(query.x), points.column(query.y)])
   return Array.from(frontOf(found, x, y), (point) => ({ point, x: x[point], y: y[point] }))
+}
+
+/** What each limit does, the others held. */
+export async function limitEffects(runId: string): Promise<LimitEffect[]> {
+  const points = await Points.of(runId)
+  const { limits, objective } = points.plan.study
+  const [evaluated, mask, least] = await Promise.all([
+    points.matching({ outcome: 'evaluated' }),
+    points.column('limitsNotMet'),
+    points.column(objective),
+  ])
+  const effects: LimitEffect[] = []
+  for (const [bit, { id, result }] of LIMITS.entries()) {
+    const values = await points.column(result)
+    for (const side of ['min', 'max'] as const) {
+      const bound = limits[id]?.[side]
+      if (bound === undefined) continue
+      let without = Number.POSITIVE_INFINITY
+      let nearest = Number.NaN
+      for (const point of evaluated) {
+        const stopped =
+          mask[point] === 1 << bit && (side === 'min' ? values[point] < bound : values[point] > bound)
+        if (!stopped && mask[point] !== 0) continue
+        if (least[point] < without) without = least[point]
+        if (stopped && !(Math.abs(values[point] - bound) >= Math.abs(nearest - bound)))
+          nearest = values[point]
+      }
+      effects.push({
+        limit: id,
+        side,
+        bound,
+        without: Number.isFinite(without) ? without : null,
+        nearest: Number.isFinite(nearest) ? nearest : null,
+      })
+    }
+  }
+  return effects
 }
 
 /** Counts and ranges over the points that pass the filters. */

@@ -59,7 +59,7 @@ export async function storeChunk(
             vals: table.subarray(c * count, (c + 1) * count),
           })),
         )
-      await boss.complete(lease.queue, lease.id, undefined, { db: within(tx) })
+      await boss.complete(lease.queue, lease.id, {}, { db: within(tx) })
       // Last, because everyone who stores for this run waits here: whoever stores the last chunk sees all others.
       const [open] = await tx
         .select({ id: run.id })
@@ -134,7 +134,7 @@ export async function finishRun(lease: Lease, of: Run): Promise<boolean> {
         .returning({ id: run.id })
       if (!ended) throw new Refused()
       if (records.length > 0) await tx.insert(pointResult).values(records).onConflictDoNothing()
-      await boss.complete(lease.queue, lease.id, undefined, { db: within(tx) })
+      await boss.complete(lease.queue, lease.id, {}, { db: within(tx) })
       return true
     }),
   )
