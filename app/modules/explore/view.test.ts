@@ -17,7 +17,7 @@ const columns = pointColumns([
 ])
 const column = (id: string) => columns.find((one) => one.id === id) as PointColumn
 const search =
-  'x=coolantPressureDrop&y=outsideArea&sort=outsideArea&dir=down&page=2&point=17&min.outsideArea=30&max.outsideArea=50&max.coolantPressureDrop=60000&meets=1&fluid=r134a&tube.outsideDiameter=0.01905'
+  'x=coolantPressureDrop&y=outsideArea&sort=outsideArea&dir=down&page=2&point=17&min.outsideArea=30&max.outsideArea=50&max.coolantPressureDrop=60000&all=1&fluid=r134a&tube.outsideDiameter=0.01905'
 
 test('the URL’s view is read; what names nothing is left out', () => {
   const view = parseView(
@@ -33,12 +33,12 @@ test('the URL’s view is read; what names nothing is left out', () => {
     page: 2,
     point: 17,
     pinned: [3],
-    meetingLimits: true,
+    all: true,
     ranges: { outsideArea: { min: 30, max: 50 }, coolantPressureDrop: { max: 60000 } },
     inputs: { fluid: 'r134a', 'tube.outsideDiameter': 0.01905 },
   })
   const empty = parseView(new URLSearchParams('page=-1&point=1.5&min.outsideArea='), columns)
-  expect(empty).toMatchObject({ page: 0, point: null, ranges: {}, meetingLimits: false })
+  expect(empty).toMatchObject({ page: 0, point: null, ranges: {}, all: false })
   expect(parseView(new URLSearchParams('point=refined'), columns).point).toBe('refined')
 })
 
@@ -62,16 +62,15 @@ test('filters are said in words, each with what lifts it', () => {
   const names = { fluid: { r134a: 'R134a' } }
   const words = filterWords(view, columns, 'si', names)
   expect(words.map(({ text }) => text.replaceAll('\u00a0', ' '))).toEqual([
-    'meets every limit',
     'outside area 30 to 50 m²',
     'coolant pressure drop at most 60 kPa',
     'fluid R134a',
     'tube outside diameter 19.05 mm',
   ])
-  expect(words[1].without).toEqual({ 'min.outsideArea': null, 'max.outsideArea': null })
-  expect(filterWords(view, columns, 'us', names)[2].text).toBe('coolant pressure drop at most 8.702 psi')
+  expect(words[0].without).toEqual({ 'min.outsideArea': null, 'max.outsideArea': null })
+  expect(filterWords(view, columns, 'us', names)[1].text).toBe('coolant pressure drop at most 8.702 psi')
   const left = new URLSearchParams(unfiltered(new URLSearchParams(search), columns))
-  expect([...left.keys()]).toEqual(['x', 'y', 'sort', 'dir', 'point'])
+  expect([...left.keys()]).toEqual(['x', 'y', 'sort', 'dir', 'point', 'all'])
 })
 
 test('bounds are typed in the reader’s unit and carried in SI', () => {

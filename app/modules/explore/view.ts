@@ -20,7 +20,8 @@ export type ExploreView = {
   /** Column ids in order; empty: the usual ones. */
   columns: string[]
   ranges: Record<string, { min?: number; max?: number }>
-  meetingLimits: boolean
+  /** The table lists points that miss a limit too. */
+  all: boolean
   outcome: string | null
   inputs: Record<string, SweptValue>
 }
@@ -72,7 +73,7 @@ export function parseView(search: URLSearchParams, columns: readonly PointColumn
     pinned: [...new Set(search.getAll('pin').flatMap((text) => whole(text) ?? []))].slice(0, 4),
     columns: [...new Set(search.getAll('column'))].filter((one) => known.has(one)),
     ranges,
-    meetingLimits: search.get('meets') === '1',
+    all: search.get('all') === '1',
     outcome: OUTCOMES.some(({ code }) => code === outcome) ? outcome : null,
     inputs,
   }
@@ -99,7 +100,7 @@ export function changed(search: URLSearchParams, change: Change): string {
 export function unfiltered(search: URLSearchParams, columns: readonly PointColumn[]): string {
   const inputs = new Set(columns.filter(({ kind }) => kind === 'input').map(({ id }) => id))
   const drop = [...search.keys()].filter(
-    (key) => /^(min|max)\./.test(key) || key === 'meets' || key === 'outcome' || inputs.has(key),
+    (key) => /^(min|max)\./.test(key) || key === 'outcome' || inputs.has(key),
   )
   return changed(search, Object.fromEntries(drop.map((key) => [key, null])))
 }
@@ -118,7 +119,6 @@ export function filterWords(
 ): FilterWord[] {
   const find = (id: string) => columns.find((column) => column.id === id)
   const words: FilterWord[] = []
-  if (view.meetingLimits) words.push({ text: 'meets every limit', without: { meets: null } })
   for (const [id, { min, max }] of Object.entries(view.ranges)) {
     const column = find(id)
     if (!column) continue

@@ -1,0 +1,269 @@
+// What the Explore page and the point sheet show, put together from run, points and plan.
+import { AppError } from '#app/http/errors.ts'
+import type { PointFilters } from '#app/modules/points/point-types.ts'
+import {
+  aggregates,
+  pageOfPoints,
+  plotColumns,
+  pointSheet,
+  refinedBest,
+} from '#app/modules/points/points.server.ts'
+import { runProgress } from '#app/modules/runs/progress.server.ts'
+import { isFinal } from '#app/modules/runs/progress.ts'
+import { planOfRevision } from '#app/modules/runs/run-plan.server.ts'
+import { listRuns, type RunListing } from '#app/modules/runs/runs.server.ts'
+import { KEY_RESULT_INDEX } from '#engine/bundle/key-results.ts'
+import { LIMITS } from '#engine/sweep/limits.ts'
+import { type PlanVariable, pointCase, type SweepPlan } from '#engine/sweep/plan.ts'
+import { pointColumns } from './columns.ts'
+import type { LimitEffect } from './finding.ts'
+import { caseNames, choiceNames } from './names.server.ts'
+import { type ExploreView, PAGE_SIZE, parseView } from './view.ts'
+
+/** As many marks as an SVG plot draws without keeping a reader waiting. */
+const PLOT_MARKS = 4000
+
+/** A variable as the page needs it: with its values where they are few enough to choose from. */
+function pageVariable({ path, label, symbol, dimension, kind, tubeSized, values, between }: PlanVariable) {
+  return {
+    path,
+    label,
+    symbol,
+    dimension,
+    kind,
+    tubeSized,
+    values: between || values.length > 40 ? [] : [...values],
+  }
+}
+
+function runSummary({ id, revision, state, plannedAt, endedAt, engineVersion, points, done }: RunListing) {
+  return {
+    id,
+    revision,
+    state,
+    plannedAt: plannedAt.toISOString(),
+    endedAt: endedAt?.toISOString() ?? null,
+    engineVersion,
+    points,
+    done,
+  }
+}
+
+async function runOfStudy(
+  studyId: string,
+  asked: string | null,
+): Promise<{ runs: RunListing[]; run: RunListing | null }> {
+  const runs = await listRuns(studyId)
+  if (asked === null) return { runs, run: runs[0] ?? null }
+  const run = runs.find(({ id }) => id === asked)
+  if (!run) throw new AppError('not-found', 'This study has no such run.')
+  return { runs, run }
+}
+
+export async function explorePage(studyId: string, search: URLSearchParams) {
+  const { runs, run } = await runOfStudy(studyId, search.get('run'))
+  if (!run) return { kind: 'empty' as const }
+  const plan = await planOfRevision(run.revisionId)
+  const variables = plan.variables.map(pageVariable)
+  const columns = pointColumns(variables)
+  const view = parseView(search, columns)
+  const [progress, all, refined] = await Promise.all([
+    runProgress(run.id),
+    aggregates(run.id),
+    refinedBest(run.id),
+  ])
+  const usual = usualView(plan, all.ranges)
+  const filters: PointFilters = {
+    ranges: view.ranges,
+    inputs: view.inputs,
+    ...(view.outcome ? { outcome: view.outcome } : {}),
+  }
+  const x = view.x ?? usual.x
+  const y = view.y ?? usual.y
+  const colour = view.colour === 'none' ? null : (view.colour ?? usual.colour)
+  const tableAll = view.all || all.meetingLimits === 0
+  const final = isFinal(run.state)
+  const [page, plot, effects] = await Promise.all([
+    pageOfPoints(run.id, {
+      sort: view.sort ?? plan.study.objective,
+      descending: view.descending,
+      filters: tableAll ? filters : { ...filters, meetingLimits: true },
+      limit: PAGE_SIZE,
+      offset: view.page * PAGE_SIZE,
+    }),
+    plotColumns(run.id, { x, y, colour: colour ?? undefined, max: PLOT_MARKS, filters }),
+    final ? limitEffects(run.id, plan, all.meetingLimits > 0) : null,
+  ])
+  const best = progress.best
+  const selected = await selectedPoint(run.id, plan, view, best?.point ?? closestOf(effects), refined)
+  const bestCase = best ? pointCase(plan, best.point) : null
+  return {
+    kind: 'run' as const,
+    runs: runs.map(runSummary),
+    run: runSummary(run),
+    progress,
+    objective: plan.study.objective,
+    limits: plan.study.limits,
+    variables,
+    names: choiceNames(plan.variables),
+    x,
+    y,
+    colour,
+    tableAll,
+    aggregates: all,
+    page,
+    plot,
+    limitEffects: effects,
+    best: best && bestCase ? { ...best, case: bestCase, names: caseNames(bestCase) } : null,
+    refined: refined
+      ? {
+          result: refined.result,
+          case: refined.case,
+          names: caseNames(refined.case),
+          improved: refined.improved === true,
+          statement: typeof refined.statement === 'string' ? refined.statement : '',
+        }
+      : null,
+    selected,
+    pinned: await Promise.all(
+      view.pinned.filter((point) => point < plan.points).map((point) => sheetOf(run.id, point)),
+    ),
+  }
+}
+
+export type ExploreRun = Extract<Awaited<ReturnType<typeof explorePage>>, { kind: 'run' }>
+
+async function sheetOf(runId: string, point: number) {
+  const sheet = await pointSheet(runId, point)
+  return { ...sheet, point: sheet.point as number | 'refined', names: caseNames(sheet.case) }
+}
+
+async function selectedPoint(
+  runId: string,
+  plan: SweepPlan,
+  view: ExploreView,
+  fallback: number | null,
+  refined: Awaited<ReturnType<typeof refinedBest>>,
+) {
+  if (view.point === 'refined' && refined) return refinedSheet(runId, refined)
+  const asked = typeof view.point === 'number' && view.point < plan.points ? view.point : fallback
+  return asked === null ? null : sheetOf(runId, asked)
+}
+
+function refinedSheet(runId: string, refined: NonNullable<Awaited<ReturnType<typeof refinedBest>>>) {
+  return {
+    runId,
+    point: 'refined' as number | 'refined',
+    case: refined.case,
+    result: refined.result,
+    stored: {} as Record<string, number | null>,
+    storedEngineVersion: refined.engineVersion,
+    engineVersion: refined.engineVersion,
+    recorded: true,
+    differences: [],
+    names: caseNames(refined.case),
+  }
+}
+
+/** Axes, colour and columns of a page nobody has chosen them on. */
+function usualView(plan: SweepPlan, ranges: Record<string, unknown>) {
+  const { limits, objective } = plan.study
+  const has = (id: string) => ranges[id] !== undefined
+  const limited = LIMITS.filter(({ id, result }) => limits[id]?.max !== undefined && has(result)).map(
+    ({ result }) => result,
+  )
+  const x =
+    [...limited, 'coolantPressureDrop', 'vapourPressureDrop'].find((id) => id !== objective && has(id)) ??
+    'tubeLength'
+  const few = ({ values, between }: PlanVariable) => !between && values.length >= 2 && values.length <= 6
+  const colour =
+    plan.variables.find(
+      (variable) => few(variable) && ['tube.outsideDiameter', 'tube', 'fluid'].includes(variable.path),
+    ) ?? plan.variables.find(few)
+  return { x, y: objective as string, colour: colour?.path ?? null }
+}
+
+const effectsKept = new Map<string, Promise<(LimitEffect & { nearestPoint: number | null })[]>>()
+
+/** What each limit does, the others held. Of an ended run, whose points no longer change: kept. */
+function limitEffects(runId: string, plan: SweepPlan, someMeet: boolean) {
+  const known = effectsKept.get(runId)
+  if (known) return known
+  const found = findLimitEffects(runId, plan, someMeet)
+  effectsKept.set(runId, found)
+  found.catch(() => effectsKept.delete(runId))
+  if (effectsKept.size > 64) effectsKept.delete(effectsKept.keys().next().value as string)
+  return found
+}
+
+async function findLimitEffects(runId: string, plan: SweepPlan, someMeet: boolean) {
+  const { limits, objective } = plan.study
+  const effects: (LimitEffect & { nearestPoint: number | null })[] = []
+  for (const { id, result } of LIMITS)
+    for (const side of ['max', 'min'] as const) {
+      const bound = limits[id]?.[side]
+      if (bound === undefined) continue
+      const ranges: NonNullable<PointFilters['ranges']> = {}
+      for (const other of LIMITS) {
+        const given = limits[other.id]
+        if (!given) continue
+        const kept = other.id === id ? { ...given, [side]: undefined } : given
+        if (kept.min !== undefined || kept.max !== undefined) ranges[other.result] = kept
+      }
+      const filters = { outcome: 'evaluated', ranges }
+      const value = async (sort: string, descending: boolean) => {
+        const { rows } = await pageOfPoints(runId, { filters, sort, descending, limit: 1 })
+        return rows[0] ? { point: rows[0].point, value: rows[0].results[KEY_RESULT_INDEX[sort]] } : null
+      }
+      const least = await value(objective, false)
+      const nearest = someMeet ? null : await value(result, side === 'min')
+      effects.push({
+        limit: id,
+        side,
+        bound,
+        without: least?.value ?? null,
+        nearest: nearest?.value ?? null,
+        nearestPoint: nearest?.value == null ? null : nearest.point,
+      })
+    }
+  return effects
+}
+
+/** Where nothing meets every limit, the point nearest to doing so. */
+function closestOf(
+  effects: readonly (LimitEffect & { nearestPoint: number | null })[] | null,
+): number | null {
+  const near = (effects ?? []).filter((effect) => effect.nearest !== null)
+  near.sort(
+    (a, b) =>
+      Math.abs((a.nearest as number) - a.bound) / Math.abs(a.bound || 1) -
+      Math.abs((b.nearest as number) - b.bound) / Math.abs(b.bound || 1),
+  )
+  return near[0]?.nearestPoint ?? null
+}
+
+/** One point's sheet, of the run asked for or the study's latest. */
+export async function sheetPage(studyId: string, point: string, asked: string | null) {
+  const { run } = await runOfStudy(studyId, asked)
+  if (!run) throw new AppError('not-found', 'This study has no run yet, and so no points.')
+  const plan = await planOfRevision(run.revisionId)
+  if (point === 'refined') {
+    const refined = await refinedBest(run.id)
+    if (!refined) throw new AppError('not-found', 'This run has no refined point.')
+    return {
+      run: runSummary(run),
+      limits: plan.study.limits,
+      sheet: refinedSheet(run.id, refined),
+      best: run.bestPoint,
+    }
+  }
+  if (!/^\d{1,7}$/.test(point)) throw new AppError('not-found', `The run has points 0 to ${run.points - 1}.`)
+  return {
+    run: runSummary(run),
+    limits: plan.study.limits,
+    sheet: await sheetOf(run.id, Number(point)),
+    best: run.bestPoint,
+  }
+}
+
+export type SheetPage = Awaited<ReturnType<typeof sheetPage>>
