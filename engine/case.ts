@@ -1,6 +1,15 @@
 // A case: everything that fixes one evaluation. The schema here is the only one; form, file, API and job payload share it.
 import { z } from 'zod'
-import { coolants, findCoolant, findFluid, fluids } from '#engine/fluids/index.ts'
+import { findCard } from '#engine/correlations/registry.ts'
+import {
+  coolantModel,
+  coolants,
+  findCoolant,
+  findFluid,
+  fluidModel,
+  fluids,
+  saturationPressure,
+} from '#engine/fluids/index.ts'
 import { economicsDefaults, materials } from '#engine/materials.ts'
 import { nearest } from '#engine/sweep/nearest.ts'
 import { type Dimension, parseQuantity } from '#engine/units.ts'
@@ -139,24 +148,24 @@ const propertyFields = {
 
 const fluidSchema = z.union(
   [
-    z
-      .string()
-      .transform((id, ctx): string => {
-        const card = findFluid(id)
-        if (card) return card.id
-        ctx.addIssue({
-          code: 'custom',
-          message: said(`there is no fluid "${id}" in the library`, nearIds(id, fluids)),
-          input: id,
-        })
-        return z.NEVER
-      }),
+    z.string().transform((id, ctx): string => {
+      const card = findFluid(id)
+      if (card) return card.id
+      ctx.addIssue({
+        code: 'custom',
+        message: said(`there is no fluid "${id}" in the library`, nearIds(id, fluids)),
+        input: id,
+      })
+      return z.NEVER
+    }),
     record({ properties: record(propertyFields) }),
   ],
   {
     error: (issue) =>
       said(
-        issue.input === undefined ? 'it is missing' : 'it is neither a library id nor properties given by hand',
+        issue.input === undefined
+          ? 'it is missing'
+          : 'it is neither a library id nor properties given by hand',
         'give a library id such as "r134a", or { "properties": { liquidDensity, latentHeat, liquidViscosity, liquidConductivity, … } }',
       ),
   },
@@ -171,24 +180,24 @@ const coolantFields = {
 
 const coolantSchema = z.union(
   [
-    z
-      .string()
-      .transform((id, ctx): string => {
-        const card = findCoolant(id)
-        if (card) return card.id
-        ctx.addIssue({
-          code: 'custom',
-          message: said(`there is no coolant "${id}"`, nearIds(id, coolants)),
-          input: id,
-        })
-        return z.NEVER
-      }),
+    z.string().transform((id, ctx): string => {
+      const card = findCoolant(id)
+      if (card) return card.id
+      ctx.addIssue({
+        code: 'custom',
+        message: said(`there is no coolant "${id}"`, nearIds(id, coolants)),
+        input: id,
+      })
+      return z.NEVER
+    }),
     record({ properties: record(coolantFields) }),
   ],
   {
     error: (issue) =>
       said(
-        issue.input === undefined ? 'it is missing' : 'it is neither a coolant id nor properties given by hand',
+        issue.input === undefined
+          ? 'it is missing'
+          : 'it is neither a coolant id nor properties given by hand',
         `give an id (${coolants.map((c) => c.id).join(', ')}) or { "properties": { density, specificHeat, viscosity, conductivity } }`,
       ),
   },
@@ -255,7 +264,10 @@ const surfaceSchema = z.discriminatedUnion(
   ],
   {
     error: () =>
-      said('its kind is not known', 'give { "kind": "plain" }, { "kind": "integralFin", … } or { "kind": "dropwise", … }'),
+      said(
+        'its kind is not known',
+        'give { "kind": "plain" }, { "kind": "integralFin", … } or { "kind": "dropwise", … }',
+      ),
   },
 )
 
@@ -312,7 +324,9 @@ const vapourSchema = record({
   gas: record({
     kind: oneOf(['air']),
     moleFraction: quantity('fraction', { min: 0, max: 0.9, allowed: 'from 0 to 0.9' }),
-    ventFraction: quantity('fraction', { above: 0, max: 0.9, allowed: 'above 0 and at most 0.9' }).default(0.02),
+    ventFraction: quantity('fraction', { above: 0, max: 0.9, allowed: 'above 0 and at most 0.9' }).default(
+      0.02,
+    ),
   }).optional(),
 })
 
@@ -372,7 +386,9 @@ const economicsSchema = record({
   years: quantity('count', { above: 0, max: 200, allowed: 'above 0 and at most 200 years' }).default(
     economicsDefaults.years,
   ),
-  interest: quantity('fraction', { min: 0, max: 1, allowed: 'from 0 to 1' }).default(economicsDefaults.interest),
+  interest: quantity('fraction', { min: 0, max: 1, allowed: 'from 0 to 1' }).default(
+    economicsDefaults.interest,
+  ),
   pumpEfficiency: quantity('fraction', { above: 0, max: 1, allowed: 'above 0 and at most 1' }).default(
     economicsDefaults.pumpEfficiency,
   ),
@@ -410,7 +426,8 @@ export function parseCase(input: unknown): { ok: true; case: Case } | { ok: fals
   const faults = faultsFromIssues(parsed.error.issues)
   // The checks across fields run only on whole objects: a pair that excludes itself is said at once all the same.
   for (const fault of exclusiveFaults(input))
-    if (!faults.some((known) => known.path === fault.path && known.problem === fault.problem)) faults.push(fault)
+    if (!faults.some((known) => known.path === fault.path && known.problem === fault.problem))
+      faults.push(fault)
   return { ok: false, faults }
 }
 
@@ -431,7 +448,221 @@ const BOTH_STATES: Fault = {
 
 function exclusiveFaults(input: unknown): Fault[] {
   const faults: Fault[] = []
-  if (has(input, 'duty') && has((input as { bundle?: unknown }).bundle, 'length')) faults.push(BOTH_DUTY_AND_LENGTH)
+  if (has(input, 'duty') && has((input as { bundle?: unknown }).bundle, 'length'))
+    faults.push(BOTH_DUTY_AND_LENGTH)
   if (has(input, 'saturationTemperature') && has(input, 'saturationPressure')) faults.push(BOTH_STATES)
+  return faults
+}
+
+/** What a fluid given by hand must hold beyond the four properties every film needs, by the method that needs it. */
+function missingProperties(value: Case): Fault[] {
+  if (typeof value.fluid === 'string') return []
+  const given = value.fluid.properties as Record<string, number | undefined>
+  const faults: Fault[] = []
+  const plain = value.tube.surface.kind === 'plain'
+  const asked = METHOD_ORDER.filter((choice) => {
+    if (choice === 'fins') return value.tube.surface.kind === 'integralFin'
+    if (choice === 'dropwise') return value.tube.surface.kind === 'dropwise'
+    if (choice === 'gas') return value.vapour.gas !== undefined
+    if (choice === 'twoPhase') return value.methods.vapourPressureDrop !== 'none'
+    return plain || choice !== 'film'
+  })
+  for (const choice of asked) {
+    const card = findCard(`${choice}.${value.methods[choice]}`)
+    for (const property of card?.requires ?? []) {
+      if (given[property] !== undefined || faults.some((fault) => fault.path.endsWith(`.${property}`)))
+        continue
+      const cheaper =
+        choice === 'vapourShear' || choice === 'vapourPressureDrop' ? `, or methods.${choice} "none"` : ''
+      const simpler = choice === 'latentHeat' ? ', or methods.latentHeat "plain"' : cheaper
+      faults.push({
+        path: `fluid.properties.${property}`,
+        problem: `it is missing and the method ${choice} "${value.methods[choice]}" needs it`,
+        remedy: `give it, or choose a method that does without it${simpler}`,
+      })
+    }
+  }
+  if (value.methods.vapourPressureDrop !== 'none' && given.pressure === undefined)
+    faults.push({
+      path: 'fluid.properties.pressure',
+      problem: 'it is missing and a vapour pressure drop is asked for',
+      remedy: 'give the pressure of the vapour, or methods.vapourPressureDrop "none"',
+    })
+  return faults
+}
+
+const METHOD_ORDER = Object.keys(METHOD_CHOICES) as MethodChoice[]
+
+/** What must hold between the fields of a case whose every field is right by itself. */
+function crossFaults(value: Case): Fault[] {
+  const faults: Fault[] = []
+  const fault = (path: string, problem: string, remedy: string) => faults.push({ path, problem, remedy })
+  const { tube, bundle, drive, methods } = value
+
+  if (value.saturationTemperature === undefined && value.saturationPressure === undefined)
+    fault('saturationTemperature', 'it is missing', 'give saturationTemperature or saturationPressure')
+  else if (value.saturationTemperature !== undefined && value.saturationPressure !== undefined)
+    faults.push(BOTH_STATES)
+  else if (typeof value.fluid !== 'string') {
+    if (value.saturationTemperature === undefined)
+      fault(
+        'saturationPressure',
+        'a fluid given by hand has no saturation line',
+        'give saturationTemperature',
+      )
+  } else {
+    const model = fluidModel(value.fluid)
+    const [low, high] = [model.minTemperature, model.maxTemperature]
+    if (value.saturationTemperature !== undefined) {
+      const T = value.saturationTemperature
+      if (T < low || T > high)
+        fault(
+          'saturationTemperature',
+          `${T} K is outside the table of ${value.fluid}`,
+          `allowed is ${low} to ${high} K (${(low - 273.15).toFixed(1)} to ${(high - 273.15).toFixed(1)} °C)`,
+        )
+    } else {
+      const p = value.saturationPressure as number
+      const [from, to] = [saturationPressure(model, low), saturationPressure(model, high)]
+      if (p < from || p > to)
+        fault(
+          'saturationPressure',
+          `${p} Pa is outside the table of ${value.fluid}`,
+          `allowed is ${Math.ceil(from)} to ${Math.floor(to)} Pa`,
+        )
+    }
+  }
+
+  if (value.duty === undefined && bundle.length === undefined)
+    fault(
+      'duty',
+      'neither duty nor bundle.length is given',
+      'give duty to size the length, or bundle.length to rate the duty',
+    )
+  else if (value.duty !== undefined && bundle.length !== undefined) faults.push(BOTH_DUTY_AND_LENGTH)
+
+  const cooled = drive.kind === 'coolant' ? drive : drive.coolant
+  if (drive.kind === 'coolant') {
+    const given = (['velocity', 'massFlow', 'outletTemperature'] as const).filter(
+      (name) => drive[name] !== undefined,
+    )
+    const auto = bundle.tubesPerRow === 'auto'
+    const pair = auto && given.length === 2 && given.includes('velocity')
+    if (given.length === 0)
+      fault(
+        'drive.velocity',
+        'no coolant flow is given',
+        'give exactly one of velocity, massFlow, outletTemperature',
+      )
+    else if (given.length > 1 && !pair)
+      fault(
+        `drive.${given[1]}`,
+        `${given.join(' and ')} are given together`,
+        'give exactly one of velocity, massFlow, outletTemperature; velocity with one of the others only when bundle.tubesPerRow is "auto"',
+      )
+    if (drive.outletTemperature !== undefined) {
+      if (value.duty === undefined)
+        fault(
+          'drive.outletTemperature',
+          'an outlet temperature needs a duty',
+          'give duty, or velocity or massFlow instead',
+        )
+      if (drive.outletTemperature <= drive.inletTemperature)
+        fault(
+          'drive.outletTemperature',
+          `${drive.outletTemperature} K is not above the inlet temperature`,
+          `give more than ${drive.inletTemperature} K`,
+        )
+    }
+    if (auto && !pair)
+      fault(
+        'bundle.tubesPerRow',
+        '"auto" needs the coolant velocity together with massFlow or outletTemperature',
+        'give both, or a whole number of tubes per row',
+      )
+  } else if (bundle.tubesPerRow === 'auto')
+    fault('bundle.tubesPerRow', '"auto" needs a coolant drive', 'give a whole number of tubes per row')
+
+  if (cooled) {
+    const under = drive.kind === 'coolant' ? 'drive' : 'drive.coolant'
+    if (typeof cooled.coolant === 'string') {
+      const model = coolantModel(cooled.coolant)
+      const lowest = Math.max(model.minTemperature, model.freezingTemperature)
+      if (cooled.inletTemperature < lowest || cooled.inletTemperature > model.maxTemperature)
+        fault(
+          `${under}.inletTemperature`,
+          `${cooled.inletTemperature} K is beyond freezing or outside the table of ${cooled.coolant}`,
+          `allowed is above ${lowest} and up to ${model.maxTemperature} K`,
+        )
+    }
+    if (value.saturationTemperature !== undefined && cooled.inletTemperature >= value.saturationTemperature)
+      fault(
+        `${under}.inletTemperature`,
+        `${cooled.inletTemperature} K is not below the saturation temperature: nothing condenses`,
+        `give less than ${value.saturationTemperature} K`,
+      )
+    if (tube.wallThickness === undefined)
+      fault(
+        'tube.wallThickness',
+        'it is missing and a coolant is named',
+        'give the wall thickness of the tube',
+      )
+    if (tube.material === undefined && tube.conductivity === undefined)
+      fault(
+        'tube.material',
+        'neither material nor conductivity is given and a coolant is named',
+        'give one of them',
+      )
+  }
+  if (tube.material !== undefined && tube.conductivity !== undefined)
+    fault('tube.conductivity', 'material and conductivity are both given', 'give exactly one of the two')
+  if (tube.wallThickness !== undefined && 2 * tube.wallThickness >= tube.outsideDiameter)
+    fault(
+      'tube.wallThickness',
+      `${tube.wallThickness} m leaves no bore in a tube of ${tube.outsideDiameter} m`,
+      `give less than half the outside diameter, ${tube.outsideDiameter / 2} m`,
+    )
+
+  if (bundle.shape === 'circular') {
+    if (bundle.tubesPerRow !== undefined)
+      fault(
+        'bundle.tubesPerRow',
+        'a circular bundle has as many tubes in a row as its chord holds',
+        'leave it out, or choose shape "rectangular"',
+      )
+  } else if (bundle.tubesPerRow === undefined)
+    fault('bundle.tubesPerRow', 'it is missing', 'give a whole number from 1 to 2000, or "auto"')
+  if (bundle.passes > bundle.rows)
+    fault(
+      'bundle.passes',
+      `${bundle.passes} passes do not fit ${bundle.rows} rows`,
+      `give at most one pass a row, ${bundle.rows}`,
+    )
+
+  if (tube.surface.kind !== 'plain')
+    fault(
+      'tube.surface.kind',
+      `"${tube.surface.kind}" is not evaluated by this version`,
+      'give { "kind": "plain" }',
+    )
+  if (value.vapour.gas !== undefined)
+    fault(
+      'vapour.gas',
+      'non-condensable gas is not evaluated by this version',
+      'leave it out; the result is that of pure vapour',
+    )
+  if (value.vapour.superheat > 0)
+    fault(
+      'vapour.superheat',
+      'superheat is not evaluated by this version',
+      'leave it out; the vapour is taken as saturated',
+    )
+  if (methods.vapourShear === 'mcnaught' || methods.vapourShear === 'honda')
+    fault(
+      'methods.vapourShear',
+      `"${methods.vapourShear}" is not evaluated by this version`,
+      'choose butterworth, shekriladzeGomelauri, rose, fujiiUeharaKurata or none',
+    )
+  faults.push(...missingProperties(value))
   return faults
 }

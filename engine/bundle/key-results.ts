@@ -25,7 +25,13 @@ export const KEY_RESULTS: readonly KeyResult[] = [
   key('outsideArea', 'Outside area', 'A', 'area', 'outside_area_m2'),
   key('tubeLength', 'Tube length', 'L', 'length', 'tube_length_m'),
   key('duty', 'Duty', 'Q', 'power', 'duty_w'),
-  key('overallCoefficient', 'Overall coefficient', 'U', 'heatTransferCoefficient', 'overall_coefficient_w_m2k'),
+  key(
+    'overallCoefficient',
+    'Overall coefficient',
+    'U',
+    'heatTransferCoefficient',
+    'overall_coefficient_w_m2k',
+  ),
   key(
     'meanCoefficient',
     'Mean outside coefficient',
@@ -74,7 +80,8 @@ export const OUTCOMES: readonly Outcome[] = [
   {
     code: 'inputInvalid',
     text: 'the combination of inputs describes no bundle (wall, rows, passes or tubes)',
-    remedy: 'a wall thinner than the tube radius, whole rows and tubes of at least 1, no more passes than rows',
+    remedy:
+      'a wall thinner than the tube radius, whole rows and tubes of at least 1, no more passes than rows',
   },
   {
     code: 'propertyMissing',
