@@ -10,7 +10,13 @@ export function buttonClass(look: ButtonLook = 'plain', small = false, className
 
 type Looks = { look?: ButtonLook; small?: boolean }
 
-export function Button({ look, small, className, type = 'button', ...rest }: ComponentProps<'button'> & Looks) {
+export function Button({
+  look,
+  small,
+  className,
+  type = 'button',
+  ...rest
+}: ComponentProps<'button'> & Looks) {
   return <button type={type} className={buttonClass(look, small, className)} {...rest} />
 }
 

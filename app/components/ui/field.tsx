@@ -25,14 +25,24 @@ function faultText(fault: Problem): string | null {
 /** Several fields on one line where there is room, one under another where there is not. */
 export function FieldRow({ children, className = '' }: { children: ReactNode; className?: string }) {
   return (
-    <div className={`grid grid-cols-[repeat(auto-fit,minmax(min(100%,11rem),1fr))] items-start gap-x-4 gap-y-4 ${className}`}>
+    <div
+      className={`grid grid-cols-[repeat(auto-fit,minmax(min(100%,11rem),1fr))] items-start gap-x-4 gap-y-4 ${className}`}
+    >
       {children}
     </div>
   )
 }
 
 /** A titled group of fields. */
-export function FieldGroup({ title, intro, children }: { title: string; intro?: ReactNode; children: ReactNode }) {
+export function FieldGroup({
+  title,
+  intro,
+  children,
+}: {
+  title: string
+  intro?: ReactNode
+  children: ReactNode
+}) {
   return (
     <fieldset className="min-w-0">
       <legend className="mb-1 text-lead font-bold">{title}</legend>

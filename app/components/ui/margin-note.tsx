@@ -23,7 +23,12 @@ export function MarginNote({
   )
 }
 
-export type EngineNote = { code: string; severity: 'info' | 'caution' | 'outOfRange' | 'notMet'; text: string; source: string }
+export type EngineNote = {
+  code: string
+  severity: 'info' | 'caution' | 'outOfRange' | 'notMet'
+  text: string
+  source: string
+}
 
 const TONE: Record<EngineNote['severity'], NoteTone> = {
   info: 'sound',
@@ -42,8 +47,18 @@ function clauses(text: string): [string, string] {
 }
 
 /** The notes of a result, gravest first; beyond `first`, the rest are folded away, not missing. */
-export function NoteList({ notes, labels, first }: { notes: EngineNote[]; labels?: Record<string, string>; first?: number }) {
-  const sorted = notes.map((note, i) => ({ note, i })).sort((a, b) => RANK[a.note.severity] - RANK[b.note.severity] || a.i - b.i)
+export function NoteList({
+  notes,
+  labels,
+  first,
+}: {
+  notes: EngineNote[]
+  labels?: Record<string, string>
+  first?: number
+}) {
+  const sorted = notes
+    .map((note, i) => ({ note, i }))
+    .sort((a, b) => RANK[a.note.severity] - RANK[b.note.severity] || a.i - b.i)
   const shown = first === undefined ? sorted : sorted.slice(0, first)
   const rest = sorted.slice(shown.length)
   const item = ({ note, i }: (typeof sorted)[number]) => {

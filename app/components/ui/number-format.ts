@@ -35,7 +35,9 @@ export function duration(seconds: number): string {
   if (s < 60) return `${s} s`
   const minutes = Math.floor(s / 60)
   if (minutes < 60) return s % 60 === 0 ? `${minutes} min` : `${minutes} min ${s % 60} s`
-  return minutes % 60 === 0 ? `${Math.floor(minutes / 60)} h` : `${Math.floor(minutes / 60)} h ${minutes % 60} min`
+  return minutes % 60 === 0
+    ? `${Math.floor(minutes / 60)} h`
+    : `${Math.floor(minutes / 60)} h ${minutes % 60} min`
 }
 
 export function plural(count: number, one: string, many = `${one}s`): string {

@@ -30,11 +30,23 @@ export function PageHead({
 
 /** A page without a margin column. */
 export function PlainPage({ children }: { children: ReactNode }) {
-  return <div className="mx-auto grid w-full max-w-[84rem] gap-6 px-4 py-6 sm:px-7 sm:py-8 print:p-0">{children}</div>
+  return (
+    <div className="mx-auto grid w-full max-w-[84rem] gap-6 px-4 py-6 sm:px-7 sm:py-8 print:p-0">
+      {children}
+    </div>
+  )
 }
 
 /** Work and margin. The margin is a column from 1080 px up and follows the work below that. */
-export function MarginPage({ children, margin, marginLabel }: { children: ReactNode; margin: ReactNode; marginLabel: string }) {
+export function MarginPage({
+  children,
+  margin,
+  marginLabel,
+}: {
+  children: ReactNode
+  margin: ReactNode
+  marginLabel: string
+}) {
   return (
     <div className="grid grow lg:grid-cols-[minmax(0,1fr)_24.5rem] print:block">
       <div className="grid min-w-0 content-start gap-5 px-4 py-6 sm:px-7 sm:py-8 print:p-0">{children}</div>
@@ -70,13 +82,23 @@ export function Sheet({
           {acts ? <div className="screen-only flex flex-wrap items-center gap-2">{acts}</div> : null}
         </div>
       ) : null}
-      <div className={flush ? '' : `px-4 pb-4 sm:px-5 sm:pb-5 ${title || acts ? '' : 'pt-4 sm:pt-5'}`}>{children}</div>
+      <div className={flush ? '' : `px-4 pb-4 sm:px-5 sm:pb-5 ${title || acts ? '' : 'pt-4 sm:pt-5'}`}>
+        {children}
+      </div>
     </section>
   )
 }
 
 /** Nothing here yet: what will be here, and the act that puts it there. */
-export function EmptyState({ title, children, acts }: { title: string; children?: ReactNode; acts?: ReactNode }) {
+export function EmptyState({
+  title,
+  children,
+  acts,
+}: {
+  title: string
+  children?: ReactNode
+  acts?: ReactNode
+}) {
   return (
     <div className="sheet grid justify-items-start gap-2 border-dashed px-5 py-8 sm:px-8">
       <h2 className="text-lead font-bold">{title}</h2>

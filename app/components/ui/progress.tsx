@@ -14,7 +14,12 @@ export function ProgressBar({ done, total, label }: { done: number; total: numbe
       className="progress-track"
     >
       <svg className="block h-full w-full" viewBox="0 0 1000 8" preserveAspectRatio="none" aria-hidden="true">
-        <rect width={share * 1000} height="8" fill="var(--verdigris)" className="transition-[width] duration-500" />
+        <rect
+          width={share * 1000}
+          height="8"
+          fill="var(--verdigris)"
+          className="transition-[width] duration-500"
+        />
       </svg>
     </div>
   )

@@ -16,7 +16,11 @@ export function SegmentedButtons({
 }) {
   return (
     // biome-ignore lint/a11y/useSemanticElements: a fieldset brings a legend's layout that a toolbar does not want
-    <span role="group" aria-label={label} className="inline-flex overflow-hidden rounded-md border border-line-strong bg-sheet">
+    <span
+      role="group"
+      aria-label={label}
+      className="inline-flex overflow-hidden rounded-md border border-line-strong bg-sheet"
+    >
       {segments.map((segment) => (
         <button
           key={segment.value}
