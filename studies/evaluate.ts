@@ -69,7 +69,7 @@ function propertiesAt([id, ...temperatures]: string[]): unknown {
       throw new Refusal(
         `--properties: "${text}" is not a temperature in the table of ${id}; allowed is ${low} to ${high} K`,
       )
-    return properties(id, T)
+    return properties(id, [T])[0]
   })
 }
 
