@@ -11,15 +11,23 @@ import { measurePointCost, planOfRevision } from './run-plan.server.ts'
 
 const OPEN: Run['state'][] = ['queued', 'running']
 
-/** Plans a run of a kept revision and queues all its chunks, in one transaction. */
-export async function startRun(studyId: string, revisionId: string, acting: Acting): Promise<Run> {
+/**
+ * Plans a run of a kept revision and queues all its chunks, in one transaction. Chunks are cut by the measured cost of
+ * a point unless their size is given.
+ */
+export async function startRun(
+  studyId: string,
+  revisionId: string,
+  acting: Acting,
+  options: { chunkPoints?: number } = {},
+): Promise<Run> {
   const [revision] = await db
     .select({ id: studyRevision.id, number: studyRevision.number })
     .from(studyRevision)
     .where(and(eq(studyRevision.id, revisionId), eq(studyRevision.studyId, studyId)))
   if (!revision) throw new AppError('not-found', 'There is no such revision of this study.')
   const plan = await planOfRevision(revisionId)
-  const chunkPoints = chunkPointsFor(measurePointCost(plan), plan.points)
+  const chunkPoints = options.chunkPoints ?? chunkPointsFor(measurePointCost(plan), plan.points)
   await queue()
   return db.transaction(async (tx) => {
     const [owner] = await tx
