@@ -12,11 +12,14 @@ import { runProgress } from '#app/modules/runs/progress.server.ts'
 import { isFinal } from '#app/modules/runs/progress.ts'
 import { planOfRevision } from '#app/modules/runs/run-plan.server.ts'
 import { listRuns, type RunListing } from '#app/modules/runs/runs.server.ts'
-import { KEY_RESULT_INDEX } from '#engine/bundle/key-results.ts'
+import { KEY_RESULT_INDEX, KEY_RESULTS } from '#engine/bundle/key-results.ts'
+import type { Result } from '#engine/result.ts'
 import { LIMITS } from '#engine/sweep/limits.ts'
-import { type PlanVariable, pointCase, type SweepPlan } from '#engine/sweep/plan.ts'
+import { type PlanVariable, pointCase, pointInputs, type SweepPlan } from '#engine/sweep/plan.ts'
+import { getPath, type SweptValue } from '#engine/sweep/study.ts'
 import { pointColumns } from './columns.ts'
 import type { LimitEffect } from './finding.ts'
+import { keyResultOf } from './limits.ts'
 import { caseNames, choiceNames } from './names.server.ts'
 import { type ExploreView, PAGE_SIZE, parseView } from './view.ts'
 
@@ -96,7 +99,6 @@ export async function explorePage(studyId: string, search: URLSearchParams) {
   ])
   const best = progress.best
   const selected = await selectedPoint(run.id, plan, view, best?.point ?? closestOf(effects), refined)
-  const bestCase = best ? pointCase(plan, best.point) : null
   return {
     kind: 'run' as const,
     runs: runs.map(runSummary),
@@ -114,55 +116,83 @@ export async function explorePage(studyId: string, search: URLSearchParams) {
     page,
     plot,
     limitEffects: effects,
-    best: best && bestCase ? { ...best, case: bestCase, names: caseNames(bestCase) } : null,
-    refined: refined
-      ? {
-          result: refined.result,
-          case: refined.case,
-          names: caseNames(refined.case),
-          improved: refined.improved === true,
-          statement: typeof refined.statement === 'string' ? refined.statement : '',
-        }
-      : null,
+    best: best ? bestOf(plan, best.point, best.results) : null,
+    refined: refined ? { ...refinedSheet(run.id, plan, refined), ...refinedWords(refined) } : null,
     selected,
     pinned: await Promise.all(
-      view.pinned.filter((point) => point < plan.points).map((point) => sheetOf(run.id, point)),
+      view.pinned.filter((point) => point < plan.points).map((point) => sheetOf(run.id, plan, point)),
     ),
   }
 }
 
 export type ExploreRun = Extract<Awaited<ReturnType<typeof explorePage>>, { kind: 'run' }>
 
-async function sheetOf(runId: string, point: number) {
+type Refined = NonNullable<Awaited<ReturnType<typeof refinedBest>>>
+type PointId = number | 'refined'
+
+/** A point's sheet with what plots and headlines need of it: swept values, key results by id, names. */
+async function sheetOf(runId: string, plan: SweepPlan, point: number) {
   const sheet = await pointSheet(runId, point)
-  return { ...sheet, point: sheet.point as number | 'refined', names: caseNames(sheet.case) }
+  return {
+    ...sheet,
+    point: sheet.point as PointId,
+    inputs: pointInputs(plan, point) as (SweptValue | null)[],
+    keyResults: resultsById(sheet.result),
+    names: caseNames(sheet.case),
+  }
 }
+
+export type PointView = Awaited<ReturnType<typeof sheetOf>>
+
+function refinedSheet(runId: string, plan: SweepPlan, refined: Refined): PointView {
+  return {
+    runId,
+    point: 'refined',
+    case: refined.case,
+    result: refined.result,
+    stored: {},
+    storedEngineVersion: refined.engineVersion,
+    engineVersion: refined.engineVersion,
+    recorded: true,
+    differences: [],
+    inputs: plan.variables.map(({ path }) => {
+      const value = getPath(refined.case, path)
+      return typeof value === 'number' || typeof value === 'string' ? value : null
+    }),
+    keyResults: resultsById(refined.result),
+    names: caseNames(refined.case),
+  }
+}
+
+const refinedWords = ({ improved, statement }: Refined) => ({
+  improved: improved === true,
+  statement: typeof statement === 'string' ? statement : '',
+})
+
+function bestOf(plan: SweepPlan, point: number, keyResults: Record<string, number | null>) {
+  const bundle = pointCase(plan, point)
+  return {
+    point: point as PointId,
+    case: bundle,
+    inputs: pointInputs(plan, point) as (SweptValue | null)[],
+    keyResults,
+    names: caseNames(bundle),
+  }
+}
+
+const resultsById = (result: Result): Record<string, number | null> =>
+  Object.fromEntries(KEY_RESULTS.map(({ id }) => [id, keyResultOf(result, id)]))
 
 async function selectedPoint(
   runId: string,
   plan: SweepPlan,
   view: ExploreView,
   fallback: number | null,
-  refined: Awaited<ReturnType<typeof refinedBest>>,
-) {
-  if (view.point === 'refined' && refined) return refinedSheet(runId, refined)
+  refined: Refined | null,
+): Promise<PointView | null> {
+  if (view.point === 'refined' && refined) return refinedSheet(runId, plan, refined)
   const asked = typeof view.point === 'number' && view.point < plan.points ? view.point : fallback
-  return asked === null ? null : sheetOf(runId, asked)
-}
-
-function refinedSheet(runId: string, refined: NonNullable<Awaited<ReturnType<typeof refinedBest>>>) {
-  return {
-    runId,
-    point: 'refined' as number | 'refined',
-    case: refined.case,
-    result: refined.result,
-    stored: {} as Record<string, number | null>,
-    storedEngineVersion: refined.engineVersion,
-    engineVersion: refined.engineVersion,
-    recorded: true,
-    differences: [],
-    names: caseNames(refined.case),
-  }
+  return asked === null ? null : sheetOf(runId, plan, asked)
 }
 
 /** Axes, colour and columns of a page nobody has chosen them on. */
@@ -253,7 +283,7 @@ export async function sheetPage(studyId: string, point: string, asked: string | 
     return {
       run: runSummary(run),
       limits: plan.study.limits,
-      sheet: refinedSheet(run.id, refined),
+      sheet: refinedSheet(run.id, plan, refined),
       best: run.bestPoint,
     }
   }
@@ -261,7 +291,7 @@ export async function sheetPage(studyId: string, point: string, asked: string | 
   return {
     run: runSummary(run),
     limits: plan.study.limits,
-    sheet: await sheetOf(run.id, Number(point)),
+    sheet: await sheetOf(run.id, plan, Number(point)),
     best: run.bestPoint,
   }
 }

@@ -1,0 +1,601 @@
+// Explore: the finding, its figures, the points against their limits, and one point drawn in the margin.
+import { useCallback, useMemo } from 'react'
+import {
+  type ShouldRevalidateFunctionArgs,
+  useLocation,
+  useNavigate,
+  useNavigation,
+  useRevalidator,
+} from 'react-router'
+import type { Mark } from '#app/components/charts/scatter.ts'
+import { ScatterPlot } from '#app/components/charts/scatter-plot.tsx'
+import { AxesForm, type AxisOption } from '#app/components/explore/axes-form.tsx'
+import { FilterBar, type FilterField } from '#app/components/explore/filter-bar.tsx'
+import { Said } from '#app/components/sheet/said.tsx'
+import { ColumnChoice } from '#app/components/table/column-choice.tsx'
+import { PointsTable, type TableColumn, type TableRow } from '#app/components/table/points-table.tsx'
+import { Button, LinkButton } from '#app/components/ui/button.tsx'
+import { MarginNote } from '#app/components/ui/margin-note.tsx'
+import { Menu } from '#app/components/ui/menu.tsx'
+import { Digits, Quantity, useUnits } from '#app/components/ui/number.tsx'
+import { groupedText } from '#app/components/ui/number-format.ts'
+import { EmptyState, MarginPage, PageHead, PlainPage, Sheet } from '#app/components/ui/page.tsx'
+import { ProgressBar } from '#app/components/ui/progress.tsx'
+import { describeCase } from '#app/modules/explore/case-words.ts'
+import { type PointColumn, pointColumns, shown, unitOf } from '#app/modules/explore/columns.ts'
+import { type ExploreRun, explorePage } from '#app/modules/explore/explore.server.ts'
+import { finding } from '#app/modules/explore/finding.ts'
+import { type PlotInput, plotSpec } from '#app/modules/explore/plot.ts'
+import { useRunProgress } from '#app/modules/explore/use-run-progress.ts'
+import {
+  boundToSi,
+  changed,
+  filterWords,
+  PAGE_SIZE,
+  parseView,
+  unfiltered,
+  valueText,
+} from '#app/modules/explore/view.ts'
+import { isFinal } from '#app/modules/runs/progress.ts'
+import { KEY_RESULT_INDEX, OUTCOMES } from '#engine/bundle/key-results.ts'
+import { LIMITS, type Limits } from '#engine/sweep/limits.ts'
+import { OBJECTIVE_LABELS } from '#engine/sweep/objective.ts'
+import type { UnitSystem } from '#engine/units.ts'
+import type { Route } from './+types/explore'
+import { PointFigures } from './explore/figures.tsx'
+import { PinnedPoints } from './explore/pinned-points.tsx'
+import { PointMargin, pointName } from './explore/point-margin.tsx'
+import '#app/components/explore/explore.css'
+
+export async function loader({ params, request }: Route.LoaderArgs) {
+  return explorePage(params.studyId, new URL(request.url).searchParams)
+}
+
+/** A jump within the page changes nothing that is shown. */
+export function shouldRevalidate({
+  currentUrl,
+  nextUrl,
+  defaultShouldRevalidate,
+}: ShouldRevalidateFunctionArgs) {
+  const same = currentUrl.pathname === nextUrl.pathname && currentUrl.search === nextUrl.search
+  return same && currentUrl.hash !== nextUrl.hash ? false : defaultShouldRevalidate
+}
+
+export function meta() {
+  return [{ title: 'Explore · Rowfall' }]
+}
+
+export default function Explore({ loaderData, params }: Route.ComponentProps) {
+  if (loaderData.kind === 'empty')
+    return (
+      <PlainPage>
+        <PageHead title="Nothing to explore yet" />
+        <EmptyState
+          title="The finding stands here once a run has begun"
+          acts={
+            <LinkButton to={`/studies/${params.studyId}/run`} look="main">
+              Go to Run
+            </LinkButton>
+          }
+        >
+          A run evaluates every point of the study; its first points can be explored while the rest are
+          computed.
+        </EmptyState>
+      </PlainPage>
+    )
+  return <ExploreRunPage page={loaderData} studyId={params.studyId} />
+}
+
+function ExploreRunPage({ page, studyId }: { page: ExploreRun; studyId: string }) {
+  const units = useUnits()
+  const { search: searchText } = useLocation()
+  const search = useMemo(() => new URLSearchParams(searchText), [searchText])
+  const navigate = useNavigate()
+  const navigation = useNavigation()
+  const revalidator = useRevalidator()
+  const progress = useRunProgress(page.progress, revalidator.revalidate)
+  const columns = useMemo(() => pointColumns(page.variables), [page.variables])
+  const view = useMemo(() => parseView(search, columns), [search, columns])
+  const swept = page.variables.map(({ path }) => path)
+  const { best, selected, run } = page
+  const busy = navigation.state === 'loading' && navigation.location.pathname.endsWith('/explore')
+
+  const { headline, reason } = finding(
+    {
+      ...progress,
+      evaluated: page.aggregates.evaluated,
+      limitsNotMet: page.aggregates.limitsNotMet,
+      objective: page.objective,
+      limits: page.limits,
+      limitEffects: page.limitEffects,
+      best: progress.best
+        ? {
+            objective: progress.best.objective,
+            described:
+              best && best.point === progress.best.point
+                ? describeCase(best.case, best.names, swept, units)
+                : '',
+          }
+        : null,
+    },
+    units,
+  )
+  const to = useCallback(
+    (change: Parameters<typeof changed>[1]) =>
+      navigate(changed(search, change), { replace: true, preventScrollReset: true }),
+    [navigate, search],
+  )
+  const find = (id: string) => columns.find((column) => column.id === id) as PointColumn
+  const x = find(page.x)
+  const y = find(page.y)
+
+  const spec = useMemo(
+    () =>
+      plotSpec(
+        {
+          columns: page.plot,
+          x,
+          y,
+          colour: columns.find(({ id }) => id === page.colour) ?? null,
+          colourValues: page.variables.find(({ path }) => path === page.colour)?.values ?? [],
+          limits: page.limits,
+          names: page.names,
+          marks: plotMarks(page, x, y),
+        },
+        units,
+      ),
+    [page, columns, units, x, y],
+  )
+
+  const filters = filterWords(view, columns, units, page.names).map(({ text, without }) => ({
+    text,
+    href: changed(search, without),
+  }))
+  const table = tableOf(page, view.columns, columns, units)
+  const fresh = progress.done - page.progress.done
+  const point = selected?.point ?? null
+  const pin = (id: number) => {
+    const now = view.pinned
+    return changed(search, {
+      pin: now.includes(id) ? now.filter((one) => one !== id) : [...now, id].slice(-4),
+    })
+  }
+
+  return (
+    <MarginPage
+      marginLabel="Selected point"
+      margin={
+        selected ? (
+          <PointMargin
+            key={selected.point}
+            shown={selected}
+            limits={page.limits}
+            sheetHref={`/studies/${studyId}/points/${selected.point}?run=${run.id}`}
+            pinHref={typeof point === 'number' ? pin(point) : null}
+            pinned={typeof point === 'number' && view.pinned.includes(point)}
+          />
+        ) : (
+          <p className="text-soft">
+            {isFinal(run.state)
+              ? 'No point has a value, so there is none to draw.'
+              : 'The best point so far is drawn here as soon as there is one.'}
+          </p>
+        )
+      }
+    >
+      <PageHead
+        title={<Said>{headline}</Said>}
+        reason={<Said>{reason.join(' ')}</Said>}
+        acts={<RunActs page={page} search={search} studyId={studyId} />}
+      />
+      {isFinal(progress.state) ? null : (
+        <div className="grid gap-2">
+          <ProgressBar done={progress.done} total={progress.points} label="Points done" />
+          {fresh > 0 ? (
+            <p className="text-note text-soft" role="status">
+              <Digits>{fresh}</Digits> more {fresh === 1 ? 'point is' : 'points are'} done than are shown.{' '}
+              <Button look="quiet" small onClick={() => revalidator.revalidate()}>
+                Show them
+              </Button>
+            </p>
+          ) : null}
+        </div>
+      )}
+      {best ? (
+        <PointFigures
+          results={best.keyResults}
+          objective={page.objective}
+          label="Figures of the least point"
+        />
+      ) : selected ? (
+        <PointFigures
+          results={selected.keyResults}
+          objective={page.objective}
+          label={`Figures of ${pointName(selected.point)}, which misses a limit`}
+        />
+      ) : null}
+      <Refined page={page} search={search} />
+      <PinnedPoints
+        points={page.pinned}
+        limits={page.limits}
+        href={(id) => changed(search, { point: id })}
+        unpinHref={pin}
+      />
+      <Sheet
+        title={`${y.label} against ${x.label.toLowerCase()}`}
+        acts={
+          <AxesForm
+            search={search}
+            x={page.x}
+            y={page.y}
+            colour={page.colour}
+            options={axisOptions(columns, page)}
+            colours={axisOptions(columns, page, true)}
+          />
+        }
+      >
+        <div className="grid gap-3">
+          <FilterBar
+            filters={filters}
+            clearHref={unfiltered(search, columns)}
+            fields={filterFields(page, columns, units)}
+            onValue={(id, value) => to({ [id]: value })}
+            onBounds={(id, min, max) => {
+              const column = find(id)
+              const low = boundToSi(min, column, units)
+              const high = boundToSi(max, column, units)
+              if ((min.trim() !== '' && low === null) || (max.trim() !== '' && high === null))
+                return `Give numbers in ${unitOf(column, units) || 'plain digits'}, or leave one side empty.`
+              if (low === null && high === null) return 'Give a number at one side at least.'
+              if (low !== null && high !== null && low > high)
+                return 'The lower bound is above the upper one.'
+              to({ [`min.${id}`]: low, [`max.${id}`]: high })
+              return null
+            }}
+          />
+          {page.plot.point.length === 0 ? (
+            <p className="py-10 text-center text-soft">
+              {page.aggregates.evaluated === 0
+                ? 'No point has a value to plot.'
+                : 'No point passes the filter.'}
+            </p>
+          ) : (
+            <ScatterPlot
+              name={`${y.label} against ${x.label.toLowerCase()}, ${page.plot.point.length} points`}
+              spec={spec}
+              onPick={(id) => to({ point: id })}
+              onBrush={(area) => {
+                if (!area) return
+                const si = (value: number, column: PointColumn) => boundToSi(String(value), column, units)
+                to({
+                  [`min.${x.id}`]: si(area.x[0], x),
+                  [`max.${x.id}`]: si(area.x[1], x),
+                  [`min.${y.id}`]: si(area.y[0], y),
+                  [`max.${y.id}`]: si(area.y[1], y),
+                })
+              }}
+            >
+              <p className="text-note text-soft">
+                {page.plot.matching > page.plot.point.length ? (
+                  <>
+                    <Digits>{page.plot.point.length}</Digits> of <Digits>{page.plot.matching}</Digits> points
+                    drawn, thinned evenly; the front and the least point are always among them.{' '}
+                  </>
+                ) : null}
+                Choose a point to see it; draw a box over points to keep only those. The table below holds the
+                same values.
+              </p>
+            </ScatterPlot>
+          )}
+        </div>
+      </Sheet>
+      <Sheet
+        flush
+        title={
+          <>
+            {page.tableAll ? 'All points' : 'Points that meet every limit'}, by{' '}
+            {(view.sort === 'point'
+              ? 'number'
+              : (find(view.sort ?? page.objective)?.label ?? page.objective)
+            ).toLowerCase()}
+          </>
+        }
+        acts={
+          <>
+            {page.aggregates.meetingLimits > 0 ? (
+              <LinkButton to={changed(search, { all: view.all ? null : 1 })} replace preventScrollReset small>
+                {view.all ? 'Only those that meet every limit' : 'All points'}
+              </LinkButton>
+            ) : null}
+            <ColumnChoice
+              shown={table.shown}
+              hidden={table.hidden}
+              href={(ids) => changed(search, { column: ids })}
+            />
+          </>
+        }
+      >
+        {page.page.rows.length === 0 ? (
+          <p className="px-5 pb-6 text-soft">
+            {filters.length > 0
+              ? 'No point passes the filter. Lift it, or widen its bounds.'
+              : 'No point is stored yet.'}
+          </p>
+        ) : (
+          <PointsTable
+            caption={`${page.page.matching} points`}
+            columns={table.columns}
+            rows={table.rows}
+            sort={{ id: view.sort ?? page.objective, descending: view.descending }}
+            sortHref={(id) =>
+              changed(search, {
+                sort: id,
+                dir: (view.sort ?? page.objective) === id && !view.descending ? 'down' : null,
+              })
+            }
+            pointHref={(id) => changed(search, { point: id })}
+            selected={typeof point === 'number' ? point : null}
+            matching={page.page.matching}
+            offset={page.page.offset}
+            pageSize={PAGE_SIZE}
+            pageHref={(number) => changed(search, { page: number === 0 ? null : number })}
+            busy={busy}
+          />
+        )}
+      </Sheet>
+      <Unevaluated page={page} search={search} />
+    </MarginPage>
+  )
+}
+
+function RunActs({ page, search, studyId }: { page: ExploreRun; search: URLSearchParams; studyId: string }) {
+  const { run, runs } = page
+  const filtered = new URLSearchParams(
+    [...search].filter(
+      ([key]) =>
+        /^(min|max)\./.test(key) || key === 'outcome' || page.variables.some(({ path }) => path === key),
+    ),
+  ).toString()
+  const query = filtered === '' ? '' : `?${filtered}`
+  return (
+    <>
+      {runs.length > 1 ? (
+        <Menu
+          label={`Run of revision ${run.revision}`}
+          name="Choose the run to explore"
+          entries={runs.map((one) => ({
+            label: `Revision ${one.revision}`,
+            detail: `${one.state}, ${groupedText(one.done)} of ${groupedText(one.points)}, ${one.plannedAt.slice(0, 10)}`,
+            to: changed(new URLSearchParams(), { run: one.id }),
+          }))}
+        />
+      ) : null}
+      <Menu
+        label="Export"
+        entries={[
+          {
+            label: 'Workbook',
+            href: `/runs/${run.id}/workbook.xlsx`,
+            detail: 'inputs, points, best, sources',
+          },
+          { label: 'Points as CSV', href: `/runs/${run.id}/points.csv`, detail: 'all points, SI units' },
+          ...(query === ''
+            ? []
+            : [
+                {
+                  label: 'Filtered points as CSV',
+                  href: `/runs/${run.id}/points.csv${query}`,
+                  detail: 'as filtered here',
+                },
+              ]),
+          { label: 'Study file', href: `/studies/${studyId}/study.json`, detail: 'to run elsewhere' },
+        ]}
+      />
+    </>
+  )
+}
+
+/** What searching between the swept values found beyond the best of them. */
+function Refined({ page, search }: { page: ExploreRun; search: URLSearchParams }) {
+  const { refined, objective, best } = page
+  if (!refined?.improved || !best) return null
+  const value = refined.keyResults[objective]
+  const column = pointColumns([]).find(({ id }) => id === objective) as PointColumn
+  const least = best.keyResults[objective]
+  const gain = value === null || least === null ? null : (1 - value / least) * 100
+  return (
+    <MarginNote
+      tone="sound"
+      title={
+        <>
+          Refined between the swept values: {OBJECTIVE_LABELS[objective].toLowerCase()}{' '}
+          <Quantity value={value} dimension={column.dimension} hint={column.hint} />
+          {gain !== null ? `, ${Number(gain.toPrecision(2))} % less` : ''}.{' '}
+          <a className="link screen-only font-semibold" href={changed(search, { point: 'refined' })}>
+            Show it
+          </a>
+        </>
+      }
+    >
+      <Said>{refined.statement}</Said>
+    </MarginNote>
+  )
+}
+
+/** The points that stand out: selected, pinned, refined, and on top of them the least. */
+function plotMarks(page: ExploreRun, x: PointColumn, y: PointColumn): PlotInput['marks'] {
+  const { selected, refined, best, pinned } = page
+  const mark = (kind: Mark['kind'], one: Placed) => ({
+    kind,
+    label: pointName(one.point),
+    id: typeof one.point === 'number' ? one.point : null,
+    x: valueOn(x, one),
+    y: valueOn(y, one),
+  })
+  const others = pinned.filter(({ point }) => point !== selected?.point && point !== best?.point)
+  return [
+    ...others.map((one) => mark('pinned', one)),
+    ...(refined?.improved ? [mark('refined', refined)] : []),
+    ...(selected && selected.point !== best?.point ? [mark('selected', selected)] : []),
+    ...(best ? [{ ...mark('best', best), label: `Point ${best.point}, least` }] : []),
+  ]
+}
+
+type Placed = {
+  point: number | 'refined'
+  inputs: readonly unknown[]
+  keyResults: Readonly<Record<string, number | null>>
+}
+
+/** A point's value on an axis; a choice has no place on one. */
+function valueOn(column: PointColumn, one: Pick<Placed, 'inputs' | 'keyResults'>): number | null {
+  const value = column.kind === 'input' ? one.inputs[column.index] : one.keyResults[column.id]
+  return typeof value === 'number' ? value : null
+}
+
+/** Points without values, by reason: each can be listed. */
+function Unevaluated({ page, search }: { page: ExploreRun; search: URLSearchParams }) {
+  const reasons = page.aggregates.outcomes.filter(({ code }) => code !== 'evaluated')
+  if (reasons.length === 0) return null
+  return (
+    <Sheet title="Points without values">
+      <ul className="grid gap-1.5">
+        {reasons.map(({ code, text, count }) => (
+          <li key={code} className="flex flex-wrap items-baseline gap-x-3">
+            <span className="font-semibold">
+              <Digits>{count}</Digits>
+            </span>
+            <span className="grow basis-64 text-soft">{text}</span>
+            <LinkButton
+              look="quiet"
+              small
+              to={changed(search, { outcome: code, all: 1, sort: 'point' })}
+              replace
+              preventScrollReset
+            >
+              List them
+            </LinkButton>
+          </li>
+        ))}
+      </ul>
+    </Sheet>
+  )
+}
+
+function axisOptions(columns: readonly PointColumn[], page: ExploreRun, colours = false): AxisOption[] {
+  return columns.flatMap(({ id, label, kind, choice }) => {
+    if (choice && !colours) return []
+    if (kind === 'result' && page.aggregates.ranges[id] === undefined) return []
+    return [{ id, label, group: kind === 'input' ? 'Swept' : 'Results' }]
+  })
+}
+
+function filterFields(page: ExploreRun, columns: readonly PointColumn[], units: UnitSystem): FilterField[] {
+  return columns.flatMap((column): FilterField[] => {
+    const { id, label, kind } = column
+    if (kind === 'result') {
+      if (page.aggregates.ranges[id] === undefined) return []
+      return [{ id, label, unit: unitOf(column, units) }]
+    }
+    const values = page.variables.find(({ path }) => path === id)?.values ?? []
+    if (values.length === 0 && column.choice) return []
+    return [
+      {
+        id,
+        label,
+        unit: unitOf(column, units),
+        values:
+          values.length > 0
+            ? values.map((value) => ({
+                value: String(value),
+                label: valueText(value, column, units, page.names),
+              }))
+            : undefined,
+      },
+    ]
+  })
+}
+
+const USUAL_RESULTS = [
+  'coolantPressureDrop',
+  'vapourPressureDrop',
+  'overallCoefficient',
+  'tubeLength',
+  'coolantVelocity',
+]
+
+function tableOf(
+  page: ExploreRun,
+  chosen: readonly string[],
+  columns: readonly PointColumn[],
+  units: UnitSystem,
+) {
+  const has = (column: PointColumn) =>
+    column.kind === 'input' || page.aggregates.ranges[column.id] !== undefined
+  const usual = [
+    ...page.variables.map(({ path }) => path),
+    page.objective,
+    ...USUAL_RESULTS.filter((id) => id !== page.objective),
+  ]
+  const ids = chosen.length > 0 ? chosen : usual.slice(0, Math.max(8, page.variables.length + 4))
+  const own = ids.flatMap((id) =>
+    columns.filter((column) => column.id === id && (chosen.length > 0 || has(column))),
+  )
+  const option = ({ id, label }: PointColumn) => ({ id, label })
+  return {
+    shown: own.map(option),
+    hidden: columns.filter((column) => !own.includes(column) && has(column)).map(option),
+    columns: own.map(
+      (column): TableColumn => ({
+        id: column.id,
+        label: column.label,
+        unit: unitOf(column, units),
+        numeric: !column.choice,
+        given: column.kind === 'input' || column.whole,
+      }),
+    ),
+    rows: page.page.rows.map(
+      (row): TableRow => ({
+        point: row.point,
+        cells: own.map((column) => {
+          const value = column.kind === 'input' ? row.inputs[column.index] : row.results[column.index]
+          if (value === null) return null
+          return typeof value === 'string'
+            ? valueText(value, column, units, page.names)
+            : shown(value, column, units)
+        }),
+        state: stateOf(row.results, page.limits),
+      }),
+    ),
+  }
+}
+
+/** Whether a row may be chosen: every limit met, or the first that is not, or why it has no values. */
+function stateOf(results: readonly (number | null)[], limits: Limits): TableRow['state'] {
+  const outcome = results[KEY_RESULT_INDEX.outcome] ?? 0
+  if (outcome !== 0) return { tone: 'failed', label: OUTCOME_SHORT[OUTCOMES[outcome]?.code] ?? 'no value' }
+  const mask = results[KEY_RESULT_INDEX.limitsNotMet] ?? 0
+  const missed = LIMITS.filter(({ id }, bit) => limits[id] && (mask & (1 << bit)) !== 0)
+  if (missed.length === 0)
+    return { tone: 'sound', label: Object.keys(limits).length > 0 ? 'meets all' : 'no limit' }
+  return {
+    tone: 'attention',
+    label: missed.length === 1 ? missed[0].label.toLowerCase() : `${missed.length} limits`,
+  }
+}
+
+const OUTCOME_SHORT: Record<string, string> = {
+  inputInvalid: 'no such bundle',
+  propertyMissing: 'property missing',
+  saturationOutsideTable: 'state outside table',
+  coolantOutsideRange: 'coolant out of range',
+  coolantOutletOutsideRange: 'coolant out of range',
+  coolantTooWarm: 'coolant too warm',
+  wallBelowRange: 'wall too cold',
+  vapourPressureExhausted: 'vapour drop too high',
+  vapourTooFast: 'vapour too fast',
+  dutyNotReached: 'duty not reached',
+  noVelocityHoldsWall: 'no velocity holds wall',
+  outletNotReachable: 'outlet not reachable',
+  notSolved: 'not solved',
+}
