@@ -1,0 +1,59 @@
+// People: they appear by signing in, or by being invited to a project before that.
+import { and, eq, isNull, sql } from 'drizzle-orm'
+import { db } from '#app/db.server.ts'
+import { type Person, person, ROLES, type Role, type Theme, type Units } from '#drizzle/schema/index.ts'
+
+export type Identity = {
+  issuer: string
+  subject: string
+  name: string
+  email: string
+  emailVerified: boolean
+  groups: string[]
+}
+
+/** The highest role that a person's groups name; null when none names one. */
+export function roleOfGroups(groups: readonly string[], map: Readonly<Record<string, Role>>): Role | null {
+  const named = new Set(groups.map((group) => (Object.hasOwn(map, group) ? map[group] : undefined)))
+  return ROLES.find((role) => named.has(role)) ?? null
+}
+
+/**
+ * The person of an identity, made or brought up to date. Someone invited by an address becomes this person at the
+ * first sign-in with it, if the provider vouches for the address.
+ */
+export async function personOfIdentity(identity: Identity, role: Role | null): Promise<Person> {
+  const { issuer, subject, name, email } = identity
+  const now = { name, email, role, signedInAt: sql`now()` }
+  return db.transaction(async (tx) => {
+    const [known] = await tx
+      .update(person)
+      .set(now)
+      .where(and(eq(person.issuer, issuer), eq(person.subject, subject)))
+      .returning()
+    if (known) return known
+    if (identity.emailVerified) {
+      const [invited] = await tx
+        .update(person)
+        .set({ ...now, issuer, subject })
+        .where(and(isNull(person.subject), eq(sql`lower(${person.email})`, email.toLowerCase())))
+        .returning()
+      if (invited) return invited
+    }
+    // Two tabs may sign the same new person in at once.
+    const [made] = await tx
+      .insert(person)
+      .values({ issuer, subject, ...now })
+      .onConflictDoUpdate({ target: [person.issuer, person.subject], set: now })
+      .returning()
+    return made
+  })
+}
+
+export async function setPreferences(
+  personId: string,
+  choice: { units?: Units; theme?: Theme },
+): Promise<void> {
+  if (choice.units === undefined && choice.theme === undefined) return
+  await db.update(person).set(choice).where(eq(person.id, personId))
+}
