@@ -32,7 +32,7 @@ export const rules: Record<string, UrlRules> = {
   '/preferences': { action: signedIn, resource: true },
   '/health': { loader: 'anyone', resource: true },
 
-  '/projects': { loader: signedIn },
+  '/projects': { loader: signedIn, action: { can: 'project.manage' } },
   '/projects/:projectId': { loader: readProject, action: { can: 'study.edit', scope: 'project' } },
   '/projects/:projectId/compare': { loader: readProject },
 
