@@ -20,6 +20,7 @@ import { getPath, type SweptValue } from '#engine/sweep/study.ts'
 import { pointColumns } from './columns.ts'
 import type { LimitEffect } from './finding.ts'
 import { keyResultOf } from './limits.ts'
+import { sheetCards } from './method-cards.server.ts'
 import { caseNames, choiceNames } from './names.server.ts'
 import { type ExploreView, PAGE_SIZE, parseView } from './view.ts'
 
@@ -272,28 +273,31 @@ function closestOf(
   return near[0]?.nearestPoint ?? null
 }
 
-/** One point's sheet, of the run asked for or the study's latest. */
+/** One point's sheet, of the run asked for or the study's latest, with the cards of its methods. */
 export async function sheetPage(studyId: string, point: string, asked: string | null) {
   const { run } = await runOfStudy(studyId, asked)
   if (!run) throw new AppError('not-found', 'This study has no run yet, and so no points.')
   const plan = await planOfRevision(run.revisionId)
+  const sheet = await sheetAsked(run, plan, point)
+  return {
+    run: runSummary(run),
+    studyName: plan.study.name,
+    limits: plan.study.limits,
+    sheet,
+    isBest: sheet.point === run.bestPoint,
+    swept: plan.variables.map(({ path }) => path),
+    cards: sheetCards(sheet.case, sheet.result),
+  }
+}
+
+async function sheetAsked(run: RunListing, plan: SweepPlan, point: string): Promise<PointView> {
   if (point === 'refined') {
     const refined = await refinedBest(run.id)
     if (!refined) throw new AppError('not-found', 'This run has no refined point.')
-    return {
-      run: runSummary(run),
-      limits: plan.study.limits,
-      sheet: refinedSheet(run.id, plan, refined),
-      best: run.bestPoint,
-    }
+    return refinedSheet(run.id, plan, refined)
   }
   if (!/^\d{1,7}$/.test(point)) throw new AppError('not-found', `The run has points 0 to ${run.points - 1}.`)
-  return {
-    run: runSummary(run),
-    limits: plan.study.limits,
-    sheet: await sheetOf(run.id, plan, Number(point)),
-    best: run.bestPoint,
-  }
+  return sheetOf(run.id, plan, Number(point))
 }
 
 export type SheetPage = Awaited<ReturnType<typeof sheetPage>>
