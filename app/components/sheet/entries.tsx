@@ -24,12 +24,15 @@ export function Entries({
   from?: boolean
 }) {
   return (
-    <table className="entries">
+    <table className={from ? 'entries entries-wide' : 'entries'}>
       <caption className="visually-hidden">{title}</caption>
       <tbody>
         {entries.map((entry) => (
           <tr key={entry.label}>
-            <th scope="row">{entry.label}</th>
+            <th scope="row">
+              {entry.label}
+              {entry.from === 'assumption' ? ' (assumption)' : ''}
+            </th>
             <td className="symbol">
               <SymbolText text={entry.symbol ?? ''} />
             </td>
@@ -47,11 +50,7 @@ export function Entries({
                 />
               )}
             </td>
-            {from ? (
-              <td className="from">{entry.from ? <Formula text={entry.from} /> : null}</td>
-            ) : entry.from === 'assumption' ? (
-              <td className="from">assumption</td>
-            ) : null}
+            {from ? <td className="from">{entry.from ? <Formula text={entry.from} /> : null}</td> : null}
           </tr>
         ))}
       </tbody>
@@ -60,7 +59,15 @@ export function Entries({
 }
 
 /** A value as it was given: its own digits, up to six of them. */
-function Given({ value, dimension, hint }: { value: number; dimension: Dimension; hint?: DisplayHint }) {
+export function Given({
+  value,
+  dimension,
+  hint,
+}: {
+  value: number
+  dimension: Dimension
+  hint?: DisplayHint
+}) {
   const shown = toDisplay(value, dimension, useUnits(), hint)
   return (
     <span className="number">

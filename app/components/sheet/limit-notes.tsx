@@ -2,6 +2,7 @@
 import { MarginNote } from '#app/components/ui/margin-note.tsx'
 import { Quantity } from '#app/components/ui/number.tsx'
 import type { Dimension, DisplayHint } from '#engine/units.ts'
+import { Given } from './entries.tsx'
 
 export type Standing = {
   id: string
@@ -22,17 +23,17 @@ const percent = (share: number) => {
 
 /** "within 60 kPa", "between 1 and 2.4 m/s", "at least 500 kW" */
 export function LimitBounds({ min, max, dimension, hint }: Standing) {
-  const bound = { dimension, hint, digits: 4 }
   if (min !== undefined && max !== undefined)
     return (
       <>
-        between <Quantity value={min} {...bound} unit={false} /> and <Quantity value={max} {...bound} />
+        between <Given value={min} dimension={dimension} hint={hint} /> and{' '}
+        <Given value={max} dimension={dimension} hint={hint} />
       </>
     )
   return (
     <>
       {max !== undefined ? 'at most ' : 'at least '}
-      <Quantity value={max ?? min} {...bound} />
+      <Given value={(max ?? min) as number} dimension={dimension} hint={hint} />
     </>
   )
 }

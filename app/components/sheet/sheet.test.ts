@@ -54,7 +54,7 @@ const standing = {
 
 test('a limit says its value, its bound and what is to spare or beyond', () => {
   expect(text(renderToString(createElement(LimitNotes, { standings: [standing] })))).toBe(
-    'Coolant pressure drop 59.7kPa.Limit: at most 60.00kPa, 0.5 % to spare.',
+    'Coolant pressure drop 59.7kPa.Limit: at most 60kPa, 0.5 % to spare.',
   )
   expect(marginText({ ...standing, met: false, margin: -0.3 })).toBe('30 % beyond')
   expect(marginText({ ...standing, margin: 0.0001 })).toBe('at the limit')

@@ -6,6 +6,7 @@ import { Button, LinkButton } from '#app/components/ui/button.tsx'
 import { Digits } from '#app/components/ui/number.tsx'
 import { Tag, type Tone } from '#app/components/ui/tag.tsx'
 import { formatNumber } from '#engine/units.ts'
+import './table.css'
 
 export type TableColumn = {
   id: string

@@ -18,9 +18,16 @@ const LAYOUTS: Record<string, string> = {
 
 const mm = (metres: number) => Number((metres * 1000).toPrecision(6))
 
+/** Halogenated fluids go by their refrigerant number in the trade, the others by their name. */
+export function fluidName(id: string): string {
+  const card = findFluid(id)
+  if (!card) return id
+  return card.ashrae && /fluoro/i.test(card.name) ? card.ashrae.replace('-', '') : card.name
+}
+
 /** The name of a swept choice's value, by the variable's path. */
 export function choiceName(path: string, id: string): string {
-  if (path === 'fluid') return findFluid(id)?.name ?? id
+  if (path === 'fluid') return fluidName(id)
   if (path === 'tube.material') return findMaterial(id)?.name ?? id
   if (path === 'bundle.layout') return LAYOUTS[id] ?? id
   if (path.endsWith('coolant')) return findCoolant(id)?.name ?? id
@@ -53,7 +60,7 @@ export function caseNames(bundle: Case): CaseNames {
   const coolant = drive.kind === 'coolant' ? drive.coolant : drive.coolant?.coolant
   const card = typeof fluid === 'string' ? findFluid(fluid) : undefined
   return {
-    fluid: card?.name ?? 'Fluid given by hand',
+    fluid: typeof fluid === 'string' ? fluidName(fluid) : 'Fluid given by hand',
     fluidFormula: card?.formula ?? null,
     safetyClass: card?.safetyClass ?? null,
     coolant:

@@ -4,7 +4,7 @@ import type { SweptValue } from '#engine/sweep/study.ts'
 import { formatQuantity, fromDisplay, toDisplay, type UnitSystem } from '#engine/units.ts'
 import type { PointColumn } from './columns.ts'
 
-export const PAGE_SIZE = 50
+export const PAGE_SIZE = 25
 
 export type ExploreView = {
   run: string | null

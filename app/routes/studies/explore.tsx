@@ -537,7 +537,7 @@ function tableOf(
     page.objective,
     ...USUAL_RESULTS.filter((id) => id !== page.objective),
   ]
-  const ids = chosen.length > 0 ? chosen : usual.slice(0, Math.max(8, page.variables.length + 4))
+  const ids = chosen.length > 0 ? chosen : usual.slice(0, Math.max(8, page.variables.length + 3))
   const own = ids.flatMap((id) =>
     columns.filter((column) => column.id === id && (chosen.length > 0 || has(column))),
   )
