@@ -81,7 +81,7 @@ function FilterForm({
   }
   if (!open)
     return (
-      <Button look="quiet" small onClick={() => setOpen(true)}>
+      <Button look="quiet" small className="screen-only" onClick={() => setOpen(true)}>
         Add a filter
       </Button>
     )

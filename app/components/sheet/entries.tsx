@@ -1,6 +1,7 @@
 // Quantities of a calculation, one a line: label, symbol, value with unit, and what stands behind it.
 import { Digits, Quantity, useUnits } from '#app/components/ui/number.tsx'
 import { type Dimension, type DisplayHint, toDisplay } from '#engine/units.ts'
+import { Said } from './said.tsx'
 import './sheet.css'
 
 export type SheetEntry = {
@@ -58,7 +59,7 @@ export function Entries({
   )
 }
 
-/** A value as it was given: its own digits, up to six of them. */
+/** A value as it was given, to its own digits: six of them at most, four when converted. */
 export function Given({
   value,
   dimension,
@@ -68,10 +69,11 @@ export function Given({
   dimension: Dimension
   hint?: DisplayHint
 }) {
-  const shown = toDisplay(value, dimension, useUnits(), hint)
+  const units = useUnits()
+  const shown = toDisplay(value, dimension, units, hint)
   return (
     <span className="number">
-      <Digits>{Number(shown.value.toPrecision(6))}</Digits>
+      <Digits>{Number(shown.value.toPrecision(units === 'si' ? 6 : 4))}</Digits>
       {shown.unit === '' ? null : <span className="unit">{shown.unit}</span>}
     </span>
   )
@@ -97,7 +99,8 @@ export function Formula({ text }: { text: string }) {
       // biome-ignore lint/suspicious/noArrayIndexKey: the parts of an equation are their places
       <SymbolText key={i} text={part} />
     ) : (
-      part
+      // biome-ignore lint/suspicious/noArrayIndexKey: the parts of an equation are their places
+      <Said key={i}>{part}</Said>
     ),
   )
 }

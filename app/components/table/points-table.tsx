@@ -3,7 +3,7 @@ import { createColumnHelper, tableFeatures, useTable } from '@tanstack/react-tab
 import { type KeyboardEvent, useEffect, useMemo, useState } from 'react'
 import { Link } from 'react-router'
 import { Button, LinkButton } from '#app/components/ui/button.tsx'
-import { Digits } from '#app/components/ui/number.tsx'
+import { Digits, useUnits } from '#app/components/ui/number.tsx'
 import { Tag, type Tone } from '#app/components/ui/tag.tsx'
 import { formatNumber } from '#engine/units.ts'
 import './table.css'
@@ -159,9 +159,14 @@ export function PointsTable(props: PointsTableProps) {
 }
 
 function Value({ value, given }: { value: number | string | null; given: boolean }) {
+  const units = useUnits()
   if (value === null) return <span title="no value">–</span>
   if (typeof value === 'string') return value
-  return <Digits>{given ? String(Number(value.toPrecision(6))) : formatNumber(value, 4)}</Digits>
+  return (
+    <Digits>
+      {given ? String(Number(value.toPrecision(units === 'si' ? 6 : 4))) : formatNumber(value, 4)}
+    </Digits>
+  )
 }
 
 /** Arrow keys, Home and End move between the points' links; Enter follows one as any link. */

@@ -87,19 +87,26 @@ export async function explorePage(studyId: string, search: URLSearchParams) {
   const colour = view.colour === 'none' ? null : (view.colour ?? usual.colour)
   const tableAll = view.all || all.meetingLimits === 0
   const final = isFinal(run.state)
-  const [page, plot, effects] = await Promise.all([
+  const effects = final ? await limitEffects(run.id, plan, all.meetingLimits > 0) : null
+  const sort = usualSort(plan, view, nearestEffect(effects))
+  const [page, plot] = await Promise.all([
     pageOfPoints(run.id, {
-      sort: view.sort ?? plan.study.objective,
-      descending: view.descending,
+      sort: sort.id,
+      descending: sort.descending,
       filters: tableAll ? filters : { ...filters, meetingLimits: true },
       limit: PAGE_SIZE,
       offset: view.page * PAGE_SIZE,
     }),
     plotColumns(run.id, { x, y, colour: colour ?? undefined, max: PLOT_MARKS, filters }),
-    final ? limitEffects(run.id, plan, all.meetingLimits > 0) : null,
   ])
   const best = progress.best
-  const selected = await selectedPoint(run.id, plan, view, best?.point ?? closestOf(effects), refined)
+  const selected = await selectedPoint(
+    run.id,
+    plan,
+    view,
+    best?.point ?? nearestEffect(effects)?.nearestPoint ?? null,
+    refined,
+  )
   return {
     kind: 'run' as const,
     runs: runs.map(runSummary),
@@ -113,6 +120,7 @@ export async function explorePage(studyId: string, search: URLSearchParams) {
     y,
     colour,
     tableAll,
+    sort,
     aggregates: all,
     page,
     plot,
@@ -214,7 +222,9 @@ function usualView(plan: SweepPlan, ranges: Record<string, unknown>) {
   return { x, y: objective as string, colour: colour?.path ?? null }
 }
 
-const effectsKept = new Map<string, Promise<(LimitEffect & { nearestPoint: number | null })[]>>()
+type PointEffect = LimitEffect & { nearestPoint: number | null }
+
+const effectsKept = new Map<string, Promise<PointEffect[]>>()
 
 /** What each limit does, the others held. Of an ended run, whose points no longer change: kept. */
 function limitEffects(runId: string, plan: SweepPlan, someMeet: boolean) {
@@ -229,7 +239,7 @@ function limitEffects(runId: string, plan: SweepPlan, someMeet: boolean) {
 
 async function findLimitEffects(runId: string, plan: SweepPlan, someMeet: boolean) {
   const { limits, objective } = plan.study
-  const effects: (LimitEffect & { nearestPoint: number | null })[] = []
+  const effects: PointEffect[] = []
   for (const { id, result } of LIMITS)
     for (const side of ['max', 'min'] as const) {
       const bound = limits[id]?.[side]
@@ -260,17 +270,20 @@ async function findLimitEffects(runId: string, plan: SweepPlan, someMeet: boolea
   return effects
 }
 
-/** Where nothing meets every limit, the point nearest to doing so. */
-function closestOf(
-  effects: readonly (LimitEffect & { nearestPoint: number | null })[] | null,
-): number | null {
-  const near = (effects ?? []).filter((effect) => effect.nearest !== null)
-  near.sort(
-    (a, b) =>
-      Math.abs((a.nearest as number) - a.bound) / Math.abs(a.bound || 1) -
-      Math.abs((b.nearest as number) - b.bound) / Math.abs(b.bound || 1),
-  )
-  return near[0]?.nearestPoint ?? null
+/** Where nothing meets every limit: the limit that comes nearest to being met, the others held. */
+function nearestEffect(effects: readonly PointEffect[] | null): PointEffect | null {
+  const away = ({ nearest, bound }: PointEffect) =>
+    Math.abs((nearest as number) - bound) / Math.abs(bound || 1)
+  const near = (effects ?? []).filter(({ nearest }) => nearest !== null)
+  return near.sort((a, b) => away(a) - away(b))[0] ?? null
+}
+
+/** The order asked for, or by the objective; where nothing meets the limits, by what comes nearest to meeting one. */
+function usualSort(plan: SweepPlan, view: ExploreView, nearest: PointEffect | null) {
+  if (view.sort !== null) return { id: view.sort, descending: view.descending }
+  if (nearest === null) return { id: plan.study.objective as string, descending: view.descending }
+  const { result } = LIMITS.find(({ id }) => id === nearest.limit) as (typeof LIMITS)[number]
+  return { id: result, descending: view.descending !== (nearest.side === 'min') }
 }
 
 /** One point's sheet, of the run asked for or the study's latest, with the cards of its methods. */

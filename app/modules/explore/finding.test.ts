@@ -30,7 +30,7 @@ test('a finished sweep claims the least of its points, not the least there is', 
   expect(reason()).toBe(
     '31204 of 48000 points meet every limit. The coolant pressure drop is the limit that binds: without it the least would be 38.1 m².',
   )
-  expect(plain(finding(input(), 'us').headline)).toContain('within 8.70226 psi: 450 ft²')
+  expect(plain(finding(input(), 'us').headline)).toContain('within 8.702 psi: 450 ft²')
 })
 
 test('another objective is named', () => {

@@ -81,7 +81,9 @@ function limitPhrase(id: LimitId, limits: Limits, units: UnitSystem, bare: boole
 
 /** A bound is what a person gave: its own digits, not three. */
 function bound(value: number, column: PointColumn, units: UnitSystem, unit = true): string {
-  return formatQuantity(value, column.dimension, units, { digits: 6, hint: column.hint, unit }).replace(
+  // Converted, a bound loses the roundness it was given with, and more than four digits say nothing.
+  const digits = units === 'si' ? 6 : 4
+  return formatQuantity(value, column.dimension, units, { digits, hint: column.hint, unit }).replace(
     /(\.\d*?)0+(?=\D|$)/,
     (_, kept: string) => (kept === '.' ? '' : kept),
   )

@@ -91,7 +91,7 @@ export function boundsOf(
   const info = LIMITS.find(({ result }) => result === column.id)
   const given = info ? limits[info.id] : undefined
   const bound = (value: number | undefined) =>
-    value === undefined ? undefined : Number(shown(value, column, units).toPrecision(6))
+    value === undefined ? undefined : Number(shown(value, column, units).toPrecision(units === 'si' ? 6 : 4))
   return { min: bound(given?.min), max: bound(given?.max) }
 }
 

@@ -157,7 +157,7 @@ export function valueText(
 ): string {
   if (typeof value === 'string') return names[column.id]?.[value] ?? value
   const { value: number, unit } = toDisplay(value, column.dimension, units, column.hint)
-  return `${Number(number.toPrecision(6))}${unit === '' ? '' : `\u00a0${unit}`}`
+  return `${Number(number.toPrecision(units === 'si' ? 6 : 4))}${unit === '' ? '' : `\u00a0${unit}`}`
 }
 
 /** A bound as typed in the reader's unit, as the URL carries it: SI. Comma or point. */

@@ -1,5 +1,5 @@
 // Explore: the finding, its figures, the points against their limits, and one point drawn in the margin.
-import { useCallback, useMemo } from 'react'
+import { type ReactNode, useCallback, useMemo } from 'react'
 import {
   type ShouldRevalidateFunctionArgs,
   useLocation,
@@ -19,7 +19,7 @@ import { MarginNote } from '#app/components/ui/margin-note.tsx'
 import { Menu } from '#app/components/ui/menu.tsx'
 import { Digits, Quantity, useUnits } from '#app/components/ui/number.tsx'
 import { groupedText } from '#app/components/ui/number-format.ts'
-import { EmptyState, MarginPage, PageHead, PlainPage, Sheet } from '#app/components/ui/page.tsx'
+import { EmptyState, PageHead, PlainPage, Sheet } from '#app/components/ui/page.tsx'
 import { ProgressBar } from '#app/components/ui/progress.tsx'
 import { describeCase } from '#app/modules/explore/case-words.ts'
 import { type PointColumn, pointColumns, shown, unitOf } from '#app/modules/explore/columns.ts'
@@ -162,8 +162,7 @@ function ExploreRunPage({ page, studyId }: { page: ExploreRun; studyId: string }
   }
 
   return (
-    <MarginPage
-      marginLabel="Selected point"
+    <ExploreLayout
       margin={
         selected ? (
           <PointMargin
@@ -182,169 +181,198 @@ function ExploreRunPage({ page, studyId }: { page: ExploreRun; studyId: string }
           </p>
         )
       }
-    >
-      <PageHead
-        title={<Said>{headline}</Said>}
-        reason={<Said>{reason.join(' ')}</Said>}
-        acts={<RunActs page={page} search={search} studyId={studyId} />}
-      />
-      {isFinal(progress.state) ? null : (
-        <div className="grid gap-2">
-          <ProgressBar done={progress.done} total={progress.points} label="Points done" />
-          {fresh > 0 ? (
-            <p className="text-note text-soft" role="status">
-              <Digits>{fresh}</Digits> more {fresh === 1 ? 'point is' : 'points are'} done than are shown.{' '}
-              <Button look="quiet" small onClick={() => revalidator.revalidate()}>
-                Show them
-              </Button>
-            </p>
-          ) : null}
-        </div>
-      )}
-      {best ? (
-        <PointFigures
-          results={best.keyResults}
-          objective={page.objective}
-          label="Figures of the least point"
-        />
-      ) : selected ? (
-        <PointFigures
-          results={selected.keyResults}
-          objective={page.objective}
-          label={`Figures of ${pointName(selected.point)}, which misses a limit`}
-        />
-      ) : null}
-      <Refined page={page} search={search} />
-      <PinnedPoints
-        points={page.pinned}
-        limits={page.limits}
-        href={(id) => changed(search, { point: id })}
-        unpinHref={pin}
-      />
-      <Sheet
-        title={`${y.label} against ${x.label.toLowerCase()}`}
-        acts={
-          <AxesForm
-            search={search}
-            x={page.x}
-            y={page.y}
-            colour={page.colour}
-            options={axisOptions(columns, page)}
-            colours={axisOptions(columns, page, true)}
+      lead={
+        <>
+          <PageHead
+            title={<Said>{headline}</Said>}
+            reason={<Said>{reason.join(' ')}</Said>}
+            acts={<RunActs page={page} search={search} studyId={studyId} />}
           />
-        }
-      >
-        <div className="grid gap-3">
-          <FilterBar
-            filters={filters}
-            clearHref={unfiltered(search, columns)}
-            fields={filterFields(page, columns, units)}
-            onValue={(id, value) => to({ [id]: value })}
-            onBounds={(id, min, max) => {
-              const column = find(id)
-              const low = boundToSi(min, column, units)
-              const high = boundToSi(max, column, units)
-              if ((min.trim() !== '' && low === null) || (max.trim() !== '' && high === null))
-                return `Give numbers in ${unitOf(column, units) || 'plain digits'}, or leave one side empty.`
-              if (low === null && high === null) return 'Give a number at one side at least.'
-              if (low !== null && high !== null && low > high)
-                return 'The lower bound is above the upper one.'
-              to({ [`min.${id}`]: low, [`max.${id}`]: high })
-              return null
-            }}
-          />
-          {page.plot.point.length === 0 ? (
-            <p className="py-10 text-center text-soft">
-              {page.aggregates.evaluated === 0
-                ? 'No point has a value to plot.'
-                : 'No point passes the filter.'}
-            </p>
-          ) : (
-            <ScatterPlot
-              name={`${y.label} against ${x.label.toLowerCase()}, ${page.plot.point.length} points`}
-              spec={spec}
-              onPick={(id) => to({ point: id })}
-              onBrush={(area) => {
-                if (!area) return
-                const si = (value: number, column: PointColumn) => boundToSi(String(value), column, units)
-                to({
-                  [`min.${x.id}`]: si(area.x[0], x),
-                  [`max.${x.id}`]: si(area.x[1], x),
-                  [`min.${y.id}`]: si(area.y[0], y),
-                  [`max.${y.id}`]: si(area.y[1], y),
-                })
-              }}
-            >
-              <p className="text-note text-soft">
-                {page.plot.matching > page.plot.point.length ? (
-                  <>
-                    <Digits>{page.plot.point.length}</Digits> of <Digits>{page.plot.matching}</Digits> points
-                    drawn, thinned evenly; the front and the least point are always among them.{' '}
-                  </>
-                ) : null}
-                Choose a point to see it; draw a box over points to keep only those. The table below holds the
-                same values.
-              </p>
-            </ScatterPlot>
+          {isFinal(progress.state) ? null : (
+            <div className="grid gap-2">
+              <ProgressBar done={progress.done} total={progress.points} label="Points done" />
+              {fresh > 0 ? (
+                <p className="text-note text-soft" role="status">
+                  <Digits>{fresh}</Digits> more {fresh === 1 ? 'point is' : 'points are'} done than are shown.{' '}
+                  <Button look="quiet" small onClick={() => revalidator.revalidate()}>
+                    Show them
+                  </Button>
+                </p>
+              ) : null}
+            </div>
           )}
-        </div>
-      </Sheet>
-      <Sheet
-        flush
-        title={
-          <>
-            {page.tableAll ? 'All points' : 'Points that meet every limit'}, by{' '}
-            {(view.sort === 'point'
-              ? 'number'
-              : (find(view.sort ?? page.objective)?.label ?? page.objective)
-            ).toLowerCase()}
-          </>
-        }
-        acts={
-          <>
-            {page.aggregates.meetingLimits > 0 ? (
-              <LinkButton to={changed(search, { all: view.all ? null : 1 })} replace preventScrollReset small>
-                {view.all ? 'Only those that meet every limit' : 'All points'}
-              </LinkButton>
-            ) : null}
-            <ColumnChoice
-              shown={table.shown}
-              hidden={table.hidden}
-              href={(ids) => changed(search, { column: ids })}
+          {best ? (
+            <PointFigures
+              results={best.keyResults}
+              objective={page.objective}
+              label="Figures of the least point"
             />
-          </>
-        }
-      >
-        {page.page.rows.length === 0 ? (
-          <p className="px-5 pb-6 text-soft">
-            {filters.length > 0
-              ? 'No point passes the filter. Lift it, or widen its bounds.'
-              : 'No point is stored yet.'}
-          </p>
-        ) : (
-          <PointsTable
-            caption={`${page.page.matching} points`}
-            columns={table.columns}
-            rows={table.rows}
-            sort={{ id: view.sort ?? page.objective, descending: view.descending }}
-            sortHref={(id) =>
-              changed(search, {
-                sort: id,
-                dir: (view.sort ?? page.objective) === id && !view.descending ? 'down' : null,
-              })
-            }
-            pointHref={(id) => changed(search, { point: id })}
-            selected={typeof point === 'number' ? point : null}
-            matching={page.page.matching}
-            offset={page.page.offset}
-            pageSize={PAGE_SIZE}
-            pageHref={(number) => changed(search, { page: number === 0 ? null : number })}
-            busy={busy}
+          ) : selected ? (
+            <PointFigures
+              results={selected.keyResults}
+              objective={page.objective}
+              label={`Figures of ${pointName(selected.point)}, which misses a limit`}
+            />
+          ) : null}
+          <Refined page={page} search={search} />
+          <PinnedPoints
+            points={page.pinned}
+            limits={page.limits}
+            href={(id) => changed(search, { point: id })}
+            unpinHref={pin}
           />
-        )}
-      </Sheet>
-      <Unevaluated page={page} search={search} />
-    </MarginPage>
+          <Sheet
+            title={`${y.label} against ${x.label.toLowerCase()}`}
+            acts={
+              <AxesForm
+                search={search}
+                x={page.x}
+                y={page.y}
+                colour={page.colour}
+                options={axisOptions(columns, page)}
+                colours={axisOptions(columns, page, true)}
+              />
+            }
+          >
+            <div className="grid gap-3">
+              <FilterBar
+                filters={filters}
+                clearHref={unfiltered(search, columns)}
+                fields={filterFields(page, columns, units)}
+                onValue={(id, value) => to({ [id]: value })}
+                onBounds={(id, min, max) => {
+                  const column = find(id)
+                  const low = boundToSi(min, column, units)
+                  const high = boundToSi(max, column, units)
+                  if ((min.trim() !== '' && low === null) || (max.trim() !== '' && high === null))
+                    return `Give numbers in ${unitOf(column, units) || 'plain digits'}, or leave one side empty.`
+                  if (low === null && high === null) return 'Give a number at one side at least.'
+                  if (low !== null && high !== null && low > high)
+                    return 'The lower bound is above the upper one.'
+                  to({ [`min.${id}`]: low, [`max.${id}`]: high })
+                  return null
+                }}
+              />
+              {page.plot.point.length === 0 ? (
+                <p className="py-10 text-center text-soft">
+                  {page.aggregates.evaluated === 0
+                    ? 'No point has a value to plot.'
+                    : 'No point passes the filter.'}
+                </p>
+              ) : (
+                <ScatterPlot
+                  name={`${y.label} against ${x.label.toLowerCase()}, ${page.plot.point.length} points`}
+                  spec={spec}
+                  onPick={(id) => to({ point: id })}
+                  onBrush={(area) => {
+                    if (!area) return
+                    const si = (value: number, column: PointColumn) => boundToSi(String(value), column, units)
+                    to({
+                      [`min.${x.id}`]: si(area.x[0], x),
+                      [`max.${x.id}`]: si(area.x[1], x),
+                      [`min.${y.id}`]: si(area.y[0], y),
+                      [`max.${y.id}`]: si(area.y[1], y),
+                    })
+                  }}
+                >
+                  <p className="text-note text-soft">
+                    {page.plot.matching > page.plot.point.length ? (
+                      <>
+                        <Digits>{page.plot.point.length}</Digits> of <Digits>{page.plot.matching}</Digits>{' '}
+                        points drawn, thinned evenly; the front and the least point are always among them.{' '}
+                      </>
+                    ) : null}
+                    Choose a point to see it; draw a box over points to keep only those. The table below holds
+                    the same values.
+                  </p>
+                </ScatterPlot>
+              )}
+            </div>
+          </Sheet>
+        </>
+      }
+      rest={
+        <>
+          <Sheet
+            flush
+            title={
+              <>
+                {page.tableAll ? 'All points' : 'Points that meet every limit'}, by{' '}
+                {(view.sort === 'point'
+                  ? 'number'
+                  : (find(view.sort ?? page.sort.id)?.label ?? page.objective)
+                ).toLowerCase()}
+              </>
+            }
+            acts={
+              <>
+                {page.aggregates.meetingLimits > 0 ? (
+                  <LinkButton
+                    to={changed(search, { all: view.all ? null : 1 })}
+                    replace
+                    preventScrollReset
+                    small
+                  >
+                    {view.all ? 'Only those that meet every limit' : 'All points'}
+                  </LinkButton>
+                ) : null}
+                <ColumnChoice
+                  shown={table.shown}
+                  hidden={table.hidden}
+                  href={(ids) => changed(search, { column: ids })}
+                />
+              </>
+            }
+          >
+            {page.page.rows.length === 0 ? (
+              <p className="px-5 pb-6 text-soft">
+                {filters.length > 0
+                  ? 'No point passes the filter. Lift it, or widen its bounds.'
+                  : 'No point is stored yet.'}
+              </p>
+            ) : (
+              <PointsTable
+                caption={`${page.page.matching} points`}
+                columns={table.columns}
+                rows={table.rows}
+                sort={{ id: view.sort ?? page.sort.id, descending: page.sort.descending }}
+                sortHref={(id) =>
+                  changed(search, {
+                    sort: id,
+                    dir: (view.sort ?? page.sort.id) === id && !page.sort.descending ? 'down' : null,
+                  })
+                }
+                pointHref={(id) => changed(search, { point: id })}
+                selected={typeof point === 'number' ? point : null}
+                matching={page.page.matching}
+                offset={page.page.offset}
+                pageSize={PAGE_SIZE}
+                pageHref={(number) => changed(search, { page: number === 0 ? null : number })}
+                busy={busy}
+              />
+            )}
+          </Sheet>
+          <Unevaluated page={page} search={search} />
+        </>
+      }
+    />
+  )
+}
+
+/** Finding and plot, the point beside them, the table under them; on a phone the point comes before the table. */
+function ExploreLayout({ lead, margin, rest }: { lead: ReactNode; margin: ReactNode; rest: ReactNode }) {
+  const column = 'grid min-w-0 content-start gap-5 px-4 sm:px-7 print:p-0 print:block print:*:mb-4'
+  return (
+    <div className="grid grow lg:grid-cols-[minmax(0,1fr)_24.5rem] lg:grid-rows-[auto_1fr] print:block">
+      <div className={`${column} py-6 sm:pt-8`}>{lead}</div>
+      <aside
+        aria-label="Selected point"
+        className="min-w-0 border-line bg-sheet px-4 py-6 max-lg:border-y sm:px-7 lg:col-start-2 lg:row-span-2 lg:row-start-1 lg:border-s lg:px-6 lg:py-8 print:border-0 print:p-0"
+      >
+        <div className="grid content-start gap-6 lg:sticky lg:top-6">{margin}</div>
+      </aside>
+      <div className={`${column} pb-8 max-lg:pt-6`}>{rest}</div>
+    </div>
   )
 }
 

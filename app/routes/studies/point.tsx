@@ -1,7 +1,7 @@
 // One point's calculation sheet: inputs, results with equation and source, rows, passes, limits, notes. Printable.
 import { BundleDrawing } from '#app/components/bundle-drawing/bundle-drawing.tsx'
 import { bundleGeometry, passOfRow } from '#app/components/bundle-drawing/layout.ts'
-import { Entries } from '#app/components/sheet/entries.tsx'
+import { Entries, Formula } from '#app/components/sheet/entries.tsx'
 import { LimitBounds, marginText } from '#app/components/sheet/limit-notes.tsx'
 import { MethodList } from '#app/components/sheet/method-list.tsx'
 import { PrintButton } from '#app/components/sheet/print-button.tsx'
@@ -10,7 +10,7 @@ import { Said } from '#app/components/sheet/said.tsx'
 import { LinkButton } from '#app/components/ui/button.tsx'
 import { MarginNote, NoteList } from '#app/components/ui/margin-note.tsx'
 import { Quantity, useUnits } from '#app/components/ui/number.tsx'
-import { PageHead, PlainPage, Sheet } from '#app/components/ui/page.tsx'
+import { PageHead, Sheet } from '#app/components/ui/page.tsx'
 import { Tag } from '#app/components/ui/tag.tsx'
 import { describeCase } from '#app/modules/explore/case-words.ts'
 import { resultColumns } from '#app/modules/explore/columns.ts'
@@ -51,7 +51,7 @@ function SheetOfPoint({ page, studyId }: { page: SheetPage; studyId: string }) {
   const described = describeCase(bundle, names, page.swept, units)
   const entry = bundle.bundle.coolantEntry
   return (
-    <PlainPage>
+    <div className="mx-auto grid w-full max-w-[84rem] gap-6 px-4 py-6 sm:px-7 sm:py-8 print:block print:p-0 print:*:mb-4">
       <PageHead
         over={`${page.studyName}, revision ${run.revision}, run of ${run.plannedAt.slice(0, 10)}`}
         title={
@@ -77,9 +77,9 @@ function SheetOfPoint({ page, studyId }: { page: SheetPage; studyId: string }) {
           </>
         }
       />
-      <div className="grid items-start gap-5 lg:grid-cols-[minmax(0,1fr)_24.5rem] print:grid-cols-[minmax(0,1fr)_16rem]">
+      <div className="grid items-start gap-5 lg:grid-cols-[minmax(0,1fr)_24.5rem] print:block print:*:mb-4">
         <Sheet title="Inputs">
-          <div className="grid gap-x-8 gap-y-4 md:grid-cols-2 print:grid-cols-2">
+          <div className="grid gap-x-8 gap-y-4 md:grid-cols-2 print:grid-cols-3">
             {sheetInputs(bundle, names, units).map(({ title, entries }) => (
               <div key={title} className="break-inside-avoid">
                 <h3 className="mb-1 text-note font-bold">{title}</h3>
@@ -89,16 +89,18 @@ function SheetOfPoint({ page, studyId }: { page: SheetPage; studyId: string }) {
           </div>
         </Sheet>
         <Sheet title="Bundle, to scale">
-          <BundleDrawing
-            geometry={bundleGeometry(bundle)}
-            rows={result.rows}
-            name={pointName(sheet.point)}
-            table={false}
-          />
+          <div className="print:mx-auto print:max-w-[20rem]">
+            <BundleDrawing
+              geometry={bundleGeometry(bundle)}
+              rows={result.rows}
+              name={pointName(sheet.point)}
+              table={false}
+            />
+          </div>
         </Sheet>
       </div>
       <Sheet title="Results">
-        <div className="grid gap-5">
+        <div className="grid gap-5 print:block print:*:mb-3">
           {sheetResults(bundle, result).map(({ title, entries, choices }) => {
             const behind = cards.filter(({ choice }) => choices.includes(choice))
             return (
@@ -149,7 +151,7 @@ function SheetOfPoint({ page, studyId }: { page: SheetPage; studyId: string }) {
           : `; the run was made by ${sheet.storedEngineVersion}`}
         . {sheet.recorded ? 'Recorded with the run.' : 'Computed from the run’s definition when opened.'}
       </p>
-    </PlainPage>
+    </div>
   )
 }
 
@@ -164,7 +166,7 @@ function Checks({ page }: { page: SheetPage }) {
       <ul className="grid gap-1">
         {checks.map(({ left, right, differs }) => (
           <li key={left}>
-            <Said>{`${left}, against ${right}: ${agreement(differs)}.`}</Said>
+            <Formula text={`${left}, against ${right}: ${agreement(differs)}.`} />
           </li>
         ))}
       </ul>

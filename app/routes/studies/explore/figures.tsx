@@ -27,7 +27,11 @@ export function PointFigures({
     return [
       {
         label: id === objective ? OBJECTIVE_LABELS[objective] : column.label,
-        value: <Quantity value={value} dimension={column.dimension} hint={column.hint} />,
+        value: (
+          <span className="figure-value">
+            <Quantity value={value} dimension={column.dimension} hint={column.hint} />
+          </span>
+        ),
       },
     ]
   })
