@@ -633,7 +633,7 @@ export class BundleMarch {
   }
 
   /** Carries the heat of a sweep to the passes' inlets, means and wall temperatures; returns the largest change, K. */
-  private passTemperatures(): number {
+  private passTemperatures(total = Number.NaN): number {
     const { s } = this
     const coolant = s.coolant as CoolantModel
     const perMetre = Math.PI * this.insideDiameter * this.length
@@ -644,7 +644,8 @@ export class BundleMarch {
       if (Math.abs(moved) > change) change = Math.abs(moved)
       // A pass that starts warmer takes up less: corrected in proportion to its driving difference.
       const difference = Math.max(1e-9, this.Ts - this.passIn[j])
-      const heat = this.passHeat[j] * Math.max(0, 1 - moved / difference)
+      const heat =
+        this.passHeat[j] * (Number.isNaN(total) ? Math.max(0, 1 - moved / difference) : total / this.duty)
       const rise = heat / (this.flow * this.passSpecificHeat[j])
       this.passIn[j] = T
       const mean = T + 0.5 * rise
@@ -752,7 +753,7 @@ export class BundleMarch {
     for (this.sweeps = 1; this.sweeps <= MOST_SWEEPS; this.sweeps++) {
       this.coolantSide()
       this.sweep(true)
-      const change = this.passTemperatures()
+      const change = this.passTemperatures(s.duty)
       const short = Math.log(s.duty / this.duty)
       const moved = Math.abs(this.duty / lastDuty - 1)
       lastDuty = this.duty
@@ -765,19 +766,99 @@ export class BundleMarch {
       if (Math.abs(short) < CLOSE && moved < CLOSE && change < 50 * close && Math.abs(off) < 1e-11) settled++
       else settled = 0
       if (settled >= 2) break
+      // The quick loop settles in about twenty sweeps or not at all; the bracketed search always does.
+      if (this.sweeps > 45 || (this.sweeps > 20 && Math.abs(short) > 1e-3)) return this.bracketLength()
       this.inletVapour = (s.duty * this.condensate) / this.duty
-      const effectiveness = Math.min(0.999999, (this.passOut[last] - s.inletTemperature) / reach)
-      const units = -Math.log1p(-effectiveness)
-      const elasticity = Math.max(
-        0.02,
-        effectiveness > 1e-6 ? (units * (1 - effectiveness)) / effectiveness : 1,
-      )
+      const elasticity = this.lengthElasticity()
       const grow = Math.exp(Math.max(-1.5, Math.min(1.5, short / elasticity)))
       this.length *= grow
       // The rows' condensate stands for the length it was found at.
       if (this.length > LONGEST) return OUTCOME.dutyNotReached
     }
     return this.refusal()
+  }
+
+  /** The length whose rating gives the duty, by a bracketed secant in ln length: the duty rises with length. */
+  private bracketLength(): number {
+    const { s } = this
+    const byOutlet = !Number.isNaN(s.outletTemperature)
+    this.start(true)
+    this.inletVapour = 0
+    const at = (x: number): number => {
+      this.length = Math.exp(x)
+      this.rateCoolant()
+      return Math.log(this.duty / s.duty)
+    }
+    // With an outlet temperature the flow is the duty's: found to the coolant's specific heat, refined below.
+    for (let round = 0; round < (byOutlet ? 12 : 1); round++) {
+      const outcome = this.bracketedRoot(
+        at,
+        Math.log(1e-3),
+        Math.log(LONGEST),
+        Math.log(4),
+        OUTCOME.dutyNotReached,
+      )
+      if (outcome !== 0) return outcome
+      if (!byOutlet) break
+      const off =
+        (this.passOut[s.passes - 1] - s.inletTemperature) / (s.outletTemperature - s.inletTemperature) - 1
+      if (Math.abs(off) < 1e-11) break
+      this.flow *= 1 + off
+    }
+    return this.refusal()
+  }
+
+  /**
+   * Root of a rising function of x between two bounds, left solved at the root. The secant is taken unless it lands
+   * near an end of the bracket; `beyond` is the outcome when even the upper bound falls short.
+   */
+  private bracketedRoot(
+    at: (x: number) => number,
+    lowest: number,
+    highest: number,
+    first: number,
+    beyond: number,
+  ): number {
+    let low = lowest
+    let high = highest
+    let fLow = Number.NEGATIVE_INFINITY
+    let fHigh = at(high)
+    if (!(fHigh > 0)) return beyond
+    let x = first
+    let stayed = 0
+    for (let i = 0; i < 100; i++) {
+      const f = at(x)
+      if (Math.abs(f) < 1e-12 || high - low < 1e-13) return 0
+      const above = f > 0
+      if (above) {
+        high = x
+        fHigh = f
+        stayed = stayed > 0 ? stayed + 1 : 1
+      } else {
+        low = x
+        fLow = f
+        stayed = stayed < 0 ? stayed - 1 : -1
+      }
+      // Twice on one side: halve the far end's weight, so that the bracket closes from there.
+      if (stayed >= 2) fLow *= 0.5
+      if (stayed <= -2) fHigh *= 0.5
+      if (!Number.isFinite(fLow)) x = Math.max(low + 0.1 * (high - low), x - 1.2 * f)
+      else x = high - (fHigh * (high - low)) / (fHigh - fLow)
+      if (!(x > low && x < high)) x = 0.5 * (low + high)
+    }
+    return 0
+  }
+
+  /** d ln duty/d ln length with the passes' inlets held: NTU (1 − ε)/ε of each pass, weighted by its heat. */
+  private lengthElasticity(): number {
+    const { s } = this
+    let sum = 0
+    for (let j = 0; j < s.passes; j++) {
+      const rise = this.passHeat[j] / (this.flow * this.passSpecificHeat[j])
+      const effectiveness = Math.min(0.999999, Math.max(1e-9, rise / (this.Ts - this.passIn[j])))
+      sum += (this.passHeat[j] * -Math.log1p(-effectiveness) * (1 - effectiveness)) / effectiveness
+    }
+    return Math.max(0.02, sum / this.duty)
   }
 
   private refusal(): number {
@@ -844,37 +925,20 @@ export class BundleMarch {
     const length = this.length
     const found = this.remember()
     this.start(true)
-    const at = (velocity: number): number => {
-      this.flow = this.velocityToFlow(velocity)
+    this.inletVapour = 0
+    const at = (x: number): number => {
+      this.flow = this.velocityToFlow(Math.exp(x))
       this.length = length
-      this.inletVapour = 0
       this.rateCoolant()
       return Math.log(this.duty / duty)
     }
-    let low = Math.log(1e-3)
-    let high = Math.log(60)
-    let fLow = Number.NEGATIVE_INFINITY
-    let fHigh = at(60)
-    let outcome = 0
-    if (!(fHigh > 0)) outcome = OUTCOME.noVelocityHoldsWall
-    let x = Math.log(1.5)
-    for (let i = 0; outcome === 0 && i < 80; i++) {
-      const f = at(Math.exp(x))
-      if (Math.abs(f) < 1e-10 || high - low < 1e-13) break
-      if (f > 0) {
-        high = x
-        fHigh = f
-      } else {
-        low = x
-        fLow = f
-      }
-      const secant = Number.isFinite(fLow) ? high - (fHigh * (high - low)) / (fHigh - fLow) : x - f / 0.45
-      const inside = 0.02 * (high - low)
-      x =
-        secant > low + inside * (i % 3 === 2 ? 10 : 0) && secant < high - inside * (i % 3 === 2 ? 10 : 0)
-          ? secant
-          : 0.5 * (low + high)
-    }
+    const outcome = this.bracketedRoot(
+      at,
+      Math.log(1e-3),
+      Math.log(60),
+      Math.log(1.5),
+      OUTCOME.noVelocityHoldsWall,
+    )
     if (outcome === 0) {
       this.coolantDrops()
     }
