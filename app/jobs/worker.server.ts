@@ -219,7 +219,8 @@ export class JobWorker {
   }
 
   #say(what: string, error: unknown): void {
-    this.#log(`Could not ${what}: ${(error as Error).message}`)
+    const { message, cause } = error as Error
+    this.#log(`Could not ${what}: ${cause instanceof Error ? cause.message : message}`)
   }
 }
 

@@ -45,24 +45,21 @@ export function readStudy(definition: Record<string, unknown>): Study {
 }
 
 const SAMPLE_POINTS = 32
-const SAMPLE_MS = 40
+const SAMPLE_MS = 200
 
 /** Seconds that one point costs one core, measured on points spread over the study. */
 export function measurePointCost(plan: SweepPlan): number {
   const sample = Math.min(SAMPLE_POINTS, plan.points)
   const out = new Float64Array(COLUMNS)
   const begun = performance.now()
+  // The first passes compile; the least of whole passes is what a warm thread needs.
   let least = Number.POSITIVE_INFINITY
-  // The first pass compiles and warms; what is compared is the mean of whole passes.
-  for (let pass = 0; pass < 3 && performance.now() - begun < SAMPLE_MS; pass++) {
+  do {
     const started = performance.now()
-    let evaluated = 0
-    for (let k = 0; k < sample && performance.now() - begun < 2 * SAMPLE_MS; k++) {
+    for (let k = 0; k < sample; k++)
       evaluateRange(plan, Math.floor(((k + 0.5) * plan.points) / sample), 1, out)
-      evaluated++
-    }
-    least = Math.min(least, (performance.now() - started) / 1000 / evaluated)
-  }
+    least = Math.min(least, (performance.now() - started) / 1000 / sample)
+  } while (performance.now() - begun < SAMPLE_MS)
   return least
 }
 

@@ -141,13 +141,23 @@ export async function finishRun(lease: Lease, of: Run): Promise<boolean> {
 }
 
 /** SHA-256 over the stored key results, column by column in point order: the cut into chunks leaves no trace. */
-export async function hashOfRun(of: Run): Promise<string> {
+export const hashOfRun = (of: Run): Promise<string> =>
+  hashOfColumns(
+    KEY_RESULTS.map(
+      ({ column }) =>
+        () =>
+          readColumn(of, column),
+    ),
+  )
+
+export async function hashOfColumns(
+  columns: readonly (() => Float64Array | Promise<Float64Array>)[],
+): Promise<string> {
   const hash = createHash('sha256')
-  for (const { column } of KEY_RESULTS) {
-    const values = await readColumn(of, column)
+  for (const read of columns) {
     // Every NaN is the same NaN.
-    for (let i = 0; i < values.length; i++) if (Number.isNaN(values[i])) values[i] = Number.NaN
-    hash.update(new Uint8Array(values.buffer, values.byteOffset, values.byteLength))
+    const values = (await read()).map((value) => (Number.isNaN(value) ? Number.NaN : value))
+    hash.update(new Uint8Array(values.buffer))
   }
   return hash.digest('hex')
 }
