@@ -180,6 +180,20 @@ export async function plotColumns(runId: string, query: PlotQuery): Promise<Plot
   }
 }
 
+/** Whole columns, by key result id or variable path, and the points of them that pass the filters. Not to be written to. */
+export async function columnsOfPoints(
+  runId: string,
+  ids: readonly string[],
+  filters?: PointFilters,
+): Promise<{ points: Int32Array; columns: Float64Array[] }> {
+  const points = await Points.of(runId)
+  const [found, ...columns] = await Promise.all([
+    points.matching(filters),
+    ...ids.map((id) => points.column(id)),
+  ])
+  return { points: found, columns }
+}
+
 /** Points that no other beats in both results, by rising x; of those that meet every limit unless told otherwise. */
 export async function paretoFront(
   runId: string,
