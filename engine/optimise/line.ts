@@ -48,7 +48,8 @@ const worstExcess = (trial: Trial | null): number =>
 export function bestOnLine(problem: LineProblem): LineResult | null {
   const { low, high, tolerance = 1e-10 } = problem
   const looks = Math.max(3, problem.looks ?? 24)
-  if (!(low > 0 && high >= low)) throw new RangeError(`range ${low} to ${high}; both ends above zero, low first`)
+  if (!(low > 0 && high >= low))
+    throw new RangeError(`range ${low} to ${high}; both ends above zero, low first`)
   let trials = 0
   const known = new Map<number, Trial | null>()
   const at = (s: number): Trial | null => {
@@ -65,12 +66,15 @@ export function bestOnLine(problem: LineProblem): LineResult | null {
   const value = (s: number) => (worst(s) <= 0 ? (at(s) as Trial).objective : Number.POSITIVE_INFINITY)
 
   const grid: number[] =
-    s1 === s0 ? [s0] : Array.from({ length: looks }, (_, k) => (k === looks - 1 ? s1 : s0 + ((s1 - s0) * k) / (looks - 1)))
+    s1 === s0
+      ? [s0]
+      : Array.from({ length: looks }, (_, k) => (k === looks - 1 ? s1 : s0 + ((s1 - s0) * k) / (looks - 1)))
   const stops = [...grid]
   for (let k = 0; k + 1 < grid.length; k++) {
     const left = worst(grid[k]) <= 0
     const right = worst(grid[k + 1]) <= 0
-    if (left !== right) stops.push(edge(worst, left ? grid[k] : grid[k + 1], left ? grid[k + 1] : grid[k], tolerance))
+    if (left !== right)
+      stops.push(edge(worst, left ? grid[k] : grid[k + 1], left ? grid[k + 1] : grid[k], tolerance))
   }
 
   let best = pick(stops, value)
@@ -125,7 +129,12 @@ function neighbours(points: readonly number[], s: number): number[] {
 }
 
 /** Golden section between the neighbours of s. */
-function around(points: readonly number[], s: number, value: (s: number) => number, tolerance: number): number {
+function around(
+  points: readonly number[],
+  s: number,
+  value: (s: number) => number,
+  tolerance: number,
+): number {
   const near = neighbours(points, s)
   if (near.length === 0) return s
   let a = Math.min(s, ...near)

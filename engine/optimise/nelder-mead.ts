@@ -108,7 +108,10 @@ export function nelderMead(
       }
     }
     const [best] = corners
-    corners = [best, ...corners.slice(1).map(({ x }) => at(x.map((xj, j) => best.x[j] + 0.5 * (xj - best.x[j]))))]
+    corners = [
+      best,
+      ...corners.slice(1).map(({ x }) => at(x.map((xj, j) => best.x[j] + 0.5 * (xj - best.x[j])))),
+    ]
     moves.shrink++
   }
   return { x: corners[0].x, value: corners[0].value, evaluations, converged, moves }
