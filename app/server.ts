@@ -1,0 +1,53 @@
+// The web process: static files, then React Router. Stateless; any number may serve one database.
+import { createRequestHandler } from '@react-router/express'
+import compression from 'compression'
+import express from 'express'
+import { RouterContextProvider, type ServerBuild } from 'react-router'
+import { pool } from '#app/db.server.ts'
+import { env, requireSettings } from '#app/env.server.ts'
+import { addressContext } from '#app/http/context.ts'
+
+requireSettings('web')
+
+const app = express()
+app.disable('x-powered-by')
+app.use(compression())
+app.use('/assets', express.static('build/client/assets', { immutable: true, maxAge: '1y' }))
+app.use(express.static('build/client', { maxAge: '1h' }))
+app.all(
+  '*path',
+  createRequestHandler({
+    build: () => import('virtual:react-router/server-build') as Promise<ServerBuild>,
+    mode: 'production',
+    getLoadContext(request) {
+      const context = new RouterContextProvider()
+      context.set(addressContext, request.socket.remoteAddress ?? '')
+      return context
+    },
+  }),
+)
+
+const server = app.listen(env.PORT, env.HOST, (error?: Error) => {
+  if (!error) return
+  const { code } = error as NodeJS.ErrnoException
+  console.error(
+    code === 'EADDRINUSE'
+      ? `PORT: ${env.PORT} is taken by another program; give another port, or stop that program.`
+      : `PORT: cannot listen on ${env.HOST}:${env.PORT} (${code}).`,
+  )
+  process.exit(1)
+})
+// Keep-alive connections that a proxy in front holds must outlive its own timeout.
+server.keepAliveTimeout = 65_000
+
+for (const signal of ['SIGTERM', 'SIGINT'] as const)
+  process.once(signal, () => {
+    server.close(async () => {
+      await pool.end()
+      process.exit(0)
+    })
+    server.closeIdleConnections()
+    setTimeout(() => {
+      server.closeAllConnections()
+    }, 3000).unref()
+  })
