@@ -3,42 +3,26 @@ import { Form, useSubmit } from 'react-router'
 
 export type AxisOption = { id: string; label: string; group: string }
 
-export function AxesForm({
-  search,
-  options,
-  colours,
-  x,
-  y,
-  colour,
-}: {
-  search: URLSearchParams
-  options: readonly AxisOption[]
-  colours: readonly AxisOption[]
-  x: string
-  y: string
-  colour: string | null
-}) {
+export type AxisChoice = { name: string; label: string; value: string; options: readonly AxisOption[] }
+
+export function AxesForm({ search, choices }: { search: URLSearchParams; choices: readonly AxisChoice[] }) {
   const submit = useSubmit()
-  const kept = [...search].filter(([key]) => !['x', 'y', 'colour', 'page'].includes(key))
+  const asked = new Set([...choices.map(({ name }) => name), 'page'])
+  const kept = [...search].filter(([key]) => !asked.has(key))
   return (
     <Form
       method="get"
       replace
       preventScrollReset
-      className="flex flex-wrap items-center gap-x-3 gap-y-2 text-note"
+      className="screen-only flex flex-wrap items-center gap-x-3 gap-y-2 text-note"
       onChange={(event) => submit(event.currentTarget, { replace: true, preventScrollReset: true })}
     >
       {kept.map(([key, value]) => (
         <input key={`${key}=${value}`} type="hidden" name={key} value={value} />
       ))}
-      <Choice name="y" label="Upward" value={y} options={options} />
-      <Choice name="x" label="Across" value={x} options={options} />
-      <Choice
-        name="colour"
-        label="Colour"
-        value={colour ?? 'none'}
-        options={[{ id: 'none', label: 'none', group: '' }, ...colours]}
-      />
+      {choices.map((choice) => (
+        <Choice key={choice.name} {...choice} />
+      ))}
       <noscript>
         <button type="submit" className="button button-plain button-small">
           Show
@@ -48,29 +32,20 @@ export function AxesForm({
   )
 }
 
-function Choice({
-  name,
-  label,
-  value,
-  options,
-}: {
-  name: string
-  label: string
-  value: string
-  options: readonly AxisOption[]
-}) {
+function Choice({ name, label, value, options }: AxisChoice) {
   const groups = [...new Set(options.map(({ group }) => group))]
   return (
     <label className="inline-flex items-center gap-1.5 text-soft">
       {label}
       <select key={value} name={name} defaultValue={value} className="input compact-select">
         {groups.map((group) => {
-          const own = options.filter((option) => option.group === group)
-          const entries = own.map(({ id, label: text }) => (
-            <option key={id} value={id}>
-              {text}
-            </option>
-          ))
+          const entries = options
+            .filter((option) => option.group === group)
+            .map(({ id, label: text }) => (
+              <option key={id} value={id}>
+                {text}
+              </option>
+            ))
           return group === '' ? (
             entries
           ) : (

@@ -74,3 +74,24 @@ export const unitOf = (column: PointColumn, units: UnitSystem): string =>
 
 export const shown = (value: number, column: PointColumn, units: UnitSystem): number =>
   toDisplay(value, column.dimension, units, column.hint).value
+
+const USUAL_RESULTS = [
+  'coolantPressureDrop',
+  'vapourPressureDrop',
+  'overallCoefficient',
+  'tubeLength',
+  'coolantVelocity',
+]
+
+/** The columns nobody has chosen otherwise: what was swept, the objective, and what a bundle is usually asked. */
+export function usualColumns(
+  variables: readonly string[],
+  objective: string,
+  has: (result: string) => boolean,
+): string[] {
+  const results = [objective, ...USUAL_RESULTS.filter((id) => id !== objective)]
+  return [...variables, ...results.filter((id) => !variables.includes(id) && has(id))].slice(
+    0,
+    Math.max(8, variables.length + 3),
+  )
+}

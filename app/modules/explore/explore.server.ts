@@ -1,13 +1,7 @@
 // What the Explore page and the point sheet show, put together from run, points and plan.
 import { AppError } from '#app/http/errors.ts'
 import type { PointFilters } from '#app/modules/points/point-types.ts'
-import {
-  aggregates,
-  pageOfPoints,
-  plotColumns,
-  pointSheet,
-  refinedBest,
-} from '#app/modules/points/points.server.ts'
+import { aggregates, pageOfPoints, pointSheet, refinedBest } from '#app/modules/points/points.server.ts'
 import { runProgress } from '#app/modules/runs/progress.server.ts'
 import { isFinal } from '#app/modules/runs/progress.ts'
 import { planOfRevision } from '#app/modules/runs/run-plan.server.ts'
@@ -22,10 +16,8 @@ import type { LimitEffect } from './finding.ts'
 import { keyResultOf } from './limits.ts'
 import { sheetCards } from './method-cards.server.ts'
 import { caseNames, choiceNames } from './names.server.ts'
+import { pictureOf } from './picture.server.ts'
 import { type ExploreView, PAGE_SIZE, parseView } from './view.ts'
-
-/** As many marks as an SVG plot draws without keeping a reader waiting. */
-const PLOT_MARKS = 4000
 
 /** A variable as the page needs it: with its values where they are few enough to choose from. */
 function pageVariable({ path, label, symbol, dimension, kind, tubeSized, values, between }: PlanVariable) {
@@ -76,20 +68,17 @@ export async function explorePage(studyId: string, search: URLSearchParams) {
     aggregates(run.id),
     refinedBest(run.id),
   ])
-  const usual = usualView(plan, all.ranges)
   const filters: PointFilters = {
     ranges: view.ranges,
     inputs: view.inputs,
     ...(view.outcome ? { outcome: view.outcome } : {}),
   }
-  const x = view.x ?? usual.x
-  const y = view.y ?? usual.y
-  const colour = view.colour === 'none' ? null : (view.colour ?? usual.colour)
   const tableAll = view.all || all.meetingLimits === 0
   const final = isFinal(run.state)
   const effects = final ? await limitEffects(run.id, plan, all.meetingLimits > 0) : null
   const sort = usualSort(plan, view, nearestEffect(effects))
-  const [page, plot] = await Promise.all([
+  const has = (result: string) => all.ranges[result] !== undefined
+  const [page, picture] = await Promise.all([
     pageOfPoints(run.id, {
       sort: sort.id,
       descending: sort.descending,
@@ -97,7 +86,7 @@ export async function explorePage(studyId: string, search: URLSearchParams) {
       limit: PAGE_SIZE,
       offset: view.page * PAGE_SIZE,
     }),
-    plotColumns(run.id, { x, y, colour: colour ?? undefined, max: PLOT_MARKS, filters }),
+    pictureOf(run.id, plan, view, has, filters, tableAll),
   ])
   const best = progress.best
   const selected = await selectedPoint(
@@ -116,14 +105,11 @@ export async function explorePage(studyId: string, search: URLSearchParams) {
     limits: plan.study.limits,
     variables,
     names: choiceNames(plan.variables),
-    x,
-    y,
-    colour,
     tableAll,
     sort,
     aggregates: all,
     page,
-    plot,
+    picture,
     limitEffects: effects,
     best: best ? bestOf(plan, best.point, best.results) : null,
     refined: refined ? { ...refinedSheet(run.id, plan, refined), ...refinedWords(refined) } : null,
@@ -202,24 +188,6 @@ async function selectedPoint(
   if (view.point === 'refined' && refined) return refinedSheet(runId, plan, refined)
   const asked = typeof view.point === 'number' && view.point < plan.points ? view.point : fallback
   return asked === null ? null : sheetOf(runId, plan, asked)
-}
-
-/** Axes, colour and columns of a page nobody has chosen them on. */
-function usualView(plan: SweepPlan, ranges: Record<string, unknown>) {
-  const { limits, objective } = plan.study
-  const has = (id: string) => ranges[id] !== undefined
-  const limited = LIMITS.filter(({ id, result }) => limits[id]?.max !== undefined && has(result)).map(
-    ({ result }) => result,
-  )
-  const x =
-    [...limited, 'coolantPressureDrop', 'vapourPressureDrop'].find((id) => id !== objective && has(id)) ??
-    'tubeLength'
-  const few = ({ values, between }: PlanVariable) => !between && values.length >= 2 && values.length <= 6
-  const colour =
-    plan.variables.find(
-      (variable) => few(variable) && ['tube.outsideDiameter', 'tube', 'fluid'].includes(variable.path),
-    ) ?? plan.variables.find(few)
-  return { x, y: objective as string, colour: colour?.path ?? null }
 }
 
 type PointEffect = LimitEffect & { nearestPoint: number | null }

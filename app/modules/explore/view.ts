@@ -6,8 +6,12 @@ import type { PointColumn } from './columns.ts'
 
 export const PAGE_SIZE = 25
 
+export const PICTURES = ['scatter', 'map', 'distribution', 'parallel'] as const
+export type PictureKind = (typeof PICTURES)[number]
+
 export type ExploreView = {
   run: string | null
+  show: PictureKind
   x: string | null
   y: string | null
   colour: string | null
@@ -63,6 +67,7 @@ export function parseView(search: URLSearchParams, columns: readonly PointColumn
   const outcome = search.get('outcome')
   return {
     run: search.get('run'),
+    show: PICTURES.find((kind) => kind === search.get('show')) ?? 'scatter',
     x: id('x'),
     y: id('y'),
     colour: search.get('colour') === 'none' ? 'none' : id('colour'),

@@ -1,16 +1,13 @@
 // Explore: the finding, its figures, the points against their limits, and one point drawn in the margin.
 import { type ReactNode, useCallback, useMemo } from 'react'
 import {
+  Link,
   type ShouldRevalidateFunctionArgs,
   useLocation,
   useNavigate,
   useNavigation,
   useRevalidator,
 } from 'react-router'
-import type { Mark } from '#app/components/charts/scatter.ts'
-import { ScatterPlot } from '#app/components/charts/scatter-plot.tsx'
-import { AxesForm, type AxisOption } from '#app/components/explore/axes-form.tsx'
-import { FilterBar, type FilterField } from '#app/components/explore/filter-bar.tsx'
 import { Said } from '#app/components/sheet/said.tsx'
 import { ColumnChoice } from '#app/components/table/column-choice.tsx'
 import { PointsTable, type TableColumn, type TableRow } from '#app/components/table/points-table.tsx'
@@ -22,20 +19,11 @@ import { groupedText } from '#app/components/ui/number-format.ts'
 import { EmptyState, PageHead, PlainPage, Sheet } from '#app/components/ui/page.tsx'
 import { ProgressBar } from '#app/components/ui/progress.tsx'
 import { describeCase } from '#app/modules/explore/case-words.ts'
-import { type PointColumn, pointColumns, shown, unitOf } from '#app/modules/explore/columns.ts'
+import { type PointColumn, pointColumns, shown, unitOf, usualColumns } from '#app/modules/explore/columns.ts'
 import { type ExploreRun, explorePage } from '#app/modules/explore/explore.server.ts'
 import { finding } from '#app/modules/explore/finding.ts'
-import { type PlotInput, plotSpec } from '#app/modules/explore/plot.ts'
 import { useRunProgress } from '#app/modules/explore/use-run-progress.ts'
-import {
-  boundToSi,
-  changed,
-  filterWords,
-  PAGE_SIZE,
-  parseView,
-  unfiltered,
-  valueText,
-} from '#app/modules/explore/view.ts'
+import { changed, PAGE_SIZE, parseView, valueText } from '#app/modules/explore/view.ts'
 import { isFinal } from '#app/modules/runs/progress.ts'
 import { KEY_RESULT_INDEX, OUTCOMES } from '#engine/bundle/key-results.ts'
 import { LIMITS, type Limits } from '#engine/sweep/limits.ts'
@@ -43,6 +31,7 @@ import { OBJECTIVE_LABELS } from '#engine/sweep/objective.ts'
 import type { UnitSystem } from '#engine/units.ts'
 import type { Route } from './+types/explore'
 import { PointFigures } from './explore/figures.tsx'
+import { PictureSheet } from './explore/picture.tsx'
 import { PinnedPoints } from './explore/pinned-points.tsx'
 import { PointMargin, pointName } from './explore/point-margin.tsx'
 import '#app/components/explore/explore.css'
@@ -125,32 +114,8 @@ function ExploreRunPage({ page, studyId }: { page: ExploreRun; studyId: string }
       navigate(changed(search, change), { replace: true, preventScrollReset: true }),
     [navigate, search],
   )
-  const find = (id: string) => columns.find((column) => column.id === id) as PointColumn
-  const x = find(page.x)
-  const y = find(page.y)
-
-  const spec = useMemo(
-    () =>
-      plotSpec(
-        {
-          columns: page.plot,
-          x,
-          y,
-          colour: columns.find(({ id }) => id === page.colour) ?? null,
-          colourValues: page.variables.find(({ path }) => path === page.colour)?.values ?? [],
-          limits: page.limits,
-          names: page.names,
-          marks: plotMarks(page, x, y),
-        },
-        units,
-      ),
-    [page, columns, units, x, y],
-  )
-
-  const filters = filterWords(view, columns, units, page.names).map(({ text, without }) => ({
-    text,
-    href: changed(search, without),
-  }))
+  const filtered =
+    Object.keys(view.ranges).length > 0 || Object.keys(view.inputs).length > 0 || view.outcome !== null
   const table = tableOf(page, view.columns, columns, units)
   const fresh = progress.done - page.progress.done
   const point = selected?.point ?? null
@@ -221,74 +186,14 @@ function ExploreRunPage({ page, studyId }: { page: ExploreRun; studyId: string }
             href={(id) => changed(search, { point: id })}
             unpinHref={pin}
           />
-          <Sheet
-            title={`${y.label} against ${x.label.toLowerCase()}`}
-            acts={
-              <AxesForm
-                search={search}
-                x={page.x}
-                y={page.y}
-                colour={page.colour}
-                options={axisOptions(columns, page)}
-                colours={axisOptions(columns, page, true)}
-              />
-            }
-          >
-            <div className="grid gap-3">
-              <FilterBar
-                filters={filters}
-                clearHref={unfiltered(search, columns)}
-                fields={filterFields(page, columns, units)}
-                onValue={(id, value) => to({ [id]: value })}
-                onBounds={(id, min, max) => {
-                  const column = find(id)
-                  const low = boundToSi(min, column, units)
-                  const high = boundToSi(max, column, units)
-                  if ((min.trim() !== '' && low === null) || (max.trim() !== '' && high === null))
-                    return `Give numbers in ${unitOf(column, units) || 'plain digits'}, or leave one side empty.`
-                  if (low === null && high === null) return 'Give a number at one side at least.'
-                  if (low !== null && high !== null && low > high)
-                    return 'The lower bound is above the upper one.'
-                  to({ [`min.${id}`]: low, [`max.${id}`]: high })
-                  return null
-                }}
-              />
-              {page.plot.point.length === 0 ? (
-                <p className="py-10 text-center text-soft">
-                  {page.aggregates.evaluated === 0
-                    ? 'No point has a value to plot.'
-                    : 'No point passes the filter.'}
-                </p>
-              ) : (
-                <ScatterPlot
-                  name={`${y.label} against ${x.label.toLowerCase()}, ${page.plot.point.length} points`}
-                  spec={spec}
-                  onPick={(id) => to({ point: id })}
-                  onBrush={(area) => {
-                    if (!area) return
-                    const si = (value: number, column: PointColumn) => boundToSi(String(value), column, units)
-                    to({
-                      [`min.${x.id}`]: si(area.x[0], x),
-                      [`max.${x.id}`]: si(area.x[1], x),
-                      [`min.${y.id}`]: si(area.y[0], y),
-                      [`max.${y.id}`]: si(area.y[1], y),
-                    })
-                  }}
-                >
-                  <p className="text-note text-soft">
-                    {page.plot.matching > page.plot.point.length ? (
-                      <>
-                        <Digits>{page.plot.point.length}</Digits> of <Digits>{page.plot.matching}</Digits>{' '}
-                        points drawn, thinned evenly; the front and the least point are always among them.{' '}
-                      </>
-                    ) : null}
-                    Choose a point to see it; draw a box over points to keep only those. The table below holds
-                    the same values.
-                  </p>
-                </ScatterPlot>
-              )}
-            </div>
-          </Sheet>
+          <PictureSheet
+            page={page}
+            columns={columns}
+            view={view}
+            search={search}
+            selected={typeof point === 'number' ? point : null}
+            to={to}
+          />
         </>
       }
       rest={
@@ -298,9 +203,9 @@ function ExploreRunPage({ page, studyId }: { page: ExploreRun; studyId: string }
             title={
               <>
                 {page.tableAll ? 'All points' : 'Points that meet every limit'}, by{' '}
-                {(view.sort === 'point'
+                {(page.sort.id === 'point'
                   ? 'number'
-                  : (find(view.sort ?? page.sort.id)?.label ?? page.objective)
+                  : (columns.find(({ id }) => id === page.sort.id)?.label ?? page.sort.id)
                 ).toLowerCase()}
               </>
             }
@@ -326,7 +231,7 @@ function ExploreRunPage({ page, studyId }: { page: ExploreRun; studyId: string }
           >
             {page.page.rows.length === 0 ? (
               <p className="px-5 pb-6 text-soft">
-                {filters.length > 0
+                {filtered
                   ? 'No point passes the filter. Lift it, or widen its bounds.'
                   : 'No point is stored yet.'}
               </p>
@@ -335,11 +240,11 @@ function ExploreRunPage({ page, studyId }: { page: ExploreRun; studyId: string }
                 caption={`${page.page.matching} points`}
                 columns={table.columns}
                 rows={table.rows}
-                sort={{ id: view.sort ?? page.sort.id, descending: page.sort.descending }}
+                sort={{ id: page.sort.id, descending: page.sort.descending }}
                 sortHref={(id) =>
                   changed(search, {
                     sort: id,
-                    dir: (view.sort ?? page.sort.id) === id && !page.sort.descending ? 'down' : null,
+                    dir: page.sort.id === id && !page.sort.descending ? 'down' : null,
                   })
                 }
                 pointHref={(id) => changed(search, { point: id })}
@@ -439,46 +344,20 @@ function Refined({ page, search }: { page: ExploreRun; search: URLSearchParams }
           Refined between the swept values: {OBJECTIVE_LABELS[objective].toLowerCase()}{' '}
           <Quantity value={value} dimension={column.dimension} hint={column.hint} />
           {gain !== null ? `, ${Number(gain.toPrecision(2))} % less` : ''}.{' '}
-          <a className="link screen-only font-semibold" href={changed(search, { point: 'refined' })}>
+          <Link
+            to={changed(search, { point: 'refined' })}
+            replace
+            preventScrollReset
+            className="link screen-only font-semibold"
+          >
             Show it
-          </a>
+          </Link>
         </>
       }
     >
       <Said>{refined.statement}</Said>
     </MarginNote>
   )
-}
-
-/** The points that stand out: selected, pinned, refined, and on top of them the least. */
-function plotMarks(page: ExploreRun, x: PointColumn, y: PointColumn): PlotInput['marks'] {
-  const { selected, refined, best, pinned } = page
-  const mark = (kind: Mark['kind'], one: Placed) => ({
-    kind,
-    label: pointName(one.point),
-    id: typeof one.point === 'number' ? one.point : null,
-    x: valueOn(x, one),
-    y: valueOn(y, one),
-  })
-  const others = pinned.filter(({ point }) => point !== selected?.point && point !== best?.point)
-  return [
-    ...others.map((one) => mark('pinned', one)),
-    ...(refined?.improved ? [mark('refined', refined)] : []),
-    ...(selected && selected.point !== best?.point ? [mark('selected', selected)] : []),
-    ...(best ? [{ ...mark('best', best), label: `Point ${best.point}, least` }] : []),
-  ]
-}
-
-type Placed = {
-  point: number | 'refined'
-  inputs: readonly unknown[]
-  keyResults: Readonly<Record<string, number | null>>
-}
-
-/** A point's value on an axis; a choice has no place on one. */
-function valueOn(column: PointColumn, one: Pick<Placed, 'inputs' | 'keyResults'>): number | null {
-  const value = column.kind === 'input' ? one.inputs[column.index] : one.keyResults[column.id]
-  return typeof value === 'number' ? value : null
 }
 
 /** Points without values, by reason: each can be listed. */
@@ -510,48 +389,6 @@ function Unevaluated({ page, search }: { page: ExploreRun; search: URLSearchPara
   )
 }
 
-function axisOptions(columns: readonly PointColumn[], page: ExploreRun, colours = false): AxisOption[] {
-  return columns.flatMap(({ id, label, kind, choice }) => {
-    if (choice && !colours) return []
-    if (kind === 'result' && page.aggregates.ranges[id] === undefined) return []
-    return [{ id, label, group: kind === 'input' ? 'Swept' : 'Results' }]
-  })
-}
-
-function filterFields(page: ExploreRun, columns: readonly PointColumn[], units: UnitSystem): FilterField[] {
-  return columns.flatMap((column): FilterField[] => {
-    const { id, label, kind } = column
-    if (kind === 'result') {
-      if (page.aggregates.ranges[id] === undefined) return []
-      return [{ id, label, unit: unitOf(column, units) }]
-    }
-    const values = page.variables.find(({ path }) => path === id)?.values ?? []
-    if (values.length === 0 && column.choice) return []
-    return [
-      {
-        id,
-        label,
-        unit: unitOf(column, units),
-        values:
-          values.length > 0
-            ? values.map((value) => ({
-                value: String(value),
-                label: valueText(value, column, units, page.names),
-              }))
-            : undefined,
-      },
-    ]
-  })
-}
-
-const USUAL_RESULTS = [
-  'coolantPressureDrop',
-  'vapourPressureDrop',
-  'overallCoefficient',
-  'tubeLength',
-  'coolantVelocity',
-]
-
 function tableOf(
   page: ExploreRun,
   chosen: readonly string[],
@@ -560,15 +397,13 @@ function tableOf(
 ) {
   const has = (column: PointColumn) =>
     column.kind === 'input' || page.aggregates.ranges[column.id] !== undefined
-  const usual = [
-    ...page.variables.map(({ path }) => path),
+  const usual = usualColumns(
+    page.variables.map(({ path }) => path),
     page.objective,
-    ...USUAL_RESULTS.filter((id) => id !== page.objective),
-  ]
-  const ids = chosen.length > 0 ? chosen : usual.slice(0, Math.max(8, page.variables.length + 3))
-  const own = ids.flatMap((id) =>
-    columns.filter((column) => column.id === id && (chosen.length > 0 || has(column))),
+    (result) => page.aggregates.ranges[result] !== undefined,
   )
+  const ids = chosen.length > 0 ? chosen : usual
+  const own = ids.flatMap((id) => columns.filter((column) => column.id === id))
   const option = ({ id, label }: PointColumn) => ({ id, label })
   return {
     shown: own.map(option),
