@@ -71,6 +71,11 @@ export const runChunk = pgTable(
     // How many of its points came to each outcome, by the outcome's number.
     outcomes: integer('outcomes').array().notNull(),
     meetingLimits: integer('meeting_limits').notNull(),
+    // How many evaluated points each limit stops, by the limit's bit.
+    limitsNotMet: integer('limits_not_met').array().notNull().default([]),
+    // Each key result's range over evaluated points, in storage order; NaN where none has a value.
+    leastResults: float8Array('least_results').notNull(),
+    greatestResults: float8Array('greatest_results').notNull(),
     bestPoint: integer('best_point'),
     bestObjective: doublePrecision('best_objective'),
     // The best point's key results, in storage order.

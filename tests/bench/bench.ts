@@ -1,7 +1,12 @@
 // `npm run --silent bench -- --json [--only engine|pool|…]`: what things cost, measured in one run.
 
+import { closeBenchDatabase } from './database.ts'
+
 const SECTIONS = {
   engine: async () => (await import('./engine.ts')).benchEngine(),
+  pool: async () => (await import('./runs.ts')).benchPool(),
+  endToEnd: async () => (await import('./runs.ts')).benchEndToEnd(),
+  pages: async () => (await import('./runs.ts')).benchPages(),
 } satisfies Record<string, () => Promise<unknown>>
 
 const names = Object.keys(SECTIONS) as (keyof typeof SECTIONS)[]
@@ -14,9 +19,13 @@ if (unknown.length > 0) {
 }
 
 const figures: Record<string, unknown> = {}
-for (const name of names) {
-  if (only.length > 0 && !only.includes(name)) continue
-  console.error(`Measuring ${name} …`)
-  figures[name] = await SECTIONS[name]()
+try {
+  for (const name of names) {
+    if (only.length > 0 && !only.includes(name)) continue
+    console.error(`Measuring ${name} …`)
+    figures[name] = await SECTIONS[name]()
+  }
+} finally {
+  await closeBenchDatabase()
 }
 console.log(JSON.stringify(figures, null, argv.includes('--json') ? undefined : 2))

@@ -1,7 +1,8 @@
 // Columns of stored results kept in memory: chunks never change, so what was read once is read for good.
-import { eq } from 'drizzle-orm'
+import { eq, sql } from 'drizzle-orm'
 import { db } from '#app/db.server.ts'
 import { type Run, runChunk } from '#drizzle/schema/index.ts'
+import { KEY_RESULTS } from '#engine/bundle/key-results.ts'
 import { readChunks } from './column-copy.server.ts'
 
 /** A million points are 8 MB a column. */
@@ -65,6 +66,40 @@ function entryOf(key: string, begin: () => Float64Array): Entry {
   entries.set(key, entry)
   evict(key)
   return entry
+}
+
+/**
+ * Every key result of some points, in storage order; null for a point that is not stored. Columns in memory are used;
+ * of the others only these points are read, not the whole column.
+ */
+export async function valuesAt(run: Run, points: ArrayLike<number>): Promise<(Float64Array | null)[]> {
+  const wanted = Array.from(points)
+  const chunkOf = (point: number) => Math.floor(point / run.chunkPoints)
+  const needed = new Set(wanted.map(chunkOf))
+  const found = wanted.map(() => new Float64Array(KEY_RESULTS.length).fill(Number.NaN))
+  const missing = new Map<string, number>()
+  KEY_RESULTS.forEach(({ column }, c) => {
+    const entry = entries.get(`${run.id} ${column}`)
+    const known = entry && [...needed].every((chunk) => entry.chunks.has(chunk))
+    if (known) for (const [k, point] of wanted.entries()) found[k][c] = entry.values[point]
+    else missing.set(column, c)
+  })
+  if (wanted.length === 0 || missing.size === 0) return found
+  const { rows } = await db.execute<{ k: number; column: string; value: number }>(sql`
+    select p.k, pc."column", pc.vals[p.place] as value
+    from unnest(
+        ${sql.param(wanted.map((_, k) => k))}::int[],
+        ${sql.param(wanted.map(chunkOf))}::int[],
+        ${sql.param(wanted.map((point) => (point % run.chunkPoints) + 1))}::int[]
+      ) as p(k, chunk, place)
+    join point_column pc on pc.planned_on = ${run.plannedOn} and pc.run_id = ${run.id} and pc.chunk = p.chunk
+      and pc."column" = any(${sql.param([...missing.keys()])}::text[])`)
+  const stored = new Set<number>()
+  for (const { k, column, value } of rows) {
+    found[k][missing.get(column) as number] = Number(value)
+    stored.add(k)
+  }
+  return found.map((values, k) => (stored.has(k) ? values : null))
 }
 
 function evict(justUsed: string): void {

@@ -5,7 +5,7 @@ import { AppError } from '#app/http/errors.ts'
 import type { LimitEffect } from '#app/modules/explore/finding.ts'
 import { keyResultValues, planOfRevision } from '#app/modules/runs/run-plan.server.ts'
 import { bestStored, getRun } from '#app/modules/runs/runs.server.ts'
-import { pointResult, type Run } from '#drizzle/schema/index.ts'
+import { pointResult, type Run, runChunk } from '#drizzle/schema/index.ts'
 import { KEY_RESULT_INDEX, KEY_RESULTS, OUTCOME_INDEX, OUTCOMES } from '#engine/bundle/key-results.ts'
 import type { Case } from '#engine/case.ts'
 import { evaluate } from '#engine/evaluate.ts'
@@ -14,7 +14,7 @@ import { COLUMNS, evaluateRange } from '#engine/sweep/evaluate-range.ts'
 import { LIMITS } from '#engine/sweep/limits.ts'
 import { pointCase, pointInputs, pointValue, type SweepPlan } from '#engine/sweep/plan.ts'
 import { ENGINE_VERSION } from '#engine/version.ts'
-import { columnOf, computedColumn, type StoredPoints, storedPoints } from './column-cache.server.ts'
+import { columnOf, computedColumn, type StoredPoints, storedPoints, valuesAt } from './column-cache.server.ts'
 import { paretoFront as frontOf } from './front.ts'
 import type {
   Aggregates,
@@ -97,14 +97,6 @@ class Points {
     }
     return matchingPoints(this.run.points, this.stored.mask, conditions)
   }
-
-  /** Key results of some points, each as an array in storage order. */
-  async results(points: ArrayLike<number>): Promise<(number | null)[][]> {
-    const columns = await Promise.all(KEY_RESULTS.map(({ id }) => this.column(id)))
-    return Array.from(points, (point) =>
-      columns.map((values) => (Number.isFinite(values[point]) ? values[point] : null)),
-    )
-  }
 }
 
 /** A variable's values as numbers: SI, or the place of a choice among the variable's values. */
@@ -129,7 +121,7 @@ export async function pageOfPoints(runId: string, query: PageQuery = {}): Promis
   const found = await points.matching(filters)
   const keys = sort === 'point' ? null : await points.column(sort)
   const page = sortedSlice(found, keys, descending, offset, limit)
-  const results = await points.results(page)
+  const results = await valuesAt(points.run, page)
   return {
     stored: points.stored.count,
     matching: found.length,
@@ -137,7 +129,7 @@ export async function pageOfPoints(runId: string, query: PageQuery = {}): Promis
     rows: Array.from(page, (point, k) => ({
       point,
       inputs: pointInputs(points.plan, point),
-      results: results[k],
+      results: Array.from(results[k] ?? [], (value) => (Number.isFinite(value) ? value : null)),
     })),
   }
 }
@@ -242,30 +234,60 @@ export async function limitEffects(runId: string): Promise<LimitEffect[]> {
   return effects
 }
 
-/** Counts and ranges over the points that pass the filters. */
+/** Counts and ranges over all stored points, or over those that pass the filters. */
 export async function aggregates(runId: string, filters?: PointFilters): Promise<Aggregates> {
-  const points = await Points.of(runId)
+  return filters === undefined
+    ? aggregatesOfChunks(runId)
+    : aggregatesOfPoints(await Points.of(runId), filters)
+}
+
+/** From what each chunk says of itself: no column is read. */
+async function aggregatesOfChunks(runId: string): Promise<Aggregates> {
+  const chunks = await db.select().from(runChunk).where(eq(runChunk.runId, runId))
+  const stored = chunks.reduce((sum, { points }) => sum + points, 0)
+  const byOutcome = new Array<number>(OUTCOMES.length).fill(0)
+  const byLimit = new Array<number>(LIMITS.length).fill(0)
+  let meetingLimits = 0
+  const ranges: Aggregates['ranges'] = {}
+  for (const chunk of chunks) {
+    chunk.outcomes.forEach((count, outcome) => {
+      byOutcome[outcome] += count
+    })
+    chunk.limitsNotMet.forEach((count, bit) => {
+      byLimit[bit] += count
+    })
+    meetingLimits += chunk.meetingLimits
+    KEY_RESULTS.forEach(({ id }, column) => {
+      const min = chunk.leastResults[column]
+      const max = chunk.greatestResults[column]
+      if (!(min <= max)) return
+      const known = ranges[id]
+      ranges[id] = known ? { min: Math.min(known.min, min), max: Math.max(known.max, max) } : { min, max }
+    })
+  }
+  return { stored, matching: stored, meetingLimits, ...tallies(byOutcome, byLimit), ranges }
+}
+
+async function aggregatesOfPoints(points: Points, filters: PointFilters): Promise<Aggregates> {
   const found = await points.matching(filters)
   const [outcome, limitsNotMet] = await Promise.all([points.column('outcome'), points.column('limitsNotMet')])
-  const byOutcome = new Int32Array(OUTCOMES.length)
-  const byMask = new Map<number, number>()
+  const byOutcome = new Array<number>(OUTCOMES.length).fill(0)
+  const byLimit = new Array<number>(LIMITS.length).fill(0)
+  let meetingLimits = 0
   for (const point of found) {
     byOutcome[outcome[point]]++
-    if (outcome[point] === 0) byMask.set(limitsNotMet[point], (byMask.get(limitsNotMet[point]) ?? 0) + 1)
+    if (outcome[point] !== 0) continue
+    if (limitsNotMet[point] === 0) meetingLimits++
+    else for (let bit = 0; bit < LIMITS.length; bit++) if (limitsNotMet[point] & (1 << bit)) byLimit[bit]++
   }
-  const limitsStop: Record<string, number> = {}
-  for (const [mask, count] of byMask)
-    LIMITS.forEach(({ id }, bit) => {
-      if (mask & (1 << bit)) limitsStop[id] = (limitsStop[id] ?? 0) + count
-    })
   const ranges: Aggregates['ranges'] = {}
   for (const { id } of KEY_RESULTS) {
     const values = await points.column(id)
     let min = Number.POSITIVE_INFINITY
     let max = Number.NEGATIVE_INFINITY
     for (const point of found) {
-      const value = values[point]
       if (outcome[point] !== 0) continue
+      const value = values[point]
       if (value < min) min = value
       if (value > max) max = value
     }
@@ -274,13 +296,21 @@ export async function aggregates(runId: string, filters?: PointFilters): Promise
   return {
     stored: points.stored.count,
     matching: found.length,
+    meetingLimits,
+    ...tallies(byOutcome, byLimit),
+    ranges,
+  }
+}
+
+function tallies(byOutcome: readonly number[], byLimit: readonly number[]) {
+  return {
     evaluated: byOutcome[0],
-    meetingLimits: byMask.get(0) ?? 0,
     outcomes: OUTCOMES.map(({ code, text }, k) => ({ code, text, count: byOutcome[k] })).filter(
       ({ count }) => count > 0,
     ),
-    limitsNotMet: limitsStop,
-    ranges,
+    limitsNotMet: Object.fromEntries(
+      LIMITS.flatMap(({ id }, bit) => (byLimit[bit] > 0 ? [[id, byLimit[bit]]] : [])),
+    ),
   }
 }
 
@@ -293,7 +323,7 @@ export async function pointSheet(runId: string, point: number): Promise<PointShe
   if (!Number.isInteger(point) || point < 0 || point >= run.points)
     throw new AppError('not-found', `The run has points 0 to ${run.points - 1}.`)
   const plan = await planOfRevision(run.revisionId)
-  const stored = await storedKeyResults(run, point)
+  const [stored] = await valuesAt(run, [point])
   const [record] = await db
     .select()
     .from(pointResult)
@@ -319,13 +349,6 @@ export async function pointSheet(runId: string, point: number): Promise<PointShe
     recorded: record !== undefined,
     differences: stored && run.engineVersion !== ENGINE_VERSION ? differences(stored, now) : [],
   }
-}
-
-async function storedKeyResults(run: Run, point: number): Promise<Float64Array | null> {
-  const { chunks, mask } = await storedPoints(run)
-  if (mask && mask[point] !== 1) return null
-  const columns = await Promise.all(KEY_RESULTS.map(({ column }) => columnOf(run, column, chunks)))
-  return Float64Array.from(columns, (values) => values[point])
 }
 
 function differences(stored: Float64Array, now: Float64Array): KeyResultDifference[] {

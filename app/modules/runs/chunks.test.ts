@@ -42,9 +42,13 @@ test('a summary counts outcomes and finds the first least objective among points
   expect(summary).toMatchObject({
     outcomes: [4, 0, 0, 0, 0, 0, 1],
     meetingLimits: 3,
+    limitsNotMet: [0, 1],
     bestPoint: 503,
     bestObjective: 20,
   })
   expect(summary.bestResults?.[KEY_RESULT_INDEX.outsideArea]).toBe(20)
+  expect(summary.leastResults[KEY_RESULT_INDEX.outsideArea]).toBe(10)
+  expect(summary.greatestResults[KEY_RESULT_INDEX.outsideArea]).toBe(30)
+  expect(summary.leastResults[KEY_RESULT_INDEX.duty]).toBeNaN()
   expect(summarise(table.slice(), 0, 0, 2)).toMatchObject({ bestPoint: null, bestResults: null })
 })

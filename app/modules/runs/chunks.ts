@@ -2,6 +2,7 @@
 
 import { KEY_RESULT_INDEX, OUTCOMES } from '#engine/bundle/key-results.ts'
 import { COLUMNS } from '#engine/sweep/evaluate-range.ts'
+import { LIMITS } from '#engine/sweep/limits.ts'
 
 /** Work of one core in a chunk: what a killed worker loses at most, per chunk it holds. */
 const CHUNK_SECONDS = 0.15
@@ -37,6 +38,11 @@ export type ChunkSummary = {
   /** Points by outcome number, without trailing zeros. */
   outcomes: number[]
   meetingLimits: number
+  /** Evaluated points by the bit of each limit not met, without trailing zeros. */
+  limitsNotMet: number[]
+  /** Range of each column over evaluated points; NaN where none has a value. */
+  leastResults: Float64Array
+  greatestResults: Float64Array
   bestPoint: number | null
   bestObjective: number | null
   bestResults: Float64Array | null
@@ -53,13 +59,19 @@ export function summarise(
   objectiveColumn: number,
 ): ChunkSummary {
   const outcomes = new Array<number>(OUTCOMES.length).fill(0)
+  const limitsNotMet = new Array<number>(LIMITS.length).fill(0)
   let meetingLimits = 0
   let best = -1
   let least = Number.POSITIVE_INFINITY
   for (let k = 0; k < count; k++) {
     const outcome = table[OUTCOME * count + k]
     outcomes[outcome]++
-    if (outcome !== 0 || table[LIMITS_NOT_MET * count + k] !== 0) continue
+    if (outcome !== 0) continue
+    const mask = table[LIMITS_NOT_MET * count + k]
+    if (mask !== 0) {
+      for (let bit = 0; bit < LIMITS.length; bit++) if (mask & (1 << bit)) limitsNotMet[bit]++
+      continue
+    }
     meetingLimits++
     const objective = table[objectiveColumn * count + k]
     if (objective < least) {
@@ -67,13 +79,39 @@ export function summarise(
       best = k
     }
   }
-  while (outcomes.length > 1 && outcomes[outcomes.length - 1] === 0) outcomes.pop()
   return {
-    outcomes,
+    outcomes: withoutTrailingZeros(outcomes),
     meetingLimits,
+    limitsNotMet: withoutTrailingZeros(limitsNotMet),
+    ...ranges(table, count),
     bestPoint: best < 0 ? null : first + best,
     bestObjective: best < 0 ? null : least,
     bestResults:
       best < 0 ? null : Float64Array.from({ length: COLUMNS }, (_, column) => table[column * count + best]),
   }
+}
+
+function ranges(table: Float64Array, count: number): Pick<ChunkSummary, 'leastResults' | 'greatestResults'> {
+  const leastResults = new Float64Array(COLUMNS).fill(Number.NaN)
+  const greatestResults = new Float64Array(COLUMNS).fill(Number.NaN)
+  for (let column = 0; column < COLUMNS; column++) {
+    let least = Number.POSITIVE_INFINITY
+    let greatest = Number.NEGATIVE_INFINITY
+    for (let k = 0; k < count; k++) {
+      if (table[OUTCOME * count + k] !== 0) continue
+      const value = table[column * count + k]
+      if (value < least) least = value
+      if (value > greatest) greatest = value
+    }
+    if (least > greatest) continue
+    leastResults[column] = least
+    greatestResults[column] = greatest
+  }
+  return { leastResults, greatestResults }
+}
+
+function withoutTrailingZeros(counts: number[]): number[] {
+  let length = counts.length
+  while (length > 0 && counts[length - 1] === 0) length--
+  return counts.slice(0, length)
 }

@@ -3,7 +3,13 @@ import { afterAll, expect, test } from 'vitest'
 import { db, pool } from '#app/db.server.ts'
 import { type ChunkJob, chunkQueue, type Lease, queue } from '#app/jobs/queue.server.ts'
 import { JobWorker } from '#app/jobs/worker.server.ts'
-import { pageOfPoints, pointSheet, refinedBest } from '#app/modules/points/points.server.ts'
+import {
+  aggregates,
+  pageOfPoints,
+  plotColumns,
+  pointSheet,
+  refinedBest,
+} from '#app/modules/points/points.server.ts'
 import { auditEntry, pointColumn, run, runChunk } from '#drizzle/schema/index.ts'
 import { KEY_RESULT_INDEX, KEY_RESULTS, OUTCOME_INDEX } from '#engine/bundle/key-results.ts'
 import { COLUMNS, evaluateRange } from '#engine/sweep/evaluate-range.ts'
@@ -152,6 +158,26 @@ test('a run goes to its end: every point once, with the numbers of the engine, a
   )
   expect(progress.best).toMatchObject({ point: best, objective: column('outsideArea')[best] })
   expect(progress.best?.results.coolantPressureDrop).toBe(column('coolantPressureDrop')[best])
+
+  // What chunks say of themselves is what their points come to.
+  const sums = await aggregates(done.id)
+  expect(sums).toEqual(await aggregates(done.id, {}))
+  expect(sums).toMatchObject({ stored: POINTS, meetingLimits: progress.meetingLimits })
+  expect(sums.limitsNotMet.coolantPressureDrop).toBeGreaterThan(0)
+
+  // A page before and after its columns are in memory.
+  const query = { sort: 'outsideArea', filters: { meetingLimits: true }, limit: 7, offset: 5 }
+  const page = await pageOfPoints(done.id, query)
+  for (const { id } of KEY_RESULTS) await pageOfPoints(done.id, { sort: id, limit: 1 })
+  expect(await pageOfPoints(done.id, query)).toEqual(page)
+  for (const row of page.rows)
+    expect(row.results).toEqual(
+      KEY_RESULTS.map(({ id }) => (Number.isNaN(column(id)[row.point]) ? null : column(id)[row.point])),
+    )
+  const plot = await plotColumns(done.id, { x: 'coolantPressureDrop', y: 'outsideArea', max: 100 })
+  expect(plot.point.length).toBeLessThanOrEqual(100)
+  expect(plot.point).toContain(best)
+  expect(plot.y).toEqual(plot.point.map((point) => column('outsideArea')[point]))
 
   const sheet = await pointSheet(done.id, best)
   expect(sheet).toMatchObject({ recorded: true, differences: [], storedEngineVersion: ENGINE_VERSION })

@@ -1,0 +1,310 @@
+// A database cluster of its own, worker processes to kill, and a line to cut: what runs have to survive.
+import { type ChildProcess, spawn } from 'node:child_process'
+import { mkdirSync, rmSync } from 'node:fs'
+import net from 'node:net'
+import { dirname, join } from 'node:path'
+import { fileURLToPath } from 'node:url'
+import pg from 'pg'
+import { db, pool } from '#app/db.server.ts'
+import { queue } from '#app/jobs/queue.server.ts'
+import { runProgress } from '#app/modules/runs/progress.server.ts'
+import { measurePointCost } from '#app/modules/runs/run-plan.server.ts'
+import { hashOfColumns } from '#app/modules/runs/store.server.ts'
+import { migrateDatabase } from '#app/start/migrate.ts'
+import { type Cluster, startCluster } from '#drizzle/local-postgres/cluster.mjs'
+import type { Run } from '#drizzle/schema/index.ts'
+import { KEY_RESULTS } from '#engine/bundle/key-results.ts'
+import { COLUMNS, evaluateRange } from '#engine/sweep/evaluate-range.ts'
+import { planSweep, type SweepPlan } from '#engine/sweep/plan.ts'
+import { parseStudy } from '#engine/sweep/study.ts'
+import { definition, ended, plantRun, storedOnce, until } from './fixtures.ts'
+
+const ROOT = fileURLToPath(new URL('../..', import.meta.url))
+const PRIVATE = join(ROOT, '.data')
+
+export type Outcome = {
+  what: string
+  times: number
+  seconds: number
+  points: number
+  state: string
+  eachPointOnce: boolean
+  progressTrue: boolean
+  hash: string | null
+  undisturbed: string
+}
+
+export const survived = (outcome: Outcome): boolean =>
+  outcome.state === 'done' &&
+  outcome.eachPointOnce &&
+  outcome.progressTrue &&
+  outcome.hash === outcome.undisturbed
+
+/** A TCP line to the database that can fall silent without either end being told. */
+class Line {
+  readonly #server: net.Server
+  #pairs: { from: net.Socket; to: net.Socket; silent: boolean }[] = []
+
+  constructor(port: () => number) {
+    this.#server = net.createServer((from) => {
+      const pair = { from, to: net.connect(port(), '127.0.0.1'), silent: false }
+      this.#pairs.push(pair)
+      const relay = (source: net.Socket, target: net.Socket) => {
+        source.on('data', (data) => {
+          if (!pair.silent) target.write(data)
+        })
+        source.on('error', () => {})
+        source.on('close', () => {
+          if (!pair.silent) target.destroy()
+        })
+      }
+      relay(pair.from, pair.to)
+      relay(pair.to, pair.from)
+    })
+  }
+
+  async open(): Promise<number> {
+    await new Promise<void>((resolve) => this.#server.listen(0, '127.0.0.1', resolve))
+    return (this.#server.address() as net.AddressInfo).port
+  }
+
+  /** Connections under way go silent; new ones work. */
+  cut(): void {
+    for (const pair of this.#pairs) pair.silent = true
+  }
+
+  close(): void {
+    for (const { from, to } of this.#pairs) {
+      from.destroy()
+      to.destroy()
+    }
+    this.#server.close()
+  }
+}
+
+export class Scene {
+  readonly #folder: string
+  readonly #log: (line: string) => void
+  #cluster: Cluster
+  readonly #workers = new Set<ChildProcess>()
+
+  private constructor(folder: string, cluster: Cluster, log: (line: string) => void) {
+    this.#folder = folder
+    this.#cluster = cluster
+    this.#log = log
+  }
+
+  /** Has to come before anything uses the application's database. */
+  static async open(log: (line: string) => void): Promise<Scene> {
+    const folder = join(PRIVATE, 'crash', String(process.pid))
+    mkdirSync(folder, { recursive: true })
+    const cluster = await startCluster(settings(folder))
+    process.env.DATABASE_URL = cluster.url
+    await migrateDatabase(cluster.url)
+    await queue()
+    return new Scene(folder, cluster, log)
+  }
+
+  async close(): Promise<void> {
+    await this.#dismiss()
+    await (await queue()).stop({ close: false, graceful: false })
+    await pool.end()
+    await this.#cluster.stop('immediate')
+    const { dataFolder } = this.#cluster.record
+    rmSync(dataFolder, { recursive: true, force: true })
+    if (dirname(dataFolder) !== this.#folder) rmSync(dirname(dataFolder), { recursive: true, force: true })
+    rmSync(this.#folder, { recursive: true, force: true })
+  }
+
+  /** SIGKILL at random moments; a new worker takes each one's place. */
+  async killWorkers(times: number, seconds: number): Promise<Outcome> {
+    return this.#disturb('worker killed (SIGKILL)', times, seconds, async (under) => {
+      for (let k = 0; k < times; k++) {
+        await pause(100 + Math.random() * ((seconds * 1000) / times))
+        if (await this.#over(under)) throw new Error(`the run ended after ${k} of ${times} kills`)
+        const worker = any(this.#workers)
+        worker.kill('SIGKILL')
+        this.#workers.delete(worker)
+        this.#log(`killed worker ${worker.pid}, kill ${k + 1}`)
+        this.#employ()
+      }
+    })
+  }
+
+  /** SIGSTOP until the lease is lost, then SIGCONT: what the worker held is stored by another meanwhile. */
+  async freezeWorker(seconds: number): Promise<Outcome> {
+    return this.#disturb('worker frozen, back after its lease', 1, seconds, async (under) => {
+      const held = await until('a worker holds chunks', async () => {
+        const { rows } = await db.execute<{ process_id: number; chunks: number[] }>(
+          `select process_id, array(select (h->>'chunk')::int from jsonb_array_elements(holding) h) as chunks
+           from worker where jsonb_array_length(holding) > 0 and seen_at > now() - interval '2 seconds'`,
+        )
+        return rows[0]
+      })
+      process.kill(held.process_id, 'SIGSTOP')
+      this.#log(`froze worker ${held.process_id}, which held chunks ${held.chunks.join(', ')}`)
+      await pause(9000)
+      process.kill(held.process_id, 'SIGCONT')
+      this.#log(`worker ${held.process_id} is back${(await this.#over(under)) ? '; the run has ended' : ''}`)
+      await pause(2000)
+    })
+  }
+
+  /** PostgreSQL stopped in immediate mode, away for a while, and started again. */
+  async restartDatabase(seconds: number): Promise<Outcome> {
+    return this.#disturb('PostgreSQL stopped (immediate) and restarted', 1, seconds, async () => {
+      await this.#cluster.stop('immediate')
+      this.#log('PostgreSQL is away')
+      await pause(2000)
+      this.#cluster = await startCluster(settings(this.#folder))
+      this.#log('PostgreSQL is back')
+    })
+  }
+
+  async refuseWrites(seconds: number): Promise<Outcome> {
+    return this.#disturb('database refuses writes for 4 s', 1, seconds, async () => {
+      await this.#readOnly(true)
+      this.#log('the database refuses writes')
+      await pause(4000)
+      await this.#readOnly(false)
+      this.#log('the database takes writes again')
+    })
+  }
+
+  /** The workers' connections fall silent in the middle; nobody closes them. */
+  async cutConnections(seconds: number): Promise<Outcome> {
+    const line = new Line(() => this.#cluster.record.port)
+    const port = await line.open()
+    const through = new URL(this.#cluster.url)
+    through.port = String(port)
+    try {
+      return await this.#disturb(
+        'connections cut half-open',
+        1,
+        seconds,
+        async () => {
+          line.cut()
+          this.#log('the workers’ connections are silent')
+        },
+        through.href,
+      )
+    } finally {
+      line.close()
+    }
+  }
+
+  /** Starts a run that takes two workers about so long, disturbs it once it is under way, and looks at what comes out. */
+  async #disturb(
+    what: string,
+    times: number,
+    seconds: number,
+    disturb: (run: Run) => Promise<void>,
+    url = this.#cluster.url,
+  ): Promise<Outcome> {
+    const { given, plan } = sized(seconds)
+    const undisturbed = await hashInOneGo(plan)
+    this.#employ(url)
+    this.#employ(url)
+    try {
+      return await this.#observe(what, times, disturb, given, undisturbed)
+    } finally {
+      await this.#dismiss()
+    }
+  }
+
+  async #observe(
+    what: string,
+    times: number,
+    disturb: (run: Run) => Promise<void>,
+    given: ReturnType<typeof definition>,
+    undisturbed: string,
+  ): Promise<Outcome> {
+    const started = Date.now()
+    const planned = await plantRun(given, CHUNK_POINTS)
+    this.#log(`${what}: run of ${planned.points} points in chunks of ${planned.chunkPoints}`)
+    await until('the run is under way', async () => (await runProgress(planned.id)).done > 0, 30_000)
+    await disturb(planned)
+    const done = await ended(planned.id, 300_000)
+    return {
+      what,
+      times,
+      seconds: (Date.now() - started) / 1000,
+      points: done.points,
+      state: done.fault ? `${done.state}: ${done.fault}` : done.state,
+      eachPointOnce: await storedOnce(done),
+      progressTrue: (await runProgress(done.id)).done === done.points,
+      hash: done.contentHash,
+      undisturbed,
+    }
+  }
+
+  async #over(of: Run): Promise<boolean> {
+    return (await runProgress(of.id)).state !== 'running'
+  }
+
+  #employ(url = this.#cluster.url): void {
+    const worker = spawn(process.execPath, ['--import', 'tsx', 'app/jobs/job-worker.ts'], {
+      cwd: ROOT,
+      env: { ...process.env, NODE_ENV: 'test', DATABASE_URL: url, WORKER_THREADS: '1' },
+      stdio: ['ignore', 'ignore', 'pipe'],
+    })
+    worker.once('exit', (code) => {
+      if (code) this.#log(`worker ${worker.pid} ended with code ${code}`)
+    })
+    worker.stderr?.on('data', (data) => this.#log(`worker ${worker.pid}: ${String(data).trimEnd()}`))
+    this.#workers.add(worker)
+    const orphaned = () => worker.kill('SIGKILL')
+    process.once('exit', orphaned)
+    worker.once('exit', () => process.off('exit', orphaned))
+  }
+
+  async #dismiss(): Promise<void> {
+    for (const worker of this.#workers) {
+      const gone = new Promise((resolve) => worker.once('exit', resolve))
+      if (worker.exitCode === null && worker.signalCode === null) {
+        worker.kill('SIGKILL')
+        await gone
+      }
+    }
+    this.#workers.clear()
+  }
+
+  async #readOnly(on: boolean): Promise<void> {
+    const admin = new pg.Client({ connectionString: this.#cluster.url })
+    await admin.connect()
+    await admin.query('set default_transaction_read_only = off')
+    await admin.query(`alter system set default_transaction_read_only = ${on ? 'on' : 'off'}`)
+    await admin.query('select pg_reload_conf()')
+    await admin.end()
+  }
+}
+
+const settings = (folder: string) => ({ folder, packages: join(PRIVATE, 'postgresql'), durable: false })
+const pause = (ms: number) => new Promise((resolve) => setTimeout(resolve, ms))
+const any = <T>(set: Set<T>): T => [...set][Math.floor(Math.random() * set.size)]
+
+/** Small, so that there are many moments between two chunks. */
+const CHUNK_POINTS = 60
+const ROWS = [8, 10, 12, 14]
+const INLETS = 25
+
+/** A study that takes two threads about so long, whatever the engine's speed. */
+function sized(seconds: number): { given: ReturnType<typeof definition>; plan: SweepPlan } {
+  const planned = (velocities: number) => {
+    const given = definition({ rows: ROWS, inlets: INLETS, velocities })
+    const parsed = parseStudy(given)
+    if (!parsed.ok) throw new Error(JSON.stringify(parsed.faults))
+    return { given, plan: planSweep(parsed.study) }
+  }
+  const points = (2 * seconds) / measurePointCost(planned(40).plan)
+  return planned(Math.max(10, Math.min(9000, Math.round(points / ROWS.length / INLETS))))
+}
+
+/** The content hash of the same points evaluated in one go, with no database in between. */
+async function hashInOneGo(plan: SweepPlan): Promise<string> {
+  const table = new Float64Array(plan.points * COLUMNS)
+  evaluateRange(plan, 0, plan.points, table)
+  return hashOfColumns(
+    KEY_RESULTS.map((_, c) => () => table.subarray(c * plan.points, (c + 1) * plan.points)),
+  )
+}
