@@ -33,6 +33,11 @@ export function Entries({
             <th scope="row">
               {entry.label}
               {entry.from === 'assumption' ? ' (assumption)' : ''}
+              {from && entry.from ? (
+                <span className="from-under">
+                  <Formula text={entry.from} />
+                </span>
+              ) : null}
             </th>
             <td className="symbol">
               <SymbolText text={entry.symbol ?? ''} />
