@@ -24,23 +24,58 @@ export async function readChunks(
   chunks: readonly number[] | null,
   values: Float64Array,
 ): Promise<void> {
-  // COPY takes no parameters, so what goes into its text is checked here.
   if (!KNOWN_COLUMNS.has(column)) throw new RangeError(`no key result is stored as ${column}`)
-  if (!UUID.test(run.id) || !DATE.test(run.plannedOn)) throw new RangeError('not a run')
   if (chunks && !chunks.every(Number.isInteger)) throw new RangeError('not a list of chunks')
+  const which = chunks ? `and chunk = any('{${chunks.join(',')}}')` : ''
+  await copy(run, 'chunk', `"column" = '${column}' ${which}`, (chunk, array) =>
+    decodeFloat8Array(array, values, chunk * run.chunkPoints),
+  )
+}
+
+/** Reads all key results of chunks that follow each other, column by column as `evaluateRange` writes them. */
+export async function readTable(
+  run: Stored,
+  fromChunk: number,
+  toChunk: number,
+  first: number,
+  count: number,
+): Promise<Float64Array> {
+  if (![fromChunk, toChunk].every(Number.isInteger)) throw new RangeError('not a range of chunks')
+  const table = new Float64Array(KEY_RESULTS.length * count).fill(Number.NaN)
+  const columns = KEY_RESULTS.map(({ column }) => `'${column}'`).join(',')
+  // Which column and which chunk an array is of, in one number.
+  const place = `(array_position(array[${columns}], "column") - 1) * ${CHUNKS_MAX} + chunk`
+  await copy(run, place, `chunk between ${fromChunk} and ${toChunk}`, (at, array) => {
+    const column = Math.floor(at / CHUNKS_MAX)
+    decodeFloat8Array(array, table, column * count + (at % CHUNKS_MAX) * run.chunkPoints - first)
+  })
+  return table
+}
+
+/** No run has as many chunks. */
+const CHUNKS_MAX = 10_000_000
+
+/** Streams arrays of a run out of the database, each with the number that `place` makes of its row. */
+async function copy(
+  run: Stored,
+  place: string,
+  which: string,
+  each: (place: number, array: DataView) => void,
+): Promise<void> {
+  // COPY takes no parameters: whoever calls checks what goes into its text.
+  if (!UUID.test(run.id) || !DATE.test(run.plannedOn)) throw new RangeError('not a run')
   const client = await pool.connect()
   let broken: Error | undefined
   try {
     const stream = client.query(
       copyTo(
-        `copy (select chunk, vals from point_column
-          where run_id = '${run.id}' and planned_on = '${run.plannedOn}' and "column" = '${column}'
-          ${chunks ? `and chunk = any('{${chunks.join(',')}}')` : ''}) to stdout (format binary)`,
+        `copy (select (${place})::int, vals from point_column
+          where run_id = '${run.id}' and planned_on = '${run.plannedOn}' and ${which}) to stdout (format binary)`,
       ),
     )
     const parts: Buffer[] = []
     for await (const part of stream) parts.push(part as Buffer)
-    decode(Buffer.concat(parts), (chunk, row) => decodeFloat8Array(row, values, chunk * run.chunkPoints))
+    decode(Buffer.concat(parts), each)
   } catch (error) {
     broken = error as Error
     throw error
@@ -52,14 +87,14 @@ export async function readChunks(
 const SIGNATURE_BYTES = 11
 
 /** Walks the rows (int4, float8[]) of PostgreSQL's binary COPY format. */
-function decode(bytes: Buffer, each: (chunk: number, array: DataView) => void): void {
+function decode(bytes: Buffer, each: (place: number, array: DataView) => void): void {
   const view = new DataView(bytes.buffer, bytes.byteOffset, bytes.byteLength)
   let at = SIGNATURE_BYTES + 4
   at += 4 + view.getInt32(at)
   while (view.getInt16(at) !== -1) {
-    const chunk = view.getInt32(at + 6)
+    const place = view.getInt32(at + 6)
     const length = view.getInt32(at + 10)
-    each(chunk, new DataView(bytes.buffer, bytes.byteOffset + at + 14, length))
+    each(place, new DataView(bytes.buffer, bytes.byteOffset + at + 14, length))
     at += 14 + length
   }
 }
