@@ -1,6 +1,7 @@
 // The Define form: the base case, what is varied, limits; with the live margin beside it.
-import { type FormEvent, useCallback, useMemo, useRef, useState } from 'react'
+import { type FormEvent, useCallback, useEffect, useMemo, useRef, useState } from 'react'
 import { Form } from 'react-router'
+import './define.css'
 import { BundleDrawing } from '#app/components/bundle-drawing/bundle-drawing.tsx'
 import { bundleGeometry } from '#app/components/bundle-drawing/layout.ts'
 import { Button, StatusButton } from '#app/components/ui/button.tsx'
@@ -104,6 +105,7 @@ export function DefineForm({
       <Form method="post" ref={form} onSubmit={submit} noValidate className="contents">
         <input type="hidden" name="version" value={save.version} />
         <input type="hidden" name="definition" value={JSON.stringify(current)} disabled={!mayEdit} />
+        <Scripted />
         <input type="hidden" name="sweep.order" value={fields['sweep.order'] ?? ''} />
         <input type="hidden" name="rest" value={fields.rest ?? ''} />
         <MarginPage
@@ -189,6 +191,13 @@ export function DefineForm({
       </Form>
     </FormContext>
   )
+}
+
+/** Says that `definition` is this page's own reading; without scripts the fields speak for themselves. */
+function Scripted() {
+  const [ready, setReady] = useState(false)
+  useEffect(() => setReady(true), [])
+  return ready ? <input type="hidden" name="scripted" value="yes" /> : null
 }
 
 /** What stands over the form: never more than is known. */
