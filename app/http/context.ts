@@ -30,6 +30,6 @@ export const projectContext = createContext<ProjectScope>()
 /** The content security policy's nonce for this response; scripts that carry it run. */
 export const nonceContext = createContext<string>()
 /** The refusal or defect that ended a resource route, so that its answer can say so. */
-export const failureContext = createContext<unknown>(undefined)
+export const failureContext = createContext<unknown>(null)
 /** Where the request came from, for the audit trail. */
 export const addressContext = createContext<string>('')
