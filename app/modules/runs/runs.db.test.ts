@@ -16,6 +16,7 @@ import { COLUMNS, evaluateRange } from '#engine/sweep/evaluate-range.ts'
 import { ENGINE_VERSION } from '#engine/version.ts'
 import { acting, definition, ended, plantRun, storedOnce, until } from '#tests/crash/fixtures.ts'
 import { chunkRange } from './chunks.ts'
+import { drainWorker, listOpenRuns, listWorkers } from './operations.server.ts'
 import { runProgress } from './progress.server.ts'
 import { planOfRevision } from './run-plan.server.ts'
 import {
@@ -235,6 +236,31 @@ test('a failed run says why, and an administrator’s retry finishes it', async 
   await retryRun(planned.id, acting)
   employ()
   expect((await ended(planned.id)).state).toBe('done')
+})
+
+test('an administrator sees what runs where, and lets a worker end', async () => {
+  const self = employ()
+  const waiting = await plantRun(definition({ velocities: 200, inlets: 200 }), 100)
+  await pauseRun(waiting.id, acting)
+  const mine = await until('the worker is listed', async () =>
+    (await listWorkers()).find(({ id, alive }) => id === self.id && alive),
+  )
+  expect(mine).toMatchObject({
+    threads: 2,
+    engineVersion: ENGINE_VERSION,
+    draining: false,
+    processId: process.pid,
+  })
+  expect((await listOpenRuns()).find(({ id }) => id === waiting.id)).toMatchObject({
+    paused: true,
+    waiting: 0,
+  })
+  await drainWorker(self.id, acting)
+  await work
+  expect((await listWorkers()).some(({ id }) => id === self.id)).toBe(false)
+  await resumeRun(waiting.id, acting)
+  expect(await runProgress(waiting.id)).toMatchObject({ paused: false, waitingForWorker: true })
+  await expect(drainWorker(self.id, acting)).rejects.toThrow(/no such worker/)
 })
 
 type Taken = { lease: Lease; runId: string; chunk: number }
