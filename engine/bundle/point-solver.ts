@@ -19,8 +19,9 @@ import { findMaterial, type Material } from '#engine/materials.ts'
 import type { Result } from '#engine/result.ts'
 import { describe } from './describe.ts'
 import { KEY_RESULT_INDEX, OUTCOME_INDEX } from './key-results.ts'
-import { BundleMarch, DROP, FILM, INUNDATION, SHEAR, TUBE_SIDE } from './march.ts'
+import { BundleMarch } from './march.ts'
 import { notesMask } from './notes-mask.ts'
+import { DROP, FILM, INUNDATION, SHEAR, TUBE_SIDE } from './point-state.ts'
 
 /** A path into the case that may be set on a loaded point. */
 export type SweepPath = string

@@ -1,0 +1,796 @@
+// The march through the rows: geometry of a point, one sweep from top to bottom, and what a sweep carries to the next.
+//
+// Each sweep starts from what the last one left (film properties, row condensate, coolant properties, share of the
+// coolant's rise) and takes one Newton step or more on every wall, so that the wall and all that lags settle together.
+// Nothing is allocated per point. What has stopped moving is not computed again: the thresholds below lie two orders
+// under the closeness the balances are brought to.
+import {
+  chenTubeFactor,
+  FILM_SUBCOOLING,
+  filmDrive,
+  NUSSELT_TUBE_CONSTANT,
+  nusseltTubeFlux,
+  PROPERTY_TEMPERATURE_WEIGHT,
+  ROHSENOW_COEFFICIENT,
+} from '#engine/correlations/film.ts'
+import {
+  bundleHeight,
+  circularRowTubes,
+  isStaggered,
+  minimumAreaFraction,
+  rectangularWidth,
+  rowPitchFactor,
+  transversePitchFactor,
+  voidFraction,
+  wallResistance,
+} from '#engine/correlations/geometry.ts'
+import {
+  chenRowLocal,
+  columnSheetToSheet,
+  columnToColumnSheet,
+  condensateFlowExponent,
+  drainageModeFlux,
+  eissenbergRowLocal,
+  galileo,
+  inundatedFlux,
+  kernRowLocal,
+  nusseltRowLocal,
+  tubesInVerticalLine,
+} from '#engine/correlations/inundation.ts'
+import {
+  butterworthFlux,
+  fujiiUeharaKurataFlux,
+  roseFlux,
+  shekriladzeGomelauriFlux,
+  suctionGroupPerKelvin,
+} from '#engine/correlations/shear.ts'
+import {
+  dittusBoelter,
+  gnielinski,
+  siederTate,
+  wallPrandtlFactor,
+  wallViscosityFactor,
+} from '#engine/correlations/tube-side.ts'
+import {
+  gaddisEndLoss,
+  gaddisInlineRow,
+  gaddisLaminar,
+  gaddisStaggeredRow,
+  gaddisTurbulent,
+  ishihara,
+  jakob,
+  rowPressureDrop,
+  zukauskas,
+} from '#engine/correlations/vapour-drop.ts'
+import {
+  COOLANT_CP,
+  COOLANT_K,
+  COOLANT_LENGTH,
+  COOLANT_MU,
+  COOLANT_RHO,
+  type CoolantModel,
+  CP_L,
+  CP_V,
+  fillCoolant,
+  fillFilm,
+  fillVapour,
+  H_FG,
+  K_L,
+  MU_L,
+  MU_V,
+  outsideRange,
+  P,
+  RHO_L,
+  RHO_V,
+  SATURATION_LENGTH,
+  SIGMA,
+  saturationTemperature,
+} from '#engine/fluids/index.ts'
+import { OUTCOME_INDEX } from './key-results.ts'
+import { MAX_PASSES, MAX_ROWS, PointState } from './point-state.ts'
+
+const OUTCOME = OUTCOME_INDEX as Readonly<Record<string, number>>
+
+/** Vapour pressure is held above this share of the inlet's inside trials. */
+const PRESSURE_FLOOR = 0.2
+/** Film and coolant properties are taken again when their temperature has moved by more [K]. */
+const SAME_TEMPERATURE = 1e-8
+/** Saturation temperature is taken again when the pressure has moved by more, relative. */
+const SAME_PRESSURE = 1e-12
+/** A row's pressure loss is taken again when its flows have moved by more, relative. */
+const SAME_FLOW = 1e-10
+/** A wall's Newton steps stop below this share of the driving difference; the sweeps take it further. */
+const STEP = 1e-4
+
+// Laws that have a place of their own in the inner loop.
+const CONDENSATE_FLOW = 0
+const DRAINAGE_MODE = 1
+const NO_INUNDATION = 6
+const BUTTERWORTH = 0
+const SHEKRILADZE = 1
+const ROSE = 2
+const NO_SHEAR = 4
+const NO_DROP = 3
+
+export class RowMarch {
+  readonly s = new PointState()
+  film = 0
+  plainLatent = false
+  weight: number = PROPERTY_TEMPERATURE_WEIGHT.oneThird
+  inundation = CONDENSATE_FLOW
+  shear = BUTTERWORTH
+  drop = 0
+  tubeSide = 0
+  colebrookFriction = false
+  twoPhase = true
+
+  // --- what does not change within a point
+  staggered = true
+  tubes = 0
+  width = 0
+  height = 0
+  insideDiameter = 0
+  fixedResistance = 0
+  boreArea = 0
+  exponent = 0
+  private eps = 0
+  private fmin = 0
+  private a = 0
+  private b = 0
+  private lossLaminar = 0
+  private lossTurbulent = 0
+  private lossEnd = 0
+  inletPressure = Number.NaN
+  Ts = 0
+
+  // --- rows
+  readonly rowTubes = new Float64Array(MAX_ROWS)
+  readonly rowPass = new Int32Array(MAX_ROWS)
+  readonly rowPressure = new Float64Array(MAX_ROWS)
+  readonly rowTs = new Float64Array(MAX_ROWS)
+  readonly rowLatent = new Float64Array(MAX_ROWS)
+  readonly rowVapourDensity = new Float64Array(MAX_ROWS)
+  readonly rowVapourViscosity = new Float64Array(MAX_ROWS)
+  readonly rowX = new Float64Array(MAX_ROWS)
+  readonly rowFlux = new Float64Array(MAX_ROWS)
+  readonly rowCondensate = new Float64Array(MAX_ROWS)
+  readonly rowArriving = new Float64Array(MAX_ROWS)
+  readonly rowCoolant = new Float64Array(MAX_ROWS)
+  readonly rowVelocity = new Float64Array(MAX_ROWS)
+  /** Film properties of each row and the temperature they were taken at. */
+  readonly rowFilmTemperature = new Float64Array(MAX_ROWS)
+  readonly rowDensity = new Float64Array(MAX_ROWS)
+  readonly rowSpecificHeat = new Float64Array(MAX_ROWS)
+  readonly rowViscosity = new Float64Array(MAX_ROWS)
+  readonly rowConductivity = new Float64Array(MAX_ROWS)
+  readonly rowTension = new Float64Array(MAX_ROWS)
+  private readonly rowColumnLine = new Float64Array(MAX_ROWS)
+  private readonly rowSheetLine = new Float64Array(MAX_ROWS)
+  private readonly rowLoss = new Float64Array(MAX_ROWS)
+  private readonly rowLossFlow = new Float64Array(MAX_ROWS)
+  private readonly rowLossLiquid = new Float64Array(MAX_ROWS)
+  /** Where along the row's coolant rise the wall is solved: share κ of the rise below the inlet difference. */
+  private readonly rowShare = new Float64Array(MAX_ROWS)
+
+  // --- passes, 0 where the coolant enters
+  readonly passRows = new Int32Array(MAX_PASSES)
+  readonly passTubes = new Float64Array(MAX_PASSES)
+  readonly passIn = new Float64Array(MAX_PASSES)
+  readonly passOut = new Float64Array(MAX_PASSES)
+  readonly passHeat = new Float64Array(MAX_PASSES)
+  readonly passVelocity = new Float64Array(MAX_PASSES)
+  readonly passReynolds = new Float64Array(MAX_PASSES)
+  readonly passCoefficient = new Float64Array(MAX_PASSES)
+  readonly passDensity = new Float64Array(MAX_PASSES)
+  readonly passSpecificHeat = new Float64Array(MAX_PASSES)
+  private readonly passViscosity = new Float64Array(MAX_PASSES)
+  private readonly passConductivity = new Float64Array(MAX_PASSES)
+  private readonly passWallFactor = new Float64Array(MAX_PASSES)
+  private readonly passWall = new Float64Array(MAX_PASSES)
+  private readonly passMean = new Float64Array(MAX_PASSES)
+  private readonly passWallAt = new Float64Array(MAX_PASSES)
+  private readonly passMeanAt = new Float64Array(MAX_PASSES)
+
+  protected readonly inlet = new Float64Array(SATURATION_LENGTH)
+  private readonly vapour = new Float64Array(SATURATION_LENGTH)
+  private readonly liquid = new Float64Array(SATURATION_LENGTH)
+  protected readonly water = new Float64Array(COOLANT_LENGTH)
+
+  // --- what the last sweep found
+  duty = 0
+  condensate = 0
+  vapourDrop = 0
+  lowestWall = 0
+  clamped = false
+  /** Largest relative change of a row's flux against the sweep before. */
+  protected moved = 0
+
+  // --- what the sweeps are made for
+  inletVapour = 0
+  length = 0
+  flow = 0
+  private first = true
+
+  /** Geometry and inlet state; the outcome that ends the point here, or 0. */
+  prepare(): number {
+    const { s } = this
+    const { layout, pitchRatio, rows, passes } = s
+    const Do = s.outsideDiameter
+    const Di = Do - 2 * s.wallThickness
+    const cooled = s.coolant !== null
+    if (cooled && !(Di > 0)) return OUTCOME.inputInvalid
+    if (passes > rows || !(rows >= 1) || !(passes >= 1)) return OUTCOME.inputInvalid
+    if (!s.fluid.fixed) {
+      if (Number.isNaN(s.saturationTemperature))
+        s.saturationTemperature = saturationTemperature(s.fluid, s.saturationPressure)
+      if (outsideRange(s.fluid, s.saturationTemperature)) return OUTCOME.saturationOutsideTable
+    }
+    this.Ts = s.saturationTemperature
+    fillVapour(s.fluid, this.Ts, this.inlet)
+    if (s.fluid.fixed && Number.isNaN(this.inlet[RHO_V])) this.inlet[RHO_V] = 0
+    this.inletPressure = this.inlet[P]
+    if (cooled) {
+      const c = s.coolant as CoolantModel
+      if (outsideRange(c, s.inletTemperature) || s.inletTemperature <= c.freezingTemperature)
+        return OUTCOME.coolantOutsideRange
+      if (s.inletTemperature >= this.Ts) return OUTCOME.coolantTooWarm
+    }
+    this.insideDiameter = Di
+    this.boreArea = (Math.PI / 4) * Di * Di
+    this.staggered = isStaggered(layout)
+    this.eps = voidFraction(layout, pitchRatio)
+    this.fmin = minimumAreaFraction(layout, pitchRatio)
+    this.exponent = condensateFlowExponent(this.staggered)
+    this.fixedResistance = cooled
+      ? s.outsideFouling + wallResistance(Do, Di, s.conductivity) + (Do / Di) * s.insideFouling
+      : s.outsideFouling
+    const tubesPerRow = Number.isNaN(s.tubesPerRow) ? this.chosenTubesPerRow() : s.tubesPerRow
+    if (!s.circular && !(tubesPerRow >= 1)) return OUTCOME.inputInvalid
+    const pitch = pitchRatio * Do
+    this.height = bundleHeight(layout, pitch, rows, Do)
+    this.tubes = 0
+    for (let r = 0; r < rows; r++) {
+      const n = s.circular ? circularRowTubes(layout, rows, r + 1) : tubesPerRow
+      this.rowTubes[r] = n
+      this.tubes += n
+    }
+    this.width = s.circular ? this.height : rectangularWidth(layout, pitch, tubesPerRow)
+    for (let j = 0; j < passes; j++) {
+      const from = Math.floor((j * rows) / passes)
+      const to = Math.floor(((j + 1) * rows) / passes)
+      const pass = s.entryTop ? j : passes - 1 - j
+      let n = 0
+      for (let r = from; r < to; r++) {
+        this.rowPass[r] = pass
+        n += this.rowTubes[r]
+      }
+      this.passRows[pass] = to - from
+      this.passTubes[pass] = n
+    }
+    this.a = transversePitchFactor(layout) * pitchRatio
+    this.b = rowPitchFactor(layout) * pitchRatio
+    if (this.drop === 0) {
+      if (!(this.a > 0.85) || !(4 * this.a * this.b > Math.PI) || (!this.staggered && !(this.b > 0.94)))
+        return OUTCOME.inputInvalid
+      this.lossLaminar = gaddisLaminar(this.a, this.b, this.staggered)
+      this.lossTurbulent = gaddisTurbulent(this.a, this.b, this.staggered)
+      this.lossEnd = gaddisEndLoss(this.a, this.b, this.staggered, rows)
+    }
+    return 0
+  }
+
+  /** Width that the vapour passes through: a round bundle is taken at its mean chord. */
+  flowWidth(): number {
+    const { s } = this
+    return s.circular
+      ? (this.tubes / s.rows) * transversePitchFactor(s.layout) * s.pitchRatio * s.outsideDiameter
+      : this.width
+  }
+
+  /** Sum of the narrowest gaps of a row, m. */
+  get throatWidth(): number {
+    return this.flowWidth() * this.fmin
+  }
+
+  /** Transverse pitch over diameter. */
+  get transverseRatio(): number {
+    return this.a
+  }
+
+  /** Tubes per row that bring the given velocity with the given flow or outlet temperature. */
+  private chosenTubesPerRow(): number {
+    const { s } = this
+    if (s.coolant === null || Number.isNaN(s.velocity)) return Number.NaN
+    fillCoolant(s.coolant, s.inletTemperature, this.water)
+    const density = this.water[COOLANT_RHO]
+    let flow = s.massFlow
+    if (Number.isNaN(flow)) {
+      fillCoolant(s.coolant, 0.5 * (s.inletTemperature + s.outletTemperature), this.water)
+      flow = s.duty / (this.water[COOLANT_CP] * (s.outletTemperature - s.inletTemperature))
+    }
+    const perRow = (flow * s.passes) / (density * s.velocity * this.boreArea * s.rows)
+    return Math.max(1, Math.round(perRow))
+  }
+
+  /** Guesses a point starts from; the first sweep takes each row's wall from the row above. */
+  protected start(cooled: boolean): void {
+    const { s } = this
+    this.first = true
+    this.rowX[0] = cooled ? 0.35 * (this.Ts - s.inletTemperature) : s.wallSubcooling
+    for (let r = 0; r < s.rows; r++) {
+      this.rowFlux[r] = 0
+      this.rowShare[r] = 0.5
+      this.rowTs[r] = this.Ts
+      this.rowPressure[r] = this.inletPressure
+      this.rowLatent[r] = this.inlet[H_FG]
+      this.rowVapourDensity[r] = this.inlet[RHO_V]
+      this.rowVapourViscosity[r] = this.inlet[MU_V]
+      this.rowFilmTemperature[r] = Number.NaN
+      this.rowLossFlow[r] = Number.NaN
+    }
+    for (let j = 0; j < s.passes; j++) {
+      this.passIn[j] = s.inletTemperature
+      this.passMean[j] = s.inletTemperature
+      this.passWall[j] = s.inletTemperature
+      this.passMeanAt[j] = Number.NaN
+      this.passHeat[j] = 0
+    }
+  }
+
+  /** Coolant properties and inside coefficient of each pass at its mean temperature of the last sweep. */
+  protected coolantSide(): void {
+    const { s, water } = this
+    const coolant = s.coolant as CoolantModel
+    const Di = this.insideDiameter
+    const perLength = Di / this.length
+    for (let j = 0; j < s.passes; j++) {
+      const mean = this.passMean[j]
+      const wall = this.passWall[j]
+      if (
+        !(
+          Math.abs(mean - this.passMeanAt[j]) < SAME_TEMPERATURE &&
+          Math.abs(wall - this.passWallAt[j]) < SAME_TEMPERATURE
+        )
+      ) {
+        this.passMeanAt[j] = mean
+        this.passWallAt[j] = wall
+        fillCoolant(coolant, wall, water)
+        const muWall = water[COOLANT_MU]
+        const prWall = (muWall * water[COOLANT_CP]) / water[COOLANT_K]
+        fillCoolant(coolant, mean, water)
+        const mu = water[COOLANT_MU]
+        this.passDensity[j] = water[COOLANT_RHO]
+        this.passSpecificHeat[j] = water[COOLANT_CP]
+        this.passViscosity[j] = mu
+        this.passConductivity[j] = water[COOLANT_K]
+        const pr = (mu * water[COOLANT_CP]) / water[COOLANT_K]
+        this.passWallFactor[j] =
+          this.tubeSide === 0
+            ? wallPrandtlFactor(pr, prWall)
+            : this.tubeSide === 1
+              ? wallViscosityFactor(mu, muWall)
+              : 1
+      }
+      const rho = this.passDensity[j]
+      const mu = this.passViscosity[j]
+      const k = this.passConductivity[j]
+      const pr = (mu * this.passSpecificHeat[j]) / k
+      const v = this.flow / (rho * this.boreArea * this.passTubes[j])
+      const re = (rho * v * Di) / mu
+      const factor = this.passWallFactor[j]
+      const nusselt =
+        this.tubeSide === 0
+          ? gnielinski(re, pr, perLength, factor)
+          : this.tubeSide === 1
+            ? siederTate(re, pr, perLength, factor)
+            : dittusBoelter(re, pr, perLength)
+      this.passVelocity[j] = v
+      this.passReynolds[j] = re
+      this.passCoefficient[j] = (nusselt * k) / Di
+    }
+  }
+
+  /** All rows once, top to bottom, from the state the last sweep left. */
+  protected sweep(cooled: boolean): void {
+    const { s } = this
+    const { rows, fluid } = s
+    const Do = s.outsideDiameter
+    const L = this.length
+    const perMetre = Math.PI * Do
+    const flowArea = L * this.flowWidth()
+    const { weight, eps, exponent, first } = this
+    const dropping = this.drop !== NO_DROP && this.inlet[RHO_V] > 0
+    const sheared = this.shear !== NO_SHEAR && this.inlet[RHO_V] > 0
+    // The common laws are written out below; the others go through `singleFlux` and `rowLaw`.
+    const written = this.film === 0 && (this.shear <= SHEKRILADZE || this.shear === NO_SHEAR)
+    const flowLaw = this.inundation === CONDENSATE_FLOW
+    const shearConstant = this.shear === BUTTERWORTH ? 0.416 : 0.64
+    const gravityConstant = this.shear === BUTTERWORTH ? 9.47 : 1.69
+    let remaining = this.inletVapour
+    let pressure = this.inletPressure
+    let gathered = 0
+    let duty = 0
+    let lowest = Number.POSITIVE_INFINITY
+    let most = 0
+    this.clamped = false
+    if (cooled) for (let j = 0; j < s.passes; j++) this.passHeat[j] = 0
+
+    for (let r = 0; r < rows; r++) {
+      if (dropping && !fluid.fixed && Math.abs(pressure - this.rowPressure[r]) > SAME_PRESSURE * pressure)
+        this.takeVapour(r, pressure)
+      const Ts = this.rowTs[r]
+      const rhoV = this.rowVapourDensity[r]
+      const hfg = this.rowLatent[r]
+      const tubes = this.rowTubes[r]
+      if (first && r > 0) {
+        this.rowX[r] = this.rowX[r - 1]
+        this.rowCondensate[r] = this.rowCondensate[r - 1]
+      } else if (first) this.rowCondensate[r] = this.inletVapour / rows
+      const middle = Math.max(0, remaining - 0.5 * this.rowCondensate[r])
+      const velocity = rhoV > 0 ? middle / (rhoV * flowArea * eps) : 0
+      let x = this.rowX[r]
+      const reference = Ts - x + weight * x
+      if (!(Math.abs(reference - this.rowFilmTemperature[r]) < SAME_TEMPERATURE)) this.takeFilm(r, reference)
+      const rho = this.rowDensity[r]
+      const mu = this.rowViscosity[r]
+      const k = this.rowConductivity[r]
+      const cp = this.plainLatent ? 0 : this.rowSpecificHeat[r]
+      const onTube = gathered / (tubes * L)
+      let dh = hfg + FILM_SUBCOOLING * cp * x
+      const arriving = (onTube * dh) / perMetre
+      const film = sheared ? velocity : 0
+      let q = 0
+      if (cooled) {
+        const j = this.rowPass[r]
+        const inner = this.fixedResistance + Do / (this.insideDiameter * this.passCoefficient[j])
+        const T = Ts - this.passIn[j]
+        const g = (perMetre * L * this.passTubes[j]) / (this.flow * this.passSpecificHeat[j])
+        if (T > 0) {
+          const U = 1 / (inner + this.rowShare[r] * g)
+          let low = 0
+          let high = T
+          if (!(x < T && x > 0)) x = 0.5 * T
+          let e = 0.75
+          if (written && (flowLaw || this.inundation === NO_INUNDATION)) {
+            const latent = hfg + ROHSENOW_COEFFICIENT * cp * x
+            const drive = filmDrive(Do, rho, rhoV, mu, k, latent)
+            const kD = k / Do
+            const re = (rho * film * Do) / mu
+            const flooded = flowLaw && arriving > 0
+            for (let i = 0; i < 60; i++) {
+              // Flux of the clean tube and its exponent e in x.
+              let q1: number
+              if (re > 0) {
+                const y = re * x
+                const gravity = gravityConstant * drive * x
+                const root = Math.sqrt(y * y + gravity)
+                q1 = shearConstant * kD * Math.sqrt(x * (y + root))
+                e = 0.5 + 0.25 * ((2 * y * (root + y) + gravity) / (root * (y + root)))
+              } else {
+                q1 = NUSSELT_TUBE_CONSTANT * kD * Math.sqrt(Math.sqrt(drive * x * x * x))
+                e = 0.75
+              }
+              const line = U * (T - x)
+              // q1 (q/(q + a))^s − q with q on the coolant's line: rises with x.
+              let f = q1 - line
+              let slope = (e * q1) / x + U
+              if (flooded) {
+                const total = line + arriving
+                const row = q1 * Math.exp(exponent * Math.log(line / total))
+                f = row - line
+                slope = row * (e / x - (exponent * arriving * U) / (line * total)) + U
+              }
+              if (f > 0) high = x
+              else low = x
+              // Closeness is tested before the bracket: a step that has converged must not be bisected away.
+              const step = f / slope
+              const next = x - step
+              if (Math.abs(step) <= STEP * T && next > 0 && next < T) {
+                x = next
+                break
+              }
+              x = next > low && next < high ? next : 0.5 * (low + high)
+            }
+            if (flooded) {
+              q = U * (T - x)
+              e /= 1 - (exponent * arriving) / (q + arriving)
+            }
+          } else {
+            for (let i = 0; i < 60; i++) {
+              dh = hfg + FILM_SUBCOOLING * cp * x
+              const q1 = this.singleFlux(x, r, film)
+              q = this.rowLaw(q1, arriving, r, x, dh)
+              const beside = 1.000001 * x
+              e = Math.log(this.rowLaw(this.singleFlux(beside, r, film), arriving, r, beside, dh) / q) / 1e-6
+              const f = q - U * (T - x)
+              if (f > 0) high = x
+              else low = x
+              const step = f / ((e * q) / x + U)
+              const next = x - step
+              if (Math.abs(step) <= STEP * T && next > 0 && next < T) {
+                x = next
+                break
+              }
+              x = next > low && next < high ? next : 0.5 * (low + high)
+            }
+          }
+          q = U * (T - x)
+          dh = hfg + FILM_SUBCOOLING * cp * x
+          const star = inner * q + x
+          this.rowShare[r] = riseShare(T, q * g, star, x / star, e)
+          this.passHeat[j] += q * perMetre * L * tubes
+          this.rowCoolant[r] = Ts - star
+        } else {
+          q = 0
+          x = 0
+          this.rowCoolant[r] = this.passIn[j]
+        }
+      } else {
+        x = s.wallSubcooling
+        dh = hfg + FILM_SUBCOOLING * cp * x
+        q = this.rowLaw(this.singleFlux(x, r, film), arriving, r, x, dh)
+      }
+      const heat = q * perMetre * L * tubes
+      const made = heat / dh
+      const before = this.rowFlux[r]
+      const change = Math.abs(q - before)
+      if (change > most * q) most = q > 0 ? change / q : 1
+      this.rowX[r] = x
+      this.rowFlux[r] = q
+      this.rowArriving[r] = onTube
+      this.rowVelocity[r] = velocity
+      this.rowCondensate[r] = made
+      duty += heat
+      const wall = Ts - x
+      if (wall < lowest) lowest = wall
+      if (dropping) {
+        const drained = gathered + 0.5 * made
+        if (
+          !(
+            Math.abs(middle - this.rowLossFlow[r]) <= SAME_FLOW * middle &&
+            Math.abs(drained - this.rowLossLiquid[r]) <= SAME_FLOW * drained
+          )
+        )
+          this.takeLoss(r, middle, drained, flowArea)
+        pressure -= this.rowLoss[r]
+        if (pressure < PRESSURE_FLOOR * this.inletPressure) {
+          pressure = PRESSURE_FLOOR * this.inletPressure
+          this.clamped = true
+        }
+      }
+      gathered += made
+      remaining = Math.max(0, remaining - made)
+    }
+    this.first = false
+    this.duty = duty
+    this.condensate = gathered
+    this.vapourDrop = dropping ? this.inletPressure - pressure : this.drop === NO_DROP ? 0 : Number.NaN
+    this.lowestWall = lowest
+    this.moved = most
+  }
+
+  private takeVapour(r: number, pressure: number): void {
+    const { fluid } = this.s
+    const { vapour } = this
+    const Ts = pressure === this.inletPressure ? this.Ts : saturationTemperature(fluid, pressure)
+    this.rowPressure[r] = pressure
+    this.rowTs[r] = Ts
+    fillVapour(fluid, Ts, vapour)
+    this.rowLatent[r] = vapour[H_FG]
+    this.rowVapourDensity[r] = vapour[RHO_V]
+    this.rowVapourViscosity[r] = vapour[MU_V]
+    this.rowLossFlow[r] = Number.NaN
+  }
+
+  private takeFilm(r: number, reference: number): void {
+    const { liquid } = this
+    fillFilm(this.s.fluid, reference, liquid)
+    this.rowFilmTemperature[r] = reference
+    this.rowDensity[r] = liquid[RHO_L]
+    this.rowSpecificHeat[r] = liquid[CP_L]
+    this.rowViscosity[r] = liquid[MU_L]
+    this.rowConductivity[r] = liquid[K_L]
+    this.rowTension[r] = liquid[SIGMA]
+    if (this.inundation === DRAINAGE_MODE) {
+      const ga = galileo(liquid[RHO_L], liquid[SIGMA], liquid[MU_L])
+      this.rowColumnLine[r] = columnToColumnSheet(ga)
+      this.rowSheetLine[r] = columnSheetToSheet(ga)
+    }
+  }
+
+  /** Pressure loss of a row for its mean vapour flow and the condensate that drains through it. */
+  private takeLoss(r: number, middle: number, drained: number, flowArea: number): void {
+    const Do = this.s.outsideDiameter
+    const area = flowArea * this.fmin
+    const rhoV = this.rowVapourDensity[r]
+    const throat = middle / (rhoV * area)
+    let loss = rowPressureDrop(this.lossOf((rhoV * throat * Do) / this.rowVapourViscosity[r]), rhoV, throat)
+    if (this.twoPhase) {
+      const rhoL = this.rowDensity[r]
+      const slow = drained / (rhoL * area)
+      const re = (rhoL * slow * Do) / this.rowViscosity[r]
+      loss = ishihara(loss, rowPressureDrop(this.lossOf(re), rhoL, slow))
+    }
+    this.rowLoss[r] = loss
+    this.rowLossFlow[r] = middle
+    this.rowLossLiquid[r] = drained
+  }
+
+  private lossOf(re: number): number {
+    if (!(re > 0)) return 0
+    if (this.drop === 0)
+      return this.staggered
+        ? gaddisStaggeredRow(re, this.lossLaminar, this.lossTurbulent, this.lossEnd)
+        : gaddisInlineRow(re, this.lossLaminar, this.lossTurbulent, this.lossEnd, (0.1 * this.b) / this.a)
+    return this.drop === 1
+      ? zukauskas(re, this.a, this.b, this.staggered)
+      : jakob(re, this.a, this.b, this.staggered)
+  }
+
+  /** Film flux of one clean tube at subcooling `x` from the row's properties, W/m². */
+  private singleFlux(x: number, row: number, velocity: number): number {
+    const Do = this.s.outsideDiameter
+    const hfg = this.rowLatent[row]
+    const k = this.rowConductivity[row]
+    const mu = this.rowViscosity[row]
+    const rho = this.rowDensity[row]
+    const cp = this.rowSpecificHeat[row]
+    const rhoV = this.rowVapourDensity[row]
+    const chen = this.film === 1
+    const latent = this.plainLatent || chen ? hfg : hfg + ROHSENOW_COEFFICIENT * cp * x
+    const drive = filmDrive(Do, rho, rhoV, mu, k, latent)
+    const kD = k / Do
+    let q: number
+    if (this.shear === NO_SHEAR || !(velocity > 0)) q = nusseltTubeFlux(kD, drive, x)
+    else {
+      const re = (rho * velocity * Do) / mu
+      if (this.shear === BUTTERWORTH) q = butterworthFlux(kD, re, drive, x)
+      else if (this.shear === SHEKRILADZE) q = shekriladzeGomelauriFlux(kD, re, drive, x)
+      else if (this.shear === ROSE) q = roseFlux(kD, re, drive, x)
+      else
+        q = fujiiUeharaKurataFlux(
+          kD,
+          re,
+          drive,
+          x,
+          suctionGroupPerKelvin(hfg, k, rho, mu, rhoV, this.rowVapourViscosity[row]),
+          this.staggered,
+        )
+    }
+    return chen ? q * chenTubeFactor((cp * x) / hfg, (k * x) / (mu * hfg)) : q
+  }
+
+  /** Flux of row `row` from the single tube's, under the condensate that arrives (as the flux that would make it). */
+  private rowLaw(q1: number, arriving: number, row: number, x: number, dh: number): number {
+    switch (this.inundation) {
+      case CONDENSATE_FLOW:
+        return inundatedFlux(q1, arriving, this.exponent)
+      case DRAINAGE_MODE:
+        return drainageModeFlux(
+          q1,
+          arriving,
+          (2 * Math.PI * this.s.outsideDiameter) / (dh * this.rowViscosity[row]),
+          this.rowColumnLine[row],
+          this.rowSheetLine[row],
+          this.staggered,
+        )
+      case NO_INUNDATION:
+        return q1
+    }
+    const n = tubesInVerticalLine(row + 1, this.staggered)
+    if (this.inundation === 2) return q1 * nusseltRowLocal(n)
+    if (this.inundation === 3) return q1 * kernRowLocal(n)
+    if (this.inundation === 4) return q1 * eissenbergRowLocal(n)
+    return q1 * chenRowLocal(n, (this.rowSpecificHeat[row] * x) / this.rowLatent[row])
+  }
+
+  /** Flux of a clean tube at the subcooling and vapour velocity that row `row` was left with, W/m². */
+  singleAt(row: number): number {
+    return this.singleFlux(this.rowX[row], row, this.shear === NO_SHEAR ? 0 : this.rowVelocity[row])
+  }
+
+  /** Re~ of a row: liquid properties, vapour velocity. */
+  shearReynolds(row: number): number {
+    return (this.rowDensity[row] * this.rowVelocity[row] * this.s.outsideDiameter) / this.rowViscosity[row]
+  }
+
+  /** Fastest vapour between the tubes over the speed of sound there. */
+  get fastestOverSonic(): number {
+    let fastest = 0
+    for (let r = 0; r < this.s.rows; r++) {
+      const throat = (this.rowVelocity[r] * this.eps) / this.fmin
+      const sonic = this.sonicVelocity(r)
+      if (throat > fastest * sonic) fastest = throat / sonic
+    }
+    return fastest
+  }
+
+  /** Ideal-gas estimate (γ p/ρ)^(1/2) with γ from the vapour's specific heat, held within 1 to 5/3. */
+  private sonicVelocity(row: number): number {
+    const { fluid } = this.s
+    const p = fluid.fixed ? this.inletPressure : this.rowPressure[row]
+    const cp = this.inlet[CP_V]
+    const R = 8.314462618 / fluid.molarMass
+    const gamma = cp > R ? Math.min(5 / 3, Math.max(1, cp / (cp - R))) : 1.1
+    const speed = Math.sqrt((gamma * p) / this.rowVapourDensity[row])
+    return Number.isFinite(speed) ? speed : Number.POSITIVE_INFINITY
+  }
+
+  /**
+   * Carries the heat of a sweep to the passes' inlets, means and wall temperatures; returns the largest change, K.
+   * With `total` given, the passes share that heat as they shared the sweep's.
+   */
+  protected passTemperatures(total: number): number {
+    const { s } = this
+    const coolant = s.coolant as CoolantModel
+    const perMetre = Math.PI * this.insideDiameter * this.length
+    const scale = total / this.duty
+    let T = s.inletTemperature
+    let change = 0
+    for (let j = 0; j < s.passes; j++) {
+      const moved = T - this.passIn[j]
+      if (Math.abs(moved) > change) change = Math.abs(moved)
+      // A pass that starts warmer takes up less: corrected in proportion to its driving difference.
+      const difference = Math.max(1e-9, this.Ts - this.passIn[j])
+      const heat = this.passHeat[j] * (Number.isNaN(total) ? Math.max(0, 1 - moved / difference) : scale)
+      const rise = heat / (this.flow * this.passSpecificHeat[j])
+      this.passIn[j] = T
+      const mean = T + 0.5 * rise
+      const wall = Math.min(
+        mean + heat / (perMetre * this.passTubes[j] * this.passCoefficient[j]),
+        coolant.maxTemperature,
+      )
+      change = Math.max(change, Math.abs(mean - this.passMean[j]), Math.abs(wall - this.passWall[j]))
+      this.passMean[j] = mean
+      this.passWall[j] = wall
+      T += rise
+      this.passOut[j] = T
+    }
+    return change
+  }
+}
+
+/**
+ * Share κ of the coolant's rise in a row at which the flux of the whole row stands, the flux going as a power p of the
+ * difference to the coolant: the generalised mean of the end differences `T` and `T − rise` is T − κ rise.
+ * `rise` is what the flux found at the difference `star` would give; `w` is the film's share of that difference, `e` the
+ * exponent of the film's flux in its subcooling.
+ */
+function riseShare(T: number, rise: number, star: number, w: number, e: number): number {
+  const p = 1 / (1 - w + w / e)
+  const u = rise / (2 * T - rise)
+  if (u >= 0 && u < 0.16) {
+    // Series about the arithmetic mean, to 1e-11.
+    const v = u * u
+    const z =
+      ((p * (p + 1)) / 6) *
+      v *
+      (1 +
+        (((p + 2) * (p + 3)) / 20) *
+          v *
+          (1 +
+            (((p + 4) * (p + 5)) / 42) *
+              v *
+              (1 + (((p + 6) * (p + 7)) / 72) * v * (1 + (((p + 8) * (p + 9)) / 110) * v))))
+    const y = (-z * (1 - z * (1 / 2 - z * (1 / 3 - z / 4)))) / p
+    const lowered = -y * (1 + y * (1 / 2 + y * (1 / 6 + y * (1 / 24 + y / 120))))
+    return u > 0 ? 0.5 + lowered / (2 * u) : 0.5
+  }
+  // Along the row the difference falls as dθ = −(rise/star^p) θ^p: its end value first, which no guess of κ can upset.
+  const power = 1 - p
+  const units = rise / star
+  let integral = units
+  let end: number
+  if (Math.abs(power) < 1e-9) end = Math.exp(-units)
+  else {
+    integral = units * (star / T) ** power
+    const left = 1 - power * integral
+    if (left > 0) end = left ** (1 / power)
+    else {
+      end = 0
+      integral = 1 / power
+    }
+  }
+  const whole = 1 - end
+  return (1 - (whole / integral) ** (1 / p)) / whole
+}
