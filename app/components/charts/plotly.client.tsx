@@ -4,14 +4,6 @@ import { useMemo } from 'react'
 import createPlotlyComponent from 'react-plotly.js/factory'
 import { type ChartTheme, type Scatter, scatterFigure } from './scatter.ts'
 
-// The style rules plotly would write into the page are in charts.css; an element of this id and class tells it so.
-if (!document.getElementById('plotly.js-style-global')) {
-  const rules = document.createElement('meta')
-  rules.id = 'plotly.js-style-global'
-  rules.className = 'no-inline-styles'
-  document.head.append(rules)
-}
-
 const Plot = createPlotlyComponent(Plotly)
 
 export type LiveScatterProps = {

@@ -119,6 +119,11 @@ function ExploreRunPage({ page, studyId }: { page: ExploreRun; studyId: string }
   const table = tableOf(page, view.columns, columns, units)
   const fresh = progress.done - page.progress.done
   const point = selected?.point ?? null
+  // A choice shows at the row before its sheet has come.
+  const asked = busy
+    ? Number(new URLSearchParams(navigation.location?.search).get('point') ?? Number.NaN)
+    : Number.NaN
+  const marked = Number.isInteger(asked) ? asked : typeof point === 'number' ? point : null
   const pin = (id: number) => {
     const now = view.pinned
     return changed(search, {
@@ -128,6 +133,7 @@ function ExploreRunPage({ page, studyId }: { page: ExploreRun; studyId: string }
 
   return (
     <ExploreLayout
+      busy={busy}
       margin={
         selected ? (
           <PointMargin
@@ -248,7 +254,7 @@ function ExploreRunPage({ page, studyId }: { page: ExploreRun; studyId: string }
                   })
                 }
                 pointHref={(id) => changed(search, { point: id })}
-                selected={typeof point === 'number' ? point : null}
+                selected={marked}
                 matching={page.page.matching}
                 offset={page.page.offset}
                 pageSize={PAGE_SIZE}
@@ -265,7 +271,17 @@ function ExploreRunPage({ page, studyId }: { page: ExploreRun; studyId: string }
 }
 
 /** Finding and plot, the point beside them, the table under them; on a phone the point comes before the table. */
-function ExploreLayout({ lead, margin, rest }: { lead: ReactNode; margin: ReactNode; rest: ReactNode }) {
+function ExploreLayout({
+  lead,
+  margin,
+  rest,
+  busy,
+}: {
+  lead: ReactNode
+  margin: ReactNode
+  rest: ReactNode
+  busy: boolean
+}) {
   const column = 'grid min-w-0 content-start gap-5 px-4 sm:px-7 print:p-0 print:block print:*:mb-4'
   return (
     <div className="grid grow lg:grid-cols-[minmax(0,1fr)_24.5rem] lg:grid-rows-[auto_1fr] print:block">
@@ -274,7 +290,12 @@ function ExploreLayout({ lead, margin, rest }: { lead: ReactNode; margin: ReactN
         aria-label="Selected point"
         className="min-w-0 border-line bg-sheet px-4 py-6 max-lg:border-y sm:px-7 lg:col-start-2 lg:row-span-2 lg:row-start-1 lg:border-s lg:px-6 lg:py-8 print:border-0 print:p-0"
       >
-        <div className="grid content-start gap-6 lg:sticky lg:top-6">{margin}</div>
+        <div
+          className={`grid content-start gap-6 transition-opacity lg:sticky lg:top-6 ${busy ? 'opacity-60' : ''}`}
+          aria-busy={busy}
+        >
+          {margin}
+        </div>
       </aside>
       <div className={`${column} pb-8 max-lg:pt-6`}>{rest}</div>
     </div>

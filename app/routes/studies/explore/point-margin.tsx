@@ -182,14 +182,15 @@ function PointFacts({ bundle, result, names }: { bundle: Case; result: Result; n
       ) : null}
       {first && last ? (
         <>
-          <dt>{first === last ? 'Subcooling' : `Subcooling, rows 1, ${last.row}`}</dt>
+          <dt>Subcooling</dt>
           <dd>
             {first === last ? null : (
               <>
-                <Quantity value={first.wallSubcooling} dimension="temperatureDifference" unit={false} />,{' '}
+                <Quantity value={first.wallSubcooling} dimension="temperatureDifference" unit={false} /> to{' '}
               </>
             )}
             <Quantity value={last.wallSubcooling} dimension="temperatureDifference" />
+            {first === last ? null : `, rows 1 to ${last.row}`}
           </dd>
         </>
       ) : null}
