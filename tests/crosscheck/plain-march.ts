@@ -73,6 +73,7 @@ export function plainMarch(c: Case, options: { segments: number; length: number 
   if (c.drive.kind !== 'coolant' || c.drive.velocity === undefined) throw new Error('the plain march takes a coolant velocity')
   if (c.bundle.shape !== 'rectangular' || typeof c.bundle.tubesPerRow !== 'number') throw new Error('the plain march takes a rectangle')
   const drive = c.drive
+  const velocity = c.drive.velocity
   const { rows, passes, layout, pitchRatio } = c.bundle
   const perRow = c.bundle.tubesPerRow
   const fluid = typeof c.fluid === 'string' ? fluidModel(c.fluid) : fixedFluid(c.fluid.properties)
@@ -107,7 +108,7 @@ export function plainMarch(c: Case, options: { segments: number; length: number 
   const rowsOf = Array.from({ length: passes }, (_, j) => Array.from({ length: rows }, (_, r) => r).filter((r) => passOf(r) === j))
   const bore = (Math.PI / 4) * Di * Di
   const inletDensity = water(drive.inletTemperature).rho
-  const massFlow = (inletDensity * drive.velocity * bore * rows * perRow) / passes
+  const massFlow = (inletDensity * velocity * bore * rows * perRow) / passes
   const Ts0 = c.saturationTemperature as number
   const pIn = fluid.fixed ? Number.NaN : saturationPressure(fluid, Ts0)
 
