@@ -5,7 +5,7 @@ import { ENGINE_VERSION } from '#engine/version.ts'
 import { JobWorker } from './worker.server.ts'
 
 /** A connection cut without a word must not hold a job for ever. */
-Object.assign(pool.options, { query_timeout: 15_000, connectionTimeoutMillis: 5000, keepAlive: true })
+Object.assign(pool.options, { query_timeout: 10_000, connectionTimeoutMillis: 5000, keepAlive: true })
 
 requireSettings('worker')
 const worker = new JobWorker({ threads: env.WORKER_THREADS, log: (line) => console.error(line) })

@@ -206,7 +206,7 @@ export class Scene {
     this.#employ(url)
     this.#employ(url)
     try {
-      return await this.#observe(what, times, disturb, given, undisturbed)
+      return await this.#observe(what, times, disturb, given, plan, undisturbed)
     } finally {
       await this.#dismiss()
     }
@@ -217,10 +217,12 @@ export class Scene {
     times: number,
     disturb: (run: Run) => Promise<void>,
     given: ReturnType<typeof definition>,
+    plan: SweepPlan,
     undisturbed: string,
   ): Promise<Outcome> {
     const started = Date.now()
-    const planned = await plantRun(given, CHUNK_POINTS)
+    const chunks = Math.max(CHUNKS, CHUNKS_A_KILL * times)
+    const planned = await plantRun(given, Math.max(10, Math.round(plan.points / chunks)))
     this.#log(`${what}: run of ${planned.points} points in chunks of ${planned.chunkPoints}`)
     await until('the run is under way', async () => (await runProgress(planned.id)).done > 0, 30_000)
     await disturb(planned)
@@ -283,8 +285,9 @@ const settings = (folder: string) => ({ folder, packages: join(PRIVATE, 'postgre
 const pause = (ms: number) => new Promise((resolve) => setTimeout(resolve, ms))
 const any = <T>(set: Set<T>): T => [...set][Math.floor(Math.random() * set.size)]
 
-/** Small, so that there are many moments between two chunks. */
-const CHUNK_POINTS = 60
+/** Many, so that there are many moments to be disturbed at. */
+const CHUNKS = 80
+const CHUNKS_A_KILL = 12
 const ROWS = [8, 10, 12, 14]
 const INLETS = 25
 

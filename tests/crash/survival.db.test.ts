@@ -11,16 +11,16 @@ beforeAll(async () => {
 afterAll(() => scene.close())
 
 test.each([
-  ['workers killed', () => scene.killWorkers(2, 6)],
-  ['a worker frozen', () => scene.freezeWorker(6)],
-  ['PostgreSQL restarted', () => scene.restartDatabase(4)],
-  ['connections cut', () => scene.cutConnections(4)],
-  ['writes refused', () => scene.refuseWrites(4)],
+  ['workers killed', () => scene.killWorkers(2, 4)],
+  ['a worker frozen', () => scene.freezeWorker(2)],
+  ['PostgreSQL restarted', () => scene.restartDatabase(2)],
+  ['connections cut', () => scene.cutConnections(2)],
+  ['writes refused', () => scene.refuseWrites(2)],
 ])(
   'a run survives %s: same points, each once, same content',
   async (_, disturb) => {
     const outcome = await disturb()
-    expect(survived(outcome), `${JSON.stringify(outcome, null, 2)}\n${lines.join('\n')}`).toBe(true)
+    expect(survived(outcome), `${JSON.stringify(outcome, null, 2)}\n${lines.slice(-30).join('\n')}`).toBe(true)
   },
   180_000,
 )
