@@ -1,6 +1,6 @@
 // What the Explore page and the point sheet show, put together from run, points and plan.
 import { AppError } from '#app/http/errors.ts'
-import type { PointFilters } from '#app/modules/points/point-types.ts'
+import type { Aggregates, PointFilters } from '#app/modules/points/point-types.ts'
 import { aggregates, pageOfPoints, pointSheet, refinedBest } from '#app/modules/points/points.server.ts'
 import { runProgress } from '#app/modules/runs/progress.server.ts'
 import { isFinal } from '#app/modules/runs/progress.ts'
@@ -18,6 +18,9 @@ import { sheetCards } from './method-cards.server.ts'
 import { caseNames, choiceNames } from './names.server.ts'
 import { pictureOf } from './picture.server.ts'
 import { type ExploreView, PAGE_SIZE, parseView } from './view.ts'
+
+/** Ended runs whose summaries are kept in memory. */
+const KEPT = 64
 
 /** A variable as the page needs it: with its values where they are few enough to choose from. */
 function pageVariable({ path, label, symbol, dimension, kind, tubeSized, values, between }: PlanVariable) {
@@ -65,7 +68,7 @@ export async function explorePage(studyId: string, search: URLSearchParams) {
   const view = parseView(search, columns)
   const [progress, all, refined] = await Promise.all([
     runProgress(run.id),
-    aggregates(run.id),
+    countsOf(run),
     refinedBest(run.id),
   ])
   const filters: PointFilters = {
@@ -190,19 +193,35 @@ async function selectedPoint(
   return asked === null ? null : sheetOf(runId, plan, asked)
 }
 
+const countsKept = new Map<string, Promise<Aggregates>>()
+
+/** Counts and ranges over all points. Of an ended run, whose points no longer change: kept. */
+function countsOf(run: RunListing): Promise<Aggregates> {
+  return isFinal(run.state) ? kept(countsKept, run.id, () => aggregates(run.id)) : aggregates(run.id)
+}
+
+/** What was made for a key once, as long as it is among the latest made; failures are not kept. */
+function kept<Value>(
+  store: Map<string, Promise<Value>>,
+  key: string,
+  make: () => Promise<Value>,
+): Promise<Value> {
+  const known = store.get(key)
+  if (known) return known
+  const made = make()
+  store.set(key, made)
+  made.catch(() => store.delete(key))
+  if (store.size > KEPT) store.delete(store.keys().next().value as string)
+  return made
+}
+
 type PointEffect = LimitEffect & { nearestPoint: number | null }
 
 const effectsKept = new Map<string, Promise<PointEffect[]>>()
 
 /** What each limit does, the others held. Of an ended run, whose points no longer change: kept. */
 function limitEffects(runId: string, plan: SweepPlan, someMeet: boolean) {
-  const known = effectsKept.get(runId)
-  if (known) return known
-  const found = findLimitEffects(runId, plan, someMeet)
-  effectsKept.set(runId, found)
-  found.catch(() => effectsKept.delete(runId))
-  if (effectsKept.size > 64) effectsKept.delete(effectsKept.keys().next().value as string)
-  return found
+  return kept(effectsKept, runId, () => findLimitEffects(runId, plan, someMeet))
 }
 
 async function findLimitEffects(runId: string, plan: SweepPlan, someMeet: boolean) {

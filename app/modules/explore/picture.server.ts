@@ -91,10 +91,10 @@ function limitedResult(plan: SweepPlan, has: (result: string) => boolean): strin
 
 function usualScatter(plan: SweepPlan, has: (result: string) => boolean) {
   const few = ({ values, between }: PlanVariable) => !between && values.length >= 2 && values.length <= 6
-  const telling = ['tube.outsideDiameter', 'tube', 'fluid']
-  const colour =
-    plan.variables.find((variable) => few(variable) && telling.includes(variable.path)) ??
-    plan.variables.find(few)
+  const telling = ['tube.outsideDiameter', 'tube', 'fluid'].flatMap((path) =>
+    plan.variables.filter((variable) => variable.path === path && few(variable)),
+  )
+  const colour = telling[0] ?? plan.variables.find(few)
   return { x: limitedResult(plan, has), colour: colour?.path ?? null }
 }
 

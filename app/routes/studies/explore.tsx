@@ -352,7 +352,13 @@ function RunActs({ page, search, studyId }: { page: ExploreRun; search: URLSearc
 /** What searching between the swept values found beyond the best of them. */
 function Refined({ page, search }: { page: ExploreRun; search: URLSearchParams }) {
   const { refined, objective, best } = page
-  if (!refined?.improved || !best) return null
+  if (!refined || !best) return null
+  if (!refined.improved)
+    return (
+      <p className="text-note text-soft">
+        Searched between the swept values too: <Said>{refined.statement}</Said>
+      </p>
+    )
   const value = refined.keyResults[objective]
   const column = pointColumns([]).find(({ id }) => id === objective) as PointColumn
   const least = best.keyResults[objective]

@@ -125,9 +125,10 @@ export function SafetyNote({ names }: { names: CaseNames }) {
 function PointFacts({ bundle, result, names }: { bundle: Case; result: Result; names: CaseNames }) {
   const units = useUnits()
   const [first, last] = [result.rows[0], result.rows[result.rows.length - 1]]
+  const uniform = first?.wallSubcooling === last?.wallSubcooling
   const even = result.rows.every((row) => row.tubes === first?.tubes)
   return (
-    <dl className="facts">
+    <dl className="facts point-facts">
       <dt>Fluid</dt>
       <dd>
         {names.fluid}
@@ -184,13 +185,13 @@ function PointFacts({ bundle, result, names }: { bundle: Case; result: Result; n
         <>
           <dt>Subcooling</dt>
           <dd>
-            {first === last ? null : (
+            {uniform ? null : (
               <>
                 <Quantity value={first.wallSubcooling} dimension="temperatureDifference" unit={false} /> to{' '}
               </>
             )}
             <Quantity value={last.wallSubcooling} dimension="temperatureDifference" />
-            {first === last ? null : `, rows 1 to ${last.row}`}
+            {uniform ? '' : `, rows 1 to ${last.row}`}
           </dd>
         </>
       ) : null}
