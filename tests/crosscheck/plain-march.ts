@@ -2,7 +2,12 @@
 // bisection, nothing lagged, nothing accelerated. It shares the correlations and property functions with the engine,
 // and none of the engine's solution: what both agree on does not hang on how it was solved. Slow; for tests only.
 import type { Case } from '#engine/case.ts'
-import { FILM_SUBCOOLING, filmDrive, nusseltTubeFlux, ROHSENOW_COEFFICIENT } from '#engine/correlations/film.ts'
+import {
+  FILM_SUBCOOLING,
+  filmDrive,
+  nusseltTubeFlux,
+  ROHSENOW_COEFFICIENT,
+} from '#engine/correlations/film.ts'
 import { churchill, coolantPressureDrop } from '#engine/correlations/friction.ts'
 import {
   isStaggered,
@@ -70,14 +75,17 @@ function bisect(f: (x: number) => number, low: number, high: number, steps = 200
 
 /** Coolant drive with a given velocity; plain tubes, rectangular bundle, default methods or the plain ones named here. */
 export function plainMarch(c: Case, options: { segments: number; length: number }): PlainResult {
-  if (c.drive.kind !== 'coolant' || c.drive.velocity === undefined) throw new Error('the plain march takes a coolant velocity')
-  if (c.bundle.shape !== 'rectangular' || typeof c.bundle.tubesPerRow !== 'number') throw new Error('the plain march takes a rectangle')
+  if (c.drive.kind !== 'coolant' || c.drive.velocity === undefined)
+    throw new Error('the plain march takes a coolant velocity')
+  if (c.bundle.shape !== 'rectangular' || typeof c.bundle.tubesPerRow !== 'number')
+    throw new Error('the plain march takes a rectangle')
   const drive = c.drive
   const velocity = c.drive.velocity
   const { rows, passes, layout, pitchRatio } = c.bundle
   const perRow = c.bundle.tubesPerRow
   const fluid = typeof c.fluid === 'string' ? fluidModel(c.fluid) : fixedFluid(c.fluid.properties)
-  const coolant = typeof drive.coolant === 'string' ? coolantModel(drive.coolant) : fixedCoolant(drive.coolant.properties)
+  const coolant =
+    typeof drive.coolant === 'string' ? coolantModel(drive.coolant) : fixedCoolant(drive.coolant.properties)
   const Do = c.tube.outsideDiameter
   const Di = Do - 2 * (c.tube.wallThickness as number)
   const k = c.tube.conductivity ?? findMaterial(c.tube.material as string)?.conductivity ?? Number.NaN
@@ -105,7 +113,9 @@ export function plainMarch(c: Case, options: { segments: number; length: number 
     return passes - 1
   }
   const passOf = (row: number) => (c.bundle.coolantEntry === 'top' ? band(row) : passes - 1 - band(row))
-  const rowsOf = Array.from({ length: passes }, (_, j) => Array.from({ length: rows }, (_, r) => r).filter((r) => passOf(r) === j))
+  const rowsOf = Array.from({ length: passes }, (_, j) =>
+    Array.from({ length: rows }, (_, r) => r).filter((r) => passOf(r) === j),
+  )
   const bore = (Math.PI / 4) * Di * Di
   const inletDensity = water(drive.inletTemperature).rho
   const massFlow = (inletDensity * velocity * bore * rows * perRow) / passes
@@ -130,7 +140,11 @@ export function plainMarch(c: Case, options: { segments: number; length: number 
       const pr = (w.mu * w.cp) / w.k
       const wall = water(wallTemperatures[j])
       const hi = (gnielinski(re, pr, Di / L, wallPrandtlFactor(pr, (wall.mu * wall.cp) / wall.k)) * w.k) / Di
-      const inner = 1 / (c.tube.outsideFoulingResistance + wallResistance(Do, Di, k) + (Do / Di) * (drive.foulingResistance + 1 / hi))
+      const inner =
+        1 /
+        (c.tube.outsideFoulingResistance +
+          wallResistance(Do, Di, k) +
+          (Do / Di) * (drive.foulingResistance + 1 / hi))
       const capacity = (massFlow / inBand) * w.cp
       const Ts = fluid.fixed ? Ts0 : saturationTemperature(fluid, pressure)
       fillSaturation(fluid, Ts, state)
@@ -158,7 +172,14 @@ export function plainMarch(c: Case, options: { segments: number; length: number 
               const cp = film[CP_L]
               const latent = rohsenow ? hfg + ROHSENOW_COEFFICIENT * cp * x : hfg
               const dh = rohsenow ? hfg + FILM_SUBCOOLING * cp * x : hfg
-              const factor = filmDrive(Do, film[RHO_L], Number.isNaN(rhoV) ? 0 : rhoV, film[MU_L], film[K_L], latent)
+              const factor = filmDrive(
+                Do,
+                film[RHO_L],
+                Number.isNaN(rhoV) ? 0 : rhoV,
+                film[MU_L],
+                film[K_L],
+                latent,
+              )
               const single = sheared
                 ? butterworthFlux(film[K_L] / Do, (film[RHO_L] * velocity * Do) / film[MU_L], factor, x)
                 : nusseltTubeFlux(film[K_L] / Do, factor, x)
@@ -219,7 +240,15 @@ export function plainMarch(c: Case, options: { segments: number; length: number 
         const v = massFlow / (w.rho * bore * rowsOf[j].length * perRow)
         const pr = (w.mu * w.cp) / w.k
         const wall = water(walls[j])
-        const hi = (gnielinski((w.rho * v * Di) / w.mu, pr, Di / L, wallPrandtlFactor(pr, (wall.mu * wall.cp) / wall.k)) * w.k) / Di
+        const hi =
+          (gnielinski(
+            (w.rho * v * Di) / w.mu,
+            pr,
+            Di / L,
+            wallPrandtlFactor(pr, (wall.mu * wall.cp) / wall.k),
+          ) *
+            w.k) /
+          Di
         nextWalls.push(T + rise / 2 + result.heat[j] / (rowsOf[j].length * perRow * Math.PI * Di * L) / hi)
         change = Math.max(change, Math.abs(nextMeans[j] - means[j]), Math.abs(nextWalls[j] - walls[j]))
         T += rise

@@ -551,9 +551,20 @@ function shownAs(
   const fromSi = (si: number) => String(Number(toDisplay(si, dimension, units, hint).value.toPrecision(12)))
   if (typeof value === 'number') return fromSi(value)
   if (typeof value !== 'string') return ''
-  if (unit !== '' && value.endsWith(` ${unit}`)) return value.slice(0, -unit.length - 1)
+  const typed = /^(.*[\d.])\s*([^\d\s].*)$/.exec(value.trim())
+  if (unit !== '' && typed && sameUnit(typed[2], unit, dimension)) return typed[1].trim()
   const bare = unit === '' ? null : parseQuantity(value, 'none')
   return bare?.ok ? fromSi(bare.value) : value
+}
+
+/** "degC" and "°C": whether two spellings mean one unit. */
+function sameUnit(a: string, b: string, dimension: Dimension): boolean {
+  if (a === b) return true
+  const read = (text: string) => {
+    const parsed = parseQuantity(text, dimension)
+    return parsed.ok ? parsed.value : Number.NaN
+  }
+  return read(`1 ${a}`) === read(`1 ${b}`) && read(`2 ${a}`) === read(`2 ${b}`)
 }
 
 // --- faults -------------------------------------------------------------------------------------------------
