@@ -311,7 +311,7 @@ const bundleSchema = record({
     .optional(),
   passes: whole(64).default(1),
   coolantEntry: oneOf(['bottom', 'top']).default('bottom'),
-  length: positive('length', 1000, 'above 0 and at most 1000 m').optional(),
+  length: positive('length', 1e6, 'above 0 and at most 1 000 000 m').optional(),
 })
 
 /** Most rows a case may have; the solver's arrays are made for as many. */

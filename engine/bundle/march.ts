@@ -22,6 +22,8 @@ const CLOSE = 1e-9
 const QUICK_SWEEPS = 30
 /** Sweeps that one trial of the bracketed search may take. */
 const TRIAL_SWEEPS = 120
+/** Sweeps after which what swings from one to the next is damped. */
+const SWINGING = 12
 /** Trial lengths stay below this; a duty that needs more is out of reach [m]. */
 const LONGEST = 1e5
 /** Coolant is not driven faster than this to hold a wall [m/s]. */
@@ -110,6 +112,7 @@ export class BundleMarch extends RowMarch {
     let lastMismatch = Number.NaN
     for (let n = 0; n < QUICK_SWEEPS; n++) {
       this.sweeps++
+      this.heed = n < SWINGING ? 1 : 0.5
       let change = 0
       if (cooled) {
         this.coolantSide()
@@ -171,8 +174,8 @@ export class BundleMarch extends RowMarch {
   }
 
   /**
-   * Brings the duty to `total` by length or coolant flow, a secant step in its logarithm after every sweep. The coolant
-   * is taken to carry `total` all along; with an `outlet` temperature the flow follows.
+   * Brings the duty to `total` by length or coolant flow, a secant step in its logarithm after every sweep. While the
+   * length is sought the coolant is taken to carry `total` all along; with an `outlet` temperature the flow follows.
    */
   private quickDuty(by: number, total: number, outlet: number): boolean {
     const { s } = this
@@ -183,11 +186,12 @@ export class BundleMarch extends RowMarch {
     let lastShort = Number.NaN
     for (let n = 0; n < QUICK_SWEEPS; n++) {
       this.sweeps++
+      this.heed = n < SWINGING ? 1 : 0.5
       this.coolantSide()
       this.sweep(true)
       if (!(this.duty > 0)) return false
-      const change = this.passTemperatures(total)
-      const off = this.followOutlet(outlet)
+      const change = this.passTemperatures(by === BY_LENGTH ? total : Number.NaN)
+      const off = this.followOutlet(total, outlet)
       const short = Math.log(total / this.duty)
       if (Math.abs(short) < CLOSE && this.moved < CLOSE && change < close && Math.abs(off) < CLOSE)
         return true
@@ -212,13 +216,22 @@ export class BundleMarch extends RowMarch {
     return false
   }
 
-  /** Corrects the flow to the outlet temperature asked for; how far it was off, relative to the rise. */
-  private followOutlet(outlet: number): number {
+  /** Takes the flow that carries `total` to the outlet temperature asked for; by how much it moved, relative. */
+  private followOutlet(total: number, outlet: number): number {
     if (Number.isNaN(outlet)) return 0
     const { s } = this
-    const off = (this.passOut[s.passes - 1] - s.inletTemperature) / (outlet - s.inletTemperature) - 1
-    this.flow *= 1 + Math.max(-0.5, Math.min(1, off))
-    return off
+    let weighted = 0
+    let rise = 0
+    for (let j = 0; j < s.passes; j++) {
+      const risen = this.passOut[j] - this.passIn[j]
+      weighted += this.passSpecificHeat[j] * risen
+      rise += risen
+    }
+    if (!(rise > 0)) return 0
+    const flow = (total * rise) / (weighted * (outlet - s.inletTemperature))
+    const moved = flow / this.flow - 1
+    this.flow = flow
+    return moved
   }
 
   /** d ln duty/d ln length with the passes' inlets held: NTU (1 − ε)/ε of each pass, weighted by its heat. */
@@ -243,13 +256,14 @@ export class BundleMarch extends RowMarch {
     this.start(cooled)
     for (let n = 0; n < TRIAL_SWEEPS; n++) {
       this.sweeps++
+      this.heed = n < SWINGING ? 1 : 0.5
       let change = 0
       let off = 0
       if (cooled) {
         this.coolantSide()
         this.sweep(true)
-        change = this.passTemperatures(by === BY_VAPOUR ? Number.NaN : total)
-        off = this.followOutlet(outlet)
+        change = this.passTemperatures(Number.NaN)
+        off = this.followOutlet(total, outlet)
       } else this.sweep(false)
       if (by !== BY_VAPOUR && this.duty > 0) this.inletVapour = (total * this.condensate) / this.duty
       if (this.moved < CLOSE && !(change > close) && Math.abs(off) < CLOSE) break

@@ -154,6 +154,8 @@ export class RowMarch {
   readonly rowX = new Float64Array(MAX_ROWS)
   readonly rowFlux = new Float64Array(MAX_ROWS)
   readonly rowCondensate = new Float64Array(MAX_ROWS)
+  /** Condensate that the next sweep takes a row to make when it sets the row's mean vapour flow. */
+  private readonly rowExpected = new Float64Array(MAX_ROWS)
   readonly rowArriving = new Float64Array(MAX_ROWS)
   readonly rowCoolant = new Float64Array(MAX_ROWS)
   readonly rowVelocity = new Float64Array(MAX_ROWS)
@@ -210,6 +212,8 @@ export class RowMarch {
   length = 0
   flow = 0
   private first = true
+  /** Share of a row's new condensate, and of a pass's new inlet, that the next sweep starts from. */
+  protected heed = 1
 
   /** Geometry and inlet state; the outcome that ends the point here, or 0. */
   prepare(): number {
@@ -398,7 +402,7 @@ export class RowMarch {
     const L = this.length
     const perMetre = Math.PI * Do
     const flowArea = L * this.flowWidth()
-    const { weight, eps, exponent, first } = this
+    const { weight, eps, exponent, first, heed } = this
     const dropping = this.drop !== NO_DROP && this.inlet[RHO_V] > 0
     const sheared = this.shear !== NO_SHEAR && this.inlet[RHO_V] > 0
     // The common laws are written out below; the others go through `singleFlux` and `rowLaw`.
@@ -424,9 +428,9 @@ export class RowMarch {
       const tubes = this.rowTubes[r]
       if (first && r > 0) {
         this.rowX[r] = this.rowX[r - 1]
-        this.rowCondensate[r] = this.rowCondensate[r - 1]
-      } else if (first) this.rowCondensate[r] = this.inletVapour / rows
-      const middle = Math.max(0, remaining - 0.5 * this.rowCondensate[r])
+        this.rowExpected[r] = this.rowCondensate[r - 1]
+      } else if (first) this.rowExpected[r] = this.inletVapour / rows
+      const middle = Math.max(0, remaining - 0.5 * this.rowExpected[r])
       const velocity = rhoV > 0 ? middle / (rhoV * flowArea * eps) : 0
       let x = this.rowX[r]
       const reference = Ts - x + weight * x
@@ -540,6 +544,7 @@ export class RowMarch {
       this.rowArriving[r] = onTube
       this.rowVelocity[r] = velocity
       this.rowCondensate[r] = made
+      this.rowExpected[r] += heed * (made - this.rowExpected[r])
       duty += heat
       const wall = Ts - x
       if (wall < lowest) lowest = wall
@@ -728,6 +733,7 @@ export class RowMarch {
     let T = s.inletTemperature
     let change = 0
     for (let j = 0; j < s.passes; j++) {
+      T = this.passIn[j] + this.heed * (T - this.passIn[j])
       const moved = T - this.passIn[j]
       if (Math.abs(moved) > change) change = Math.abs(moved)
       // A pass that starts warmer takes up less: corrected in proportion to its driving difference.
