@@ -1,6 +1,6 @@
 // The live scatter plot. Loaded after hydration, and only where a plot is: plotly is larger than the rest together.
 import Plotly from 'plotly.js'
-import { useMemo } from 'react'
+import { memo, useMemo } from 'react'
 import createPlotlyComponent from 'react-plotly.js/factory'
 import { type ChartTheme, type Scatter, scatterFigure } from './scatter.ts'
 
@@ -11,22 +11,35 @@ export type LiveScatterProps = {
   theme: ChartTheme
   height: number
   onPick?: (id: number) => void
-  onBrush?: (area: { x: [number, number]; y: [number, number] } | null) => void
+  onBrush?: (area: { x: [number, number]; y: [number, number] }) => void
 }
 
-export function LiveScatter({ spec, theme, height, onPick, onBrush }: LiveScatterProps) {
+// Constant, because the plot is drawn anew whenever one of its objects is another.
+const CONFIG = { displayModeBar: false, responsive: true, doubleClick: false, showTips: false } as const
+
+export const LiveScatter = memo(function LiveScatter({
+  spec,
+  theme,
+  height,
+  onPick,
+  onBrush,
+}: LiveScatterProps) {
   const { data, layout } = useMemo(() => {
     const figure = scatterFigure(spec, theme)
     // A finger that drags means to scroll the page.
-    const fine = matchMedia('(pointer: fine)').matches
-    return { ...figure, layout: { ...figure.layout, dragmode: onBrush && fine ? 'select' : false } as const }
+    const coarse = matchMedia('(pointer: coarse)').matches
+    return {
+      ...figure,
+      layout: { ...figure.layout, dragmode: onBrush && !coarse ? 'select' : false } as const,
+    }
   }, [spec, theme, onBrush])
+  const style = useMemo(() => ({ width: '100%', height }), [height])
   return (
     <Plot
       data={data}
       layout={layout}
-      config={{ displayModeBar: false, responsive: true, doubleClick: false, showTips: false }}
-      style={{ width: '100%', height }}
+      config={CONFIG}
+      style={style}
       onClick={(event) => {
         const id = event.points[0]?.customdata
         if (typeof id === 'number') onPick?.(id)
@@ -39,4 +52,4 @@ export function LiveScatter({ spec, theme, height, onPick, onBrush }: LiveScatte
       }}
     />
   )
-}
+})

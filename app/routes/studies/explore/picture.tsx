@@ -1,5 +1,5 @@
 // The picture of a run's points: scatter, map, distribution or parallel coordinates, all under the same filters.
-import { useMemo } from 'react'
+import { memo, useCallback, useMemo } from 'react'
 import { Link } from 'react-router'
 import { toneOf } from '#app/components/bundle-drawing/layout.ts'
 import { HeatMap } from '#app/components/charts/heat-map.tsx'
@@ -49,7 +49,8 @@ const NAMES: Record<PictureKind, string> = {
   parallel: 'Parallel axes',
 }
 
-export function PictureSheet({ view, ...shared }: Shared & { view: ExploreView }) {
+/** Drawn anew only when its points or the address change, not while an answer is awaited. */
+export const PictureSheet = memo(function PictureSheet({ view, ...shared }: Shared & { view: ExploreView }) {
   const { page, columns, search, to } = shared
   const units = useUnits()
   const { picture } = page
@@ -82,7 +83,7 @@ export function PictureSheet({ view, ...shared }: Shared & { view: ExploreView }
       </div>
     </Sheet>
   )
-}
+})
 
 const find = (columns: readonly PointColumn[], id: string) =>
   columns.find((column) => column.id === id) as PointColumn
@@ -212,22 +213,26 @@ function ScatterPicture({ page, columns, picture, to }: Shared & { picture: Of<'
       ),
     [page, picture, columns, units, x, y],
   )
+  const pick = useCallback((id: number) => to({ point: id }), [to])
+  const brush = useCallback(
+    (area: { x: [number, number]; y: [number, number] }) => {
+      const si = (value: number, column: PointColumn) => boundToSi(String(value), column, units)
+      to({
+        [`min.${x.id}`]: si(area.x[0], x),
+        [`max.${x.id}`]: si(area.x[1], x),
+        [`min.${y.id}`]: si(area.y[0], y),
+        [`max.${y.id}`]: si(area.y[1], y),
+      })
+    },
+    [to, units, x, y],
+  )
   const drawn = picture.plot.point.length
   return (
     <ScatterPlot
       name={`${y.label} against ${x.label.toLowerCase()}, ${drawn} points`}
       spec={spec}
-      onPick={(id) => to({ point: id })}
-      onBrush={(area) => {
-        if (!area) return
-        const si = (value: number, column: PointColumn) => boundToSi(String(value), column, units)
-        to({
-          [`min.${x.id}`]: si(area.x[0], x),
-          [`max.${x.id}`]: si(area.x[1], x),
-          [`min.${y.id}`]: si(area.y[0], y),
-          [`max.${y.id}`]: si(area.y[1], y),
-        })
-      }}
+      onPick={pick}
+      onBrush={brush}
     >
       <p className="text-note text-soft">
         {picture.plot.matching > drawn ? (
