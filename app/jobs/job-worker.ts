@@ -1,4 +1,5 @@
 // A worker process: `npm run worker`, any number of them on any number of hosts.
+import { constants, setPriority } from 'node:os'
 import { pool } from '#app/db.server.ts'
 import { env, requireSettings } from '#app/env.server.ts'
 import { ENGINE_VERSION } from '#engine/version.ts'
@@ -8,6 +9,8 @@ import { JobWorker } from './worker.server.ts'
 Object.assign(pool.options, { query_timeout: 10_000, connectionTimeoutMillis: 5000, keepAlive: true })
 
 requireSettings('worker')
+// Threads take it over: where web process and worker share a machine, people are served first.
+setPriority(constants.priority.PRIORITY_BELOW_NORMAL)
 const worker = new JobWorker({ threads: env.WORKER_THREADS, log: (line) => console.error(line) })
 
 for (const signal of ['SIGTERM', 'SIGINT'] as const)

@@ -7,6 +7,7 @@ const SECTIONS = {
   pool: async () => (await import('./runs.ts')).benchPool(),
   endToEnd: async () => (await import('./runs.ts')).benchEndToEnd(),
   pages: async () => (await import('./runs.ts')).benchPages(),
+  progressRoute: async () => (await import('./progress-route.ts')).benchProgressRoute(),
 } satisfies Record<string, () => Promise<unknown>>
 
 const names = Object.keys(SECTIONS) as (keyof typeof SECTIONS)[]

@@ -6,6 +6,7 @@ import { pool } from '#app/db.server.ts'
 import { queue } from '#app/jobs/queue.server.ts'
 import { migrateDatabase } from '#app/start/migrate.ts'
 import { startCluster } from '#drizzle/local-postgres/cluster.mjs'
+import { freePort } from '#drizzle/local-postgres/processes.mjs'
 
 const PRIVATE = fileURLToPath(new URL('../../.data', import.meta.url))
 
@@ -25,7 +26,19 @@ async function open(): Promise<() => Promise<void>> {
   const folder = join(PRIVATE, 'bench', String(process.pid))
   mkdirSync(folder, { recursive: true })
   const cluster = await startCluster({ folder, packages: join(PRIVATE, 'postgresql'), durable: true })
-  process.env.DATABASE_URL = cluster.url
+  const port = await freePort(0)
+  Object.assign(process.env, {
+    DATABASE_URL: cluster.url,
+    PORT: String(port),
+    HOST: '127.0.0.1',
+    BASE_URL: `http://127.0.0.1:${port}`,
+    SESSION_SECRET: 'only-for-measuring-only-for-measuring',
+    OIDC_ISSUER: 'http://127.0.0.1:1/',
+    OIDC_CLIENT_ID: 'rowfall',
+    OIDC_CLIENT_SECRET: 'only-for-measuring',
+    ROLE_GROUPS: 'engineers=engineer',
+    NODE_ENV: 'production',
+  })
   await migrateDatabase(cluster.url)
   return async () => {
     await (await queue()).stop({ close: false, graceful: false })
