@@ -10,9 +10,9 @@ export type FormOptions = ReturnType<typeof formOptions>
 
 export function formOptions() {
   return {
-    fluids: fluids.map(({ id, name, ashrae, safetyClass, range, criticalTemperature, grades }) => ({
+    fluids: fluids.map(({ id, name, formula, ashrae, safetyClass, range, criticalTemperature, grades }) => ({
       id,
-      label: ashrae && ashrae !== name ? `${name} (${ashrae})` : name,
+      label: fluidLabel(name, formula, ashrae),
       safety: safetyClass?.value ?? '',
       range,
       criticalTemperature,
@@ -57,4 +57,11 @@ export function formOptions() {
       { id: string; label: string; evidence: string; isDefault: boolean; available: boolean }[]
     >,
   }
+}
+
+/** Halogenated fluids go by their refrigerant number, all others by name with the number behind it. */
+function fluidLabel(name: string, formula: string, ashrae: string | undefined): string {
+  const number = ashrae?.replace('-', '')
+  if (!number) return name
+  return /F|Cl/.test(formula) ? number : `${name} (${number})`
 }
