@@ -1,6 +1,6 @@
 // The live scatter plot. Loaded after hydration, and only where a plot is: plotly is larger than the rest together.
 import Plotly from 'plotly.js'
-import { memo, useMemo } from 'react'
+import { memo, useMemo, useRef } from 'react'
 import createPlotlyComponent from 'react-plotly.js/factory'
 import { type ChartTheme, type Scatter, scatterFigure } from './scatter.ts'
 
@@ -34,22 +34,31 @@ export const LiveScatter = memo(function LiveScatter({
     }
   }, [spec, theme, onBrush])
   const style = useMemo(() => ({ width: '100%', height }), [height])
+  // Plotly tells of a selection again when the plot is redrawn; only what a hand has drawn since is meant.
+  const drawn = useRef(false)
   return (
-    <Plot
-      data={data}
-      layout={layout}
-      config={CONFIG}
-      style={style}
-      onClick={(event) => {
-        const id = event.points[0]?.customdata
-        if (typeof id === 'number') onPick?.(id)
+    <div
+      onPointerDownCapture={() => {
+        drawn.current = true
       }}
-      onSelected={(event) => {
-        const range = event?.range as { x?: number[]; y?: number[] } | undefined
-        if (!range?.x || !range.y) return
-        const sorted = (values: number[]) => [...values].sort((a, b) => a - b) as [number, number]
-        onBrush?.({ x: sorted(range.x), y: sorted(range.y) })
-      }}
-    />
+    >
+      <Plot
+        data={data}
+        layout={layout}
+        config={CONFIG}
+        style={style}
+        onClick={(event) => {
+          const id = event.points[0]?.customdata
+          if (typeof id === 'number') onPick?.(id)
+        }}
+        onSelected={(event) => {
+          const range = event?.range as { x?: number[]; y?: number[] } | undefined
+          if (!range?.x || !range.y || !drawn.current) return
+          drawn.current = false
+          const sorted = (values: number[]) => [...values].sort((a, b) => a - b) as [number, number]
+          onBrush?.({ x: sorted(range.x), y: sorted(range.y) })
+        }}
+      />
+    </div>
   )
 })

@@ -1,6 +1,6 @@
 // A scatter plot as data, and its translation into what plotly draws. Pure.
 import type { Annotation, Data, Layout, Shape } from 'plotly.js'
-import { type Axis, axisRange, axisTitle, type Range } from './axes.ts'
+import { type Axis, axisRange, axisTitle, place, type Range } from './axes.ts'
 
 /** Points of one category, in the axes' units. `met` is false where a point misses a limit: it is faded. */
 export type Group = {
@@ -125,7 +125,6 @@ export function scatterFigure(spec: Scatter, theme: ChartTheme): { data: Data[];
       dragmode: 'select',
       newselection: { line: { color: theme.verdigris, width: 1.5, dash: 'solid' } },
       activeselection: { fillcolor: theme.verdigris, opacity: 0.08 },
-      uirevision: `${spec.x.label} ${spec.y.label}`,
     } as Partial<Layout>,
   }
 }
@@ -241,7 +240,7 @@ function limitMarks(spec: Scatter, ranges: { x: Range; y: Range }, theme: ChartT
         showarrow: false,
         font: { size: 12.5, color: theme.copperInk },
         ...(of === 'x'
-          ? { xref: 'x', x: at, xanchor: 'left', xshift: 6, yref: 'paper', y: 1, yanchor: 'top' }
+          ? { xref: 'x', x: at, ...beside(place(limit, range)), yref: 'paper', y: 1, yanchor: 'top' }
           : {
               yref: 'y',
               y: at,
@@ -255,6 +254,10 @@ function limitMarks(spec: Scatter, ranges: { x: Range; y: Range }, theme: ChartT
   }
   return { shapes, annotations }
 }
+
+/** Words to the right of a limit, or to its left where there is no room. */
+const beside = (share: number) =>
+  share > 0.72 ? { xanchor: 'right', xshift: -6 } : { xanchor: 'left', xshift: 6 }
 
 /**
  * The lower left edge: points that no other point beats on both axes. Where less of both is wanted, this is the front.

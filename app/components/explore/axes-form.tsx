@@ -12,10 +12,9 @@ export function AxesForm({ search, choices }: { search: URLSearchParams; choices
   return (
     <Form
       method="get"
-      replace
       preventScrollReset
       className="screen-only flex flex-wrap items-center gap-x-3 gap-y-2 text-note"
-      onChange={(event) => submit(event.currentTarget, { replace: true, preventScrollReset: true })}
+      onChange={(event) => submit(event.currentTarget, { preventScrollReset: true })}
     >
       {kept.map(([key, value]) => (
         <input key={`${key}=${value}`} type="hidden" name={key} value={value} />

@@ -35,19 +35,13 @@ export function FilterBar({
           {filters.map(({ text, href }) => (
             <span key={text} className="tag tag-attention inline-flex items-center gap-1.5">
               {text}
-              <Link
-                to={href}
-                replace
-                preventScrollReset
-                aria-label={`Lift the filter ${text}`}
-                className="font-bold"
-              >
+              <Link to={href} preventScrollReset aria-label={`Lift the filter ${text}`} className="font-bold">
                 ×
               </Link>
             </span>
           ))}
           {filters.length > 1 ? (
-            <Link to={clearHref} replace preventScrollReset className="link">
+            <Link to={clearHref} preventScrollReset className="link">
               Lift all
             </Link>
           ) : null}

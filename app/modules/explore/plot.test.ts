@@ -24,6 +24,7 @@ const input: PlotInput = {
   colour: column('fluid'),
   colourValues: ['r134a', 'r717'],
   limits: { coolantPressureDrop: { max: 60000 }, length: { max: 6 } },
+  ranges: {},
   names: { fluid: { r134a: 'R134a', r717: 'Ammonia' } },
   marks: [{ kind: 'best', label: 'Point 7', id: 7, x: 55000, y: 45 }],
 }
@@ -68,4 +69,11 @@ test('a result colours on the continuous scale, with its ends said', () => {
 test('a mark without a value on an axis is left out', () => {
   const marks = [{ kind: 'selected', label: 'Point 1', id: 1, x: null, y: 3 }] as const
   expect(plotSpec({ ...input, marks }, 'si').marks).toEqual([])
+})
+
+test('a filter leaves out limits and marks beyond it, so that they do not stretch the axes', () => {
+  const spec = plotSpec({ ...input, ranges: { coolantPressureDrop: { max: 40000 } } }, 'si')
+  expect(spec.x.max).toBeUndefined()
+  expect(spec.marks).toEqual([])
+  expect(plotSpec({ ...input, ranges: { coolantPressureDrop: { min: 50000 } } }, 'si').x.max).toBe(60)
 })

@@ -33,6 +33,8 @@ export type PlotInput = {
   /** The values a variable takes, in the order a choice's places count. */
   colourValues: readonly SweptValue[]
   limits: Limits
+  /** The filters, so that a limit or mark they leave out does not stretch the axes. */
+  ranges: Readonly<Record<string, { min?: number; max?: number }>>
   names: Record<string, Record<string, string>>
   marks: readonly {
     kind: Mark['kind']
@@ -44,7 +46,7 @@ export type PlotInput = {
 }
 
 export function plotSpec(input: PlotInput, units: UnitSystem): Scatter {
-  const { columns, x, y, limits } = input
+  const { columns, x, y, limits, ranges } = input
   const { groups, scale } = coloured(input, units)
   const place = new Map(columns.point.map((point, i) => [point, i]))
   const front =
@@ -52,8 +54,8 @@ export function plotSpec(input: PlotInput, units: UnitSystem): Scatter {
       ? columns.front.flatMap((point) => place.get(point) ?? [])
       : []
   return {
-    x: { ...axisOf(x, units), ...boundsOf(x, limits, units) },
-    y: { ...axisOf(y, units), ...boundsOf(y, limits, units) },
+    x: { ...axisOf(x, units), ...inView(boundsOf(x, limits, units), x, input, units) },
+    y: { ...axisOf(y, units), ...inView(boundsOf(y, limits, units), y, input, units) },
     groups,
     groupTitle: input.colour ? input.colour.label : undefined,
     scale,
@@ -65,11 +67,29 @@ export function plotSpec(input: PlotInput, units: UnitSystem): Scatter {
           }
         : undefined,
     marks: input.marks.flatMap((mark) =>
-      mark.x === null || mark.y === null
+      mark.x === null || mark.y === null || !inside(mark.x, ranges[x.id]) || !inside(mark.y, ranges[y.id])
         ? []
         : [{ ...mark, x: shown(mark.x, x, units), y: shown(mark.y, y, units) }],
     ),
   }
+}
+
+const inside = (value: number, range: { min?: number; max?: number } = {}) =>
+  value >= (range.min ?? Number.NEGATIVE_INFINITY) && value <= (range.max ?? Number.POSITIVE_INFINITY)
+
+/** Bounds that the axis' own filter leaves in view. */
+function inView(
+  { min, max }: { min?: number; max?: number },
+  column: PointColumn,
+  { ranges }: PlotInput,
+  units: UnitSystem,
+) {
+  const { min: low, max: high } = ranges[column.id] ?? {}
+  const from = low === undefined ? undefined : shown(low, column, units)
+  const to = high === undefined ? undefined : shown(high, column, units)
+  const seen = (bound: number | undefined) =>
+    bound !== undefined && inside(bound, { min: from, max: to }) ? bound : undefined
+  return { min: seen(min), max: seen(max) }
 }
 
 const lower = (text: string) => text.charAt(0).toLowerCase() + text.slice(1)

@@ -111,7 +111,8 @@ function ExploreRunPage({ page, studyId }: { page: ExploreRun; studyId: string }
   )
   const to = useCallback(
     (change: Parameters<typeof changed>[1]) =>
-      navigate(changed(search, change), { replace: true, preventScrollReset: true }),
+      // Back undoes a filter or another view of the points; looking at one point after another leaves no trail.
+      navigate(changed(search, change), { replace: 'point' in change, preventScrollReset: true }),
     [navigate, search],
   )
   const filtered =

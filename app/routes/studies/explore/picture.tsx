@@ -110,7 +110,6 @@ function PictureChoice({ kind, search }: { kind: PictureKind; search: URLSearchP
         <Link
           key={one}
           to={changed(search, { show: one === 'scatter' ? null : one, x: null, y: null, colour: null })}
-          replace
           preventScrollReset
           aria-current={one === kind ? 'true' : undefined}
           className="rounded-full border border-line px-2.5 py-0.5 text-note font-semibold text-soft hover:text-verdigris-ink aria-[current]:border-verdigris aria-[current]:bg-verdigris-wash aria-[current]:text-verdigris-ink"
@@ -192,7 +191,13 @@ function PictureBody(props: Shared & { filtered: boolean; view: ExploreView }) {
   }
 }
 
-function ScatterPicture({ page, columns, picture, to }: Shared & { picture: Of<'scatter'> }) {
+function ScatterPicture({
+  page,
+  columns,
+  picture,
+  view,
+  to,
+}: Shared & { picture: Of<'scatter'>; view: ExploreView }) {
   const units = useUnits()
   const x = find(columns, picture.x)
   const y = find(columns, picture.y)
@@ -206,17 +211,20 @@ function ScatterPicture({ page, columns, picture, to }: Shared & { picture: Of<'
           colour: columns.find(({ id }) => id === picture.colour) ?? null,
           colourValues: page.variables.find(({ path }) => path === picture.colour)?.values ?? [],
           limits: page.limits,
+          ranges: view.ranges,
           names: page.names,
           marks: plotMarks(page, x, y),
         },
         units,
       ),
-    [page, picture, columns, units, x, y],
+    [page, picture, columns, units, view.ranges, x, y],
   )
   const pick = useCallback((id: number) => to({ point: id }), [to])
   const brush = useCallback(
     (area: { x: [number, number]; y: [number, number] }) => {
-      const si = (value: number, column: PointColumn) => boundToSi(String(value), column, units)
+      // A hand draws to a pixel; more digits than four would only make the filter hard to read.
+      const si = (value: number, column: PointColumn) =>
+        boundToSi(String(Number(value.toPrecision(4))), column, units)
       to({
         [`min.${x.id}`]: si(area.x[0], x),
         [`max.${x.id}`]: si(area.x[1], x),
