@@ -12,13 +12,19 @@ const dotted = (path: readonly PropertyKey[]): string => path.map(String).join('
 
 /** True where a branch of a union failed for more than being the wrong kind of thing altogether. */
 const isMeant = (branch: readonly z.core.$ZodIssue[]): boolean =>
-  branch.length > 0 && !branch.some((issue) => issue.path.length === 0 && issue.code === 'invalid_type')
+  branch.length > 0 &&
+  !branch.some(
+    (issue) => issue.path.length === 0 && (issue.code === 'invalid_type' || issue.code === 'invalid_value'),
+  )
 
 /**
  * Schema issues as faults. Every message in the engine's schemas reads "problem; remedy".
  * An issue about unknown keys gives one fault per key, at that key; of a union, the branch that was meant speaks.
  */
-export function faultsFromIssues(issues: readonly z.core.$ZodIssue[], under: readonly PropertyKey[] = []): Fault[] {
+export function faultsFromIssues(
+  issues: readonly z.core.$ZodIssue[],
+  under: readonly PropertyKey[] = [],
+): Fault[] {
   const faults: Fault[] = []
   for (const issue of issues) {
     const path = [...under, ...issue.path]

@@ -294,7 +294,9 @@ function noteOf(code: NoteCode, point: PointSolver, rows: RowResult[]): Note {
     case 'coolantApproachSmall':
       return note(
         'caution',
-        `The coolant leaves ${three(march.Ts - point.coolantOutlet)} K below saturation; area is very sensitive there.`,
+        Number.isNaN(point.meanTemperatureDifference)
+          ? 'The coolant leaves at saturation: more length takes up no more heat, and mean difference and overall coefficient have no value.'
+          : `The coolant leaves ${three(march.Ts - point.coolantOutlet)} K below saturation; area is very sensitive there.`,
         'balance of this point',
       )
     case 'coolantOutletNearWall':

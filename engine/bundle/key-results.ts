@@ -143,6 +143,11 @@ export const OUTCOMES: readonly Outcome[] = [
     text: 'the equations could not be brought to the required closeness',
     remedy: 'report the case; a neighbouring point usually solves',
   },
+  {
+    code: 'betweenStates',
+    text: 'the duty lies between two steady states, one with the coolant laminar and one with it faster and warmer, and neither has it',
+    remedy: 'a coolant flow clear of the laminar limit: a higher velocity, more passes or a thinner coolant',
+  },
 ]
 
 export const OUTCOME_INDEX: Readonly<Record<string, number>> = Object.fromEntries(

@@ -17,7 +17,7 @@ import { MAX_PASSES, MAX_ROWS } from './point-state.ts'
 import { RowMarch } from './row-march.ts'
 
 /** Relative change of a sweep at which a point stands; what then remains is about a tenth of it. */
-const CLOSE = 1e-9
+const CLOSE = 3e-10
 /** Sweeps after which the quick loop gives way to the bracketed search. */
 const QUICK_SWEEPS = 30
 /** Sweeps that one trial of the bracketed search may take. */
@@ -28,6 +28,8 @@ const SWINGING = 12
 const LONGEST = 1e5
 /** Coolant is not driven faster than this to hold a wall [m/s]. */
 const FASTEST = 100
+/** A bracket of this width without a root has a leap in it. */
+const NARROWEST = 1e-10
 /** Vapour losing more of its pressure than this is refused. */
 const EXHAUSTED = 0.5
 /** Vapour faster than this share of the speed of sound is refused. */
@@ -304,16 +306,23 @@ export class BundleMarch extends RowMarch {
     if (!(fHigh > 0)) return by === BY_FLOW ? OUTCOME.noVelocityHoldsWall : OUTCOME.dutyNotReached
     let fLow = this.trial(by, low, total, cooled, outlet)
     if (fLow > 0) return OUTCOME.notSolved
+    // Where the vapour runs out of pressure short of the root, the duty may leap over it: no root, and no mistake.
+    let exhausted = this.exhausted
+    let settled = true
     let stayed = 0
-    for (let n = 0; n < 80; n++) {
+    let width = high - low
+    for (let n = 0; high - low > NARROWEST && n < 150; n++) {
       let x = high - (fHigh * (high - low)) / (fHigh - fLow)
-      const edge = 1e-3 * (high - low)
-      if (!(x > low + edge && x < high - edge)) {
-        if (n % 3 === 2 || !Number.isFinite(x)) x = 0.5 * (low + high)
-        else x = Math.min(high - edge, Math.max(low + edge, x))
+      if (n % 3 === 2) {
+        // Three steps must have halved the bracket.
+        if (high - low > 0.5 * width || !Number.isFinite(x)) x = 0.5 * (low + high)
+        width = high - low
       }
+      const edge = 1e-3 * (high - low)
+      x = Math.min(high - edge, Math.max(low + edge, x))
       const f = this.trial(by, x, total, cooled, outlet)
-      if (Math.abs(f) < CLOSE || high - low < 1e-12) return this.moved < 1e-6 ? 0 : OUTCOME.notSolved
+      settled = this.moved < 10 * CLOSE
+      if (Math.abs(f) < CLOSE && settled) return 0
       if (f > 0) {
         high = x
         fHigh = f
@@ -322,11 +331,17 @@ export class BundleMarch extends RowMarch {
       } else {
         low = x
         fLow = f
+        exhausted = this.exhausted
         if (stayed < 0) fHigh *= 0.5
         stayed = -1
       }
     }
-    return OUTCOME.notSolved
+    if (exhausted) return OUTCOME.vapourPressureExhausted
+    return settled ? OUTCOME.betweenStates : OUTCOME.notSolved
+  }
+
+  private get exhausted(): boolean {
+    return this.clamped || this.vapourDrop > EXHAUSTED * this.inletPressure
   }
 
   private leastSpecificHeat(): number {
@@ -337,8 +352,7 @@ export class BundleMarch extends RowMarch {
 
   private refusal(): number {
     const { s } = this
-    if (this.clamped || this.vapourDrop > EXHAUSTED * this.inletPressure)
-      return OUTCOME.vapourPressureExhausted
+    if (this.exhausted) return OUTCOME.vapourPressureExhausted
     if (this.fastestOverSonic > TOO_FAST) return OUTCOME.vapourTooFast
     if (!Number.isFinite(this.duty)) return OUTCOME.notSolved
     if (!s.fluid.fixed && this.lowestWall < s.fluid.minTemperature) return OUTCOME.wallBelowRange

@@ -288,10 +288,11 @@ export class PointSolver {
     fillCoolant(march.s.coolant as NonNullable<typeof march.s.coolant>, march.s.inletTemperature, this.water)
     return (march.flow * march.s.passes) / (this.water[COOLANT_RHO] * march.boreArea * march.tubes)
   }
-  /** Log mean on the inlet saturation temperature. */
+  /** Log mean on the inlet saturation temperature; NaN where the coolant leaves at saturation. */
   get meanTemperatureDifference(): number {
     const first = this.march.Ts - this.march.s.inletTemperature
     const last = this.march.Ts - this.coolantOutlet
+    if (!(last > 1e-9 * first)) return Number.NaN
     const ratio = first / last
     return Math.abs(ratio - 1) < 1e-9 ? first : (first - last) / Math.log(ratio)
   }

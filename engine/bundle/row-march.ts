@@ -320,6 +320,7 @@ export class RowMarch {
   protected start(cooled: boolean): void {
     const { s } = this
     this.first = true
+    this.heed = 1
     this.rowX[0] = cooled ? 0.35 * (this.Ts - s.inletTemperature) : s.wallSubcooling
     for (let r = 0; r < s.rows; r++) {
       this.rowFlux[r] = 0

@@ -59,7 +59,12 @@ const choice = fc.record({
 /** Cases that pass `parseCase`, most of them of sizes that are built. */
 export const cases: fc.Arbitrary<CaseInput> = choice.map((c) => {
   const Ts = within(c.fluid.range, c.warmth)
-  const coolest = Math.max(c.coolant.range[0], c.coolant.freezingTemperature + 0.5)
+  // Mostly above the condensing fluid's own lowest temperature.
+  const coolest = Math.max(
+    c.coolant.range[0],
+    c.coolant.freezingTemperature + 0.5,
+    c.warmth > 0.2 ? c.fluid.range[0] : 0,
+  )
   const inletTemperature = Math.min(c.coolant.range[1] - 0.5, Math.max(coolest, Ts - c.below))
   const cooled = c.drive !== 'wallSubcooling' && inletTemperature < Ts - 0.2
   const byCoolant = cooled && c.drive === 'coolant'
@@ -86,7 +91,11 @@ export const cases: fc.Arbitrary<CaseInput> = choice.map((c) => {
     ...(size ? { duty } : {}),
     drive: byCoolant
       ? { kind: 'coolant', ...side, ...flow }
-      : { kind: 'wallSubcooling', wallSubcooling: c.subcooling, ...(cooled ? { coolant: side } : {}) },
+      : {
+          kind: 'wallSubcooling',
+          wallSubcooling: Math.min(c.subcooling, Math.max(0.1, 0.9 * (Ts - c.fluid.range[0]))),
+          ...(cooled ? { coolant: side } : {}),
+        },
     tube: {
       outsideDiameter: c.diameter,
       wallThickness: c.diameter * c.wall,
