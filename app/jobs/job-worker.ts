@@ -22,3 +22,5 @@ for (const signal of ['SIGTERM', 'SIGINT'] as const)
 console.log(`Worker: ${worker.pool.threads} threads, engine ${ENGINE_VERSION}.`)
 await worker.work()
 await pool.end()
+// Timers of answered queries would hold the process until their time.
+process.exit(0)

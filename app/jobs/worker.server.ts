@@ -2,6 +2,7 @@
 import { hostname } from 'node:os'
 import { and, eq, inArray, isNull, lt, ne, sql } from 'drizzle-orm'
 import { db } from '#app/db.server.ts'
+import { dropOldPoints } from '#app/modules/runs/retention.server.ts'
 import { failRun } from '#app/modules/runs/runs.server.ts'
 import { run, worker } from '#drizzle/schema/index.ts'
 import { ENGINE_VERSION } from '#engine/version.ts'
@@ -183,6 +184,7 @@ export class JobWorker {
     await db
       .delete(worker)
       .where(lt(worker.seenAt, sql`now() - make_interval(hours => ${FORGET_WORKER_HOURS})`))
+    await dropOldPoints()
     for (const runId of await hopelessRuns())
       await failRun(
         runId,

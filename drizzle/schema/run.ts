@@ -43,6 +43,8 @@ export const run = pgTable(
     endedAt: moment('ended_at'),
     // Set while the run is held: its chunks leave the queue until it is resumed.
     pausedAt: moment('paused_at'),
+    // Set when its points have left by the retention policy; counts, best point and full results stay.
+    pointsDroppedAt: moment('points_dropped_at'),
     // SHA-256 over the stored results in point order: the same for any number of workers, order or interruption.
     contentHash: text('content_hash'),
     bestPoint: integer('best_point'),

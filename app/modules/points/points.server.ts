@@ -47,6 +47,11 @@ class Points {
 
   static async of(runId: string): Promise<Points> {
     const run = await getRun(runId)
+    if (run.pointsDroppedAt)
+      throw new AppError(
+        'not-found',
+        'The points of this run have left by the retention policy. Its counts and the full results of its best point are kept; run the study again for its points.',
+      )
     const [plan, stored] = await Promise.all([planOfRevision(run.revisionId), storedPoints(run)])
     return new Points(run, plan, stored)
   }

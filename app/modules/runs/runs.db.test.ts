@@ -10,7 +10,7 @@ import {
   pointSheet,
   refinedBest,
 } from '#app/modules/points/points.server.ts'
-import { auditEntry, pointColumn, run, runChunk } from '#drizzle/schema/index.ts'
+import { appSetting, auditEntry, pointColumn, run, runChunk } from '#drizzle/schema/index.ts'
 import { KEY_RESULT_INDEX, KEY_RESULTS, OUTCOME_INDEX } from '#engine/bundle/key-results.ts'
 import { COLUMNS, evaluateRange } from '#engine/sweep/evaluate-range.ts'
 import { ENGINE_VERSION } from '#engine/version.ts'
@@ -18,6 +18,7 @@ import { acting, definition, ended, plantRun, storedOnce, until } from '#tests/c
 import { chunkRange } from './chunks.ts'
 import { drainWorker, listOpenRuns, listWorkers } from './operations.server.ts'
 import { runProgress } from './progress.server.ts'
+import { dropOldPoints, RETENTION_SETTING } from './retention.server.ts'
 import { planOfRevision } from './run-plan.server.ts'
 import {
   cancelRun,
@@ -236,6 +237,23 @@ test('a failed run says why, and an administrator’s retry finishes it', async 
   await retryRun(planned.id, acting)
   employ()
   expect((await ended(planned.id)).state).toBe('done')
+})
+
+test('points leave by the month when the policy says so; counts and the best point stay', async () => {
+  employ()
+  const old = await ended((await plantRun(SMALL)).id)
+  const kept = await ended((await plantRun(SMALL)).id)
+  await db.execute(sql`select ensure_point_column_partition('2020-02-01')`)
+  await db.update(pointColumn).set({ plannedOn: '2020-02-10' }).where(eq(pointColumn.runId, old.id))
+  await db.update(run).set({ plannedOn: '2020-02-10' }).where(eq(run.id, old.id))
+  expect(await dropOldPoints()).toBe(0)
+  await db.insert(appSetting).values({ key: RETENTION_SETTING, value: 12 })
+  expect(await dropOldPoints()).toBe(1)
+  expect(await dropOldPoints()).toBe(0)
+  await expect(pageOfPoints(old.id)).rejects.toThrow(/retention policy/)
+  expect(await runProgress(old.id)).toMatchObject({ state: 'done', done: POINTS })
+  expect(await pointSheet(old.id, old.bestPoint as number)).toMatchObject({ recorded: true })
+  expect((await pageOfPoints(kept.id)).matching).toBe(POINTS)
 })
 
 test('an administrator sees what runs where, and lets a worker end', async () => {

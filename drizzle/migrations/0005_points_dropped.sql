@@ -1,0 +1,1 @@
+ALTER TABLE "run" ADD COLUMN "points_dropped_at" timestamp with time zone;
