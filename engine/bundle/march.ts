@@ -28,8 +28,9 @@ const SWINGING = 12
 const LONGEST = 1e5
 /** Coolant is not driven faster than this to hold a wall [m/s]. */
 const FASTEST = 100
-/** A bracket of this width without a root has a leap in it. */
-const NARROWEST = 1e-10
+/** A bracket of this width across which the duty still changes by more than this has a leap in it. */
+const NARROWEST = 1e-13
+const LEAP = 1e-5
 /** Vapour losing more of its pressure than this is refused. */
 const EXHAUSTED = 0.5
 /** Vapour faster than this share of the speed of sound is refused. */
@@ -308,7 +309,7 @@ export class BundleMarch extends RowMarch {
     if (fLow > 0) return OUTCOME.notSolved
     // Where the vapour runs out of pressure short of the root, the duty may leap over it: no root, and no mistake.
     let exhausted = this.exhausted
-    let settled = true
+    let missing = 0
     let stayed = 0
     let width = high - low
     for (let n = 0; high - low > NARROWEST && n < 150; n++) {
@@ -321,8 +322,8 @@ export class BundleMarch extends RowMarch {
       const edge = 1e-3 * (high - low)
       x = Math.min(high - edge, Math.max(low + edge, x))
       const f = this.trial(by, x, total, cooled, outlet)
-      settled = this.moved < 10 * CLOSE
-      if (Math.abs(f) < CLOSE && settled) return 0
+      missing = Math.abs(f)
+      if (missing < CLOSE && this.moved < 10 * CLOSE) return 0
       if (f > 0) {
         high = x
         fHigh = f
@@ -337,7 +338,7 @@ export class BundleMarch extends RowMarch {
       }
     }
     if (exhausted) return OUTCOME.vapourPressureExhausted
-    return settled ? OUTCOME.betweenStates : OUTCOME.notSolved
+    return high - low <= NARROWEST && missing > LEAP ? OUTCOME.betweenStates : OUTCOME.notSolved
   }
 
   private get exhausted(): boolean {
