@@ -3,6 +3,7 @@ import { afterAll, expect, test } from 'vitest'
 import { db, pool } from '#app/db.server.ts'
 import { type ChunkJob, chunkQueue, type Lease, queue } from '#app/jobs/queue.server.ts'
 import { JobWorker } from '#app/jobs/worker.server.ts'
+import { runChanges } from '#app/modules/points/changes.server.ts'
 import {
   aggregates,
   pageOfPoints,
@@ -209,7 +210,20 @@ test('a run again is a new run of the same revision with the same content', asyn
   const first = await ended((await plantRun(SMALL, 200)).id)
   const again = await runAgain(first.id, acting)
   expect(again.id).not.toBe(first.id)
-  expect((await ended(again.id)).contentHash).toBe(first.contentHash)
+  const second = await ended(again.id)
+  expect(second.contentHash).toBe(first.contentHash)
+  expect(await runChanges(first.id, second.id)).toMatchObject({ outcomes: [], columns: [] })
+
+  // As if an earlier engine had found another duty at one point and none at another.
+  await db.execute(sql`
+    update point_column set vals[3] = vals[3] * 2, vals[5] = 'NaN'
+    where run_id = ${first.id} and "column" = 'tube_mass_kg' and chunk = 1`)
+  await db.update(run).set({ contentHash: 'of an earlier engine' }).where(eq(run.id, first.id))
+  const changed = await runChanges(first.id, second.id)
+  expect(changed.outcomes).toEqual([])
+  expect(changed.columns).toEqual([
+    { id: 'tubeMass', points: 2, largest: expect.objectContaining({ point: 202, share: 0.5 }) },
+  ])
 })
 
 test('a run of another engine version is not taken, and its page says that it waits', async () => {
