@@ -3,7 +3,15 @@ import { renderToString } from 'react-dom/server'
 import { expect, test } from 'vitest'
 import { axisRange, axisTitle, place, ticks } from './axes.ts'
 import { LineChart } from './line-chart.tsx'
-import { beyond, type ChartTheme, lowerFront, type Scatter, scatterFigure, scatterRanges } from './scatter.ts'
+import {
+  beyond,
+  type ChartTheme,
+  lowerFront,
+  pointerShapes,
+  type Scatter,
+  scatterFigure,
+  scatterRanges,
+} from './scatter.ts'
 import { ScatterPlot } from './scatter-plot.tsx'
 
 const theme: ChartTheme = {
@@ -93,6 +101,18 @@ test('on a logarithmic axis the limit’s line stands at the value and its words
   expect(layout.xaxis?.type).toBe('log')
   expect(layout.shapes?.[1]).toMatchObject({ x0: 60 })
   expect(layout.annotations?.[0].x).toBeCloseTo(Math.log10(60), 12)
+})
+
+test('a point looked at is a shape of fixed size, so that the points need not be drawn anew', () => {
+  const shapes = pointerShapes([{ kind: 'selected', label: 'Point 4', x: 20, y: 60, id: 4 }], theme)
+  expect(shapes).toHaveLength(2)
+  expect(shapes[1]).toMatchObject({
+    type: 'circle',
+    xsizemode: 'pixel',
+    xanchor: 20,
+    yanchor: 60,
+    line: { color: theme.copper },
+  })
 })
 
 test('no trace needs evaluated code: all are SVG scatter', () => {

@@ -2,12 +2,14 @@
 import Plotly from 'plotly.js'
 import { memo, useMemo, useRef } from 'react'
 import createPlotlyComponent from 'react-plotly.js/factory'
-import { type ChartTheme, type Scatter, scatterFigure } from './scatter.ts'
+import { type ChartTheme, type Mark, pointerShapes, type Scatter, scatterFigure } from './scatter.ts'
 
 const Plot = createPlotlyComponent(Plotly)
 
 export type LiveScatterProps = {
   spec: Scatter
+  /** Points looked at, which may change without the plot being drawn anew. */
+  pointers: readonly Mark[]
   theme: ChartTheme
   height: number
   onPick?: (id: number) => void
@@ -19,20 +21,22 @@ const CONFIG = { displayModeBar: false, responsive: true, doubleClick: false, sh
 
 export const LiveScatter = memo(function LiveScatter({
   spec,
+  pointers,
   theme,
   height,
   onPick,
   onBrush,
 }: LiveScatterProps) {
-  const { data, layout } = useMemo(() => {
-    const figure = scatterFigure(spec, theme)
+  const figure = useMemo(() => scatterFigure(spec, theme), [spec, theme])
+  const layout = useMemo(() => {
     // A finger that drags means to scroll the page.
     const coarse = matchMedia('(pointer: coarse)').matches
     return {
-      ...figure,
-      layout: { ...figure.layout, dragmode: onBrush && !coarse ? 'select' : false } as const,
-    }
-  }, [spec, theme, onBrush])
+      ...figure.layout,
+      shapes: [...(figure.layout.shapes ?? []), ...pointerShapes(pointers, theme)],
+      dragmode: onBrush && !coarse ? 'select' : false,
+    } as const
+  }, [figure, pointers, theme, onBrush])
   const style = useMemo(() => ({ width: '100%', height }), [height])
   // Plotly tells of a selection again when the plot is redrawn; only what a hand has drawn since is meant.
   const drawn = useRef(false)
@@ -43,7 +47,7 @@ export const LiveScatter = memo(function LiveScatter({
       }}
     >
       <Plot
-        data={data}
+        data={figure.data}
         layout={layout}
         config={CONFIG}
         style={style}

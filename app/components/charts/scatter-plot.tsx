@@ -2,7 +2,7 @@
 import { type ComponentType, memo, type ReactNode, useEffect, useState } from 'react'
 import { along, down, Frame } from './frame.tsx'
 import type { LiveScatterProps } from './plotly.client.tsx'
-import { type Scatter, SYMBOLS, scatterRanges } from './scatter.ts'
+import { type Mark, type Scatter, SYMBOLS, scatterRanges } from './scatter.ts'
 import { useChartTheme } from './theme.ts'
 
 /** More marks than this would weigh down the page's first answer; the live plot draws all it is given. */
@@ -11,6 +11,7 @@ const FIRST_MARKS = 1200
 export function ScatterPlot({
   name,
   spec,
+  pointers = [],
   height = 380,
   onPick,
   onBrush,
@@ -19,6 +20,8 @@ export function ScatterPlot({
   /** What the plot is called for those who do not see it. */
   name: string
   spec: Scatter
+  /** Points looked at: selected, pinned. */
+  pointers?: readonly Mark[]
   height?: number
   onPick?: LiveScatterProps['onPick']
   /** A box drawn over the points, in the axes' units. */
@@ -42,12 +45,12 @@ export function ScatterPlot({
   }, [])
   return (
     <figure aria-label={name} className="grid gap-2">
-      <Legend spec={spec} />
+      <Legend spec={spec} pointers={pointers} />
       <div style={{ minHeight: height }}>
         {Live && theme ? (
-          <Live {...{ spec, theme, height, onPick, onBrush }} />
+          <Live {...{ spec, pointers, theme, height, onPick, onBrush }} />
         ) : (
-          <FirstScatter {...{ spec, height }} />
+          <FirstScatter {...{ spec, pointers, height }} />
         )}
       </div>
       {failed ? (
@@ -75,7 +78,15 @@ function keepStylesOut(): void {
   }
 }
 
-const FirstScatter = memo(function FirstScatter({ spec, height }: { spec: Scatter; height: number }) {
+const FirstScatter = memo(function FirstScatter({
+  spec,
+  pointers,
+  height,
+}: {
+  spec: Scatter
+  pointers: readonly Mark[]
+  height: number
+}) {
   const ranges = scatterRanges(spec)
   const total = spec.groups.reduce((sum, group) => sum + group.x.length, 0)
   const every = Math.max(1, Math.ceil(total / FIRST_MARKS))
@@ -110,7 +121,7 @@ const FirstScatter = memo(function FirstScatter({ spec, height }: { spec: Scatte
           strokeWidth="1.6"
         />
       ) : null}
-      {spec.marks.map((mark) => (
+      {[...pointers, ...spec.marks].map((mark) => (
         <g key={mark.kind + mark.label}>
           <path
             d={dot(mark.x, mark.y)}
@@ -136,8 +147,8 @@ const GLYPHS: Record<(typeof SYMBOLS)[number], string> = {
 }
 
 /** What colours and shapes stand for, in HTML so that it wraps and is read. */
-function Legend({ spec }: { spec: Scatter }) {
-  const marks = [...new Map(spec.marks.map((mark) => [mark.kind, mark])).values()]
+function Legend({ spec, pointers }: { spec: Scatter; pointers: readonly Mark[] }) {
+  const marks = [...new Map([...pointers, ...spec.marks].map((mark) => [mark.kind, mark])).values()]
   return (
     <div className="flex flex-wrap items-center gap-x-4 gap-y-1 px-1 text-note text-soft">
       {spec.groupTitle ? <span className="font-semibold">{spec.groupTitle}</span> : null}

@@ -183,25 +183,47 @@ function frontTrace(front: { x: readonly number[]; y: readonly number[] }, theme
 
 /** A ring on a halo of the ground, so that it stands out of a crowd of points. */
 function markTraces(mark: Mark, theme: ChartTheme, hover: (head: string) => string): Data[] {
-  const look = {
-    best: { symbol: 'circle-open-dot', size: 16, color: theme.ink },
-    selected: { symbol: 'circle-open', size: 20, color: theme.copper },
-    refined: { symbol: 'diamond-open-dot', size: 17, color: theme.ink },
-    pinned: { symbol: 'square-open', size: 16, color: theme.verdigris },
-  }[mark.kind]
-  const ring = (color: string, width: number, size: number, symbol: string) => ({
+  const symbol = mark.kind === 'refined' ? 'diamond-open-dot' : 'circle-open-dot'
+  const ring = (color: string, width: number, shape: string) => ({
     type: 'scatter',
     mode: 'markers',
     name: mark.label,
     x: [mark.x],
     y: [mark.y],
     customdata: [mark.id],
-    marker: { symbol, size, color, line: { width, color } },
+    marker: { symbol: shape, size: 16, color, line: { width, color } },
   })
   return [
-    { ...ring(theme.sheet, 7, look.size, look.symbol.replace('-dot', '')), hoverinfo: 'skip' } as Data,
-    { ...ring(look.color, 2.5, look.size, look.symbol), hovertemplate: hover(mark.label) } as Data,
+    { ...ring(theme.sheet, 7, symbol.replace('-dot', '')), hoverinfo: 'skip' } as Data,
+    { ...ring(theme.ink, 2.5, symbol), hovertemplate: hover(mark.label) } as Data,
   ]
+}
+
+/**
+ * Rings around points that are looked at. They are shapes, not traces: a shape is drawn without drawing the points
+ * anew, so that looking at one point after another stays quick.
+ */
+export function pointerShapes(pointers: readonly Mark[], theme: ChartTheme): Partial<Shape>[] {
+  const ring = (mark: Mark, size: number, color: string, width: number): Partial<Shape> =>
+    ({
+      type: mark.kind === 'pinned' ? 'rect' : 'circle',
+      layer: 'above',
+      xref: 'x',
+      yref: 'y',
+      xsizemode: 'pixel',
+      ysizemode: 'pixel',
+      xanchor: mark.x,
+      yanchor: mark.y,
+      x0: -size,
+      x1: size,
+      y0: -size,
+      y1: size,
+      line: { color, width },
+    }) as Partial<Shape>
+  return pointers.flatMap((mark) => {
+    const [size, color] = mark.kind === 'pinned' ? [8, theme.verdigris] : [10, theme.copper]
+    return [ring(mark, size, theme.sheet, 6), ring(mark, size, color, 2.5)]
+  })
 }
 
 function limitMarks(spec: Scatter, ranges: { x: Range; y: Range }, theme: ChartTheme) {

@@ -46,7 +46,7 @@ export type PlotInput = {
 }
 
 export function plotSpec(input: PlotInput, units: UnitSystem): Scatter {
-  const { columns, x, y, limits, ranges } = input
+  const { columns, x, y, limits } = input
   const { groups, scale } = coloured(input, units)
   const place = new Map(columns.point.map((point, i) => [point, i]))
   const front =
@@ -66,12 +66,21 @@ export function plotSpec(input: PlotInput, units: UnitSystem): Scatter {
             y: front.map((i) => shown(columns.y[i], y, units)),
           }
         : undefined,
-    marks: input.marks.flatMap((mark) =>
-      mark.x === null || mark.y === null || !inside(mark.x, ranges[x.id]) || !inside(mark.y, ranges[y.id])
-        ? []
-        : [{ ...mark, x: shown(mark.x, x, units), y: shown(mark.y, y, units) }],
-    ),
+    marks: placedMarks(input.marks, input, units),
   }
+}
+
+/** Marks with a place on both axes, inside the filters. */
+export function placedMarks(
+  marks: PlotInput['marks'],
+  { x, y, ranges }: Pick<PlotInput, 'x' | 'y' | 'ranges'>,
+  units: UnitSystem,
+): Mark[] {
+  return marks.flatMap((mark) =>
+    mark.x === null || mark.y === null || !inside(mark.x, ranges[x.id]) || !inside(mark.y, ranges[y.id])
+      ? []
+      : [{ ...mark, x: shown(mark.x, x, units), y: shown(mark.y, y, units) }],
+  )
 }
 
 const inside = (value: number, range: { min?: number; max?: number } = {}) =>

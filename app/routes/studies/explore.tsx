@@ -34,6 +34,7 @@ import { PointFigures } from './explore/figures.tsx'
 import { PictureSheet } from './explore/picture.tsx'
 import { PinnedPoints } from './explore/pinned-points.tsx'
 import { PointMargin, pointName } from './explore/point-margin.tsx'
+import { useSteady } from './explore/use-steady.ts'
 import '#app/components/explore/explore.css'
 
 export async function loader({ params, request }: Route.LoaderArgs) {
@@ -83,7 +84,8 @@ function ExploreRunPage({ page, studyId }: { page: ExploreRun; studyId: string }
   const navigation = useNavigation()
   const revalidator = useRevalidator()
   const progress = useRunProgress(page.progress, revalidator.revalidate)
-  const columns = useMemo(() => pointColumns(page.variables), [page.variables])
+  const variables = useSteady(page.variables, page.run.id)
+  const columns = useMemo(() => pointColumns(variables), [variables])
   const view = useMemo(() => parseView(search, columns), [search, columns])
   const swept = page.variables.map(({ path }) => path)
   const { best, selected, run } = page

@@ -14,7 +14,7 @@ import { Sheet } from '#app/components/ui/page.tsx'
 import { type PointColumn, shown, unitOf } from '#app/modules/explore/columns.ts'
 import type { ExploreRun } from '#app/modules/explore/explore.server.ts'
 import type { Picture } from '#app/modules/explore/picture.server.ts'
-import { boundsOf, type PlotInput, plotSpec } from '#app/modules/explore/plot.ts'
+import { boundsOf, type PlotInput, placedMarks, plotSpec } from '#app/modules/explore/plot.ts'
 import type { GridAxis } from '#app/modules/explore/summaries.ts'
 import {
   boundToSi,
@@ -30,6 +30,7 @@ import {
 import { KEY_RESULT_INDEX } from '#engine/bundle/key-results.ts'
 import type { UnitSystem } from '#engine/units.ts'
 import { pointName } from './point-margin.tsx'
+import { useSteady } from './use-steady.ts'
 
 type Of<Kind extends PictureKind> = Extract<Picture, { kind: Kind }>
 type To = (change: Parameters<typeof changedSearch>[1]) => void
@@ -194,13 +195,21 @@ function PictureBody(props: Shared & { filtered: boolean; view: ExploreView }) {
 function ScatterPicture({
   page,
   columns,
-  picture,
+  picture: latest,
   view,
+  search,
   to,
 }: Shared & { picture: Of<'scatter'>; view: ExploreView }) {
+  const about = `${page.run.id} ${page.aggregates.stored} ${pictureSearch(search)}`
+  const picture = useSteady(latest, about)
+  const ranges = useSteady(view.ranges, about)
   const units = useUnits()
   const x = find(columns, picture.x)
   const y = find(columns, picture.y)
+  const { limits, names, variables, best, refined } = useSteady(
+    page,
+    `${page.run.id} ${page.aggregates.stored}`,
+  )
   const spec = useMemo(
     () =>
       plotSpec(
@@ -209,16 +218,28 @@ function ScatterPicture({
           x,
           y,
           colour: columns.find(({ id }) => id === picture.colour) ?? null,
-          colourValues: page.variables.find(({ path }) => path === picture.colour)?.values ?? [],
-          limits: page.limits,
-          ranges: view.ranges,
-          names: page.names,
-          marks: plotMarks(page, x, y),
+          colourValues: variables.find(({ path }) => path === picture.colour)?.values ?? [],
+          limits,
+          ranges,
+          names,
+          marks: [
+            ...(refined?.improved ? [markOf('refined', refined, x, y)] : []),
+            ...(best ? [{ ...markOf('best', best, x, y), label: `Point ${best.point}, least` }] : []),
+          ],
         },
         units,
       ),
-    [page, picture, columns, units, view.ranges, x, y],
+    [picture, columns, limits, ranges, names, variables, best, refined, units, x, y],
   )
+  const { selected, pinned } = page
+  const pointers = useMemo(() => {
+    const others = pinned.filter(({ point }) => point !== selected?.point && point !== best?.point)
+    const marks = [
+      ...others.map((one) => markOf('pinned', one, x, y)),
+      ...(selected && selected.point !== best?.point ? [markOf('selected', selected, x, y)] : []),
+    ]
+    return placedMarks(marks, { x, y, ranges }, units)
+  }, [pinned, selected, best, x, y, ranges, units])
   const pick = useCallback((id: number) => to({ point: id }), [to])
   const brush = useCallback(
     (area: { x: [number, number]; y: [number, number] }) => {
@@ -239,6 +260,7 @@ function ScatterPicture({
     <ScatterPlot
       name={`${y.label} against ${x.label.toLowerCase()}, ${drawn} points`}
       spec={spec}
+      pointers={pointers}
       onPick={pick}
       onBrush={brush}
     >
@@ -258,23 +280,20 @@ function ScatterPicture({
   )
 }
 
-/** The points that stand out: selected, pinned, refined, and on top of them the least. */
-function plotMarks(page: ExploreRun, x: PointColumn, y: PointColumn): PlotInput['marks'] {
-  const { selected, refined, best, pinned } = page
-  const mark = (kind: Mark['kind'], one: Placed) => ({
+/** The part of the address that the picture hangs on. */
+function pictureSearch(search: URLSearchParams): string {
+  const apart = new Set(['point', 'pin', 'page', 'sort', 'dir', 'column', 'all'])
+  return new URLSearchParams([...search].filter(([key]) => !apart.has(key))).toString()
+}
+
+function markOf(kind: Mark['kind'], one: Placed, x: PointColumn, y: PointColumn): PlotInput['marks'][number] {
+  return {
     kind,
     label: pointName(one.point),
     id: typeof one.point === 'number' ? one.point : null,
     x: valueOn(x, one),
     y: valueOn(y, one),
-  })
-  const others = pinned.filter(({ point }) => point !== selected?.point && point !== best?.point)
-  return [
-    ...others.map((one) => mark('pinned', one)),
-    ...(refined?.improved ? [mark('refined', refined)] : []),
-    ...(selected && selected.point !== best?.point ? [mark('selected', selected)] : []),
-    ...(best ? [{ ...mark('best', best), label: `Point ${best.point}, least` }] : []),
-  ]
+  }
 }
 
 type Placed = {
