@@ -7,7 +7,10 @@ const SECTIONS = {
   pool: async () => (await import('./runs.ts')).benchPool(),
   endToEnd: async () => (await import('./runs.ts')).benchEndToEnd(),
   pages: async () => (await import('./runs.ts')).benchPages(),
+  transport: async () => ({ browserDecodeMs: null }),
   progressRoute: async () => (await import('./progress-route.ts')).benchProgressRoute(),
+  optimiser: async () => ({ rowMarches: null, exhaustiveRowMarches: null, gap: null }),
+  workbook: async () => (await import('./workbook.ts')).benchWorkbook(),
 } satisfies Record<string, () => Promise<unknown>>
 
 const names = Object.keys(SECTIONS) as (keyof typeof SECTIONS)[]
