@@ -1,0 +1,409 @@
+// Up to six studies side by side: their candidates, the inputs in which they differ, limits and fronts.
+import type { ReactNode } from 'react'
+import { Form, Link } from 'react-router'
+import { BundleThumbnail } from '#app/components/bundle-drawing/bundle-drawing.tsx'
+import { bundleGeometry } from '#app/components/bundle-drawing/layout.ts'
+import { LineChart } from '#app/components/charts/line-chart.tsx'
+import { Given } from '#app/components/sheet/entries.tsx'
+import { LimitBounds } from '#app/components/sheet/limit-notes.tsx'
+import { Said } from '#app/components/sheet/said.tsx'
+import { PointsDone, RunStateTag } from '#app/components/study/run-state.tsx'
+import { Button } from '#app/components/ui/button.tsx'
+import { MarginNote } from '#app/components/ui/margin-note.tsx'
+import { Digits, Quantity, useUnits } from '#app/components/ui/number.tsx'
+import { EmptyState, PageHead, PlainPage, Sheet } from '#app/components/ui/page.tsx'
+import { Tag } from '#app/components/ui/tag.tsx'
+import { projectContext } from '#app/http/context.ts'
+import { chosenOf } from '#app/modules/comparisons/chosen.ts'
+import {
+  comparedStudies,
+  MOST_COMPARED,
+  type RunCandidate,
+} from '#app/modules/comparisons/comparison.server.ts'
+import { type ComparedRow, comparedRows } from '#app/modules/comparisons/differences.ts'
+import { keyResultOf, limitStandings } from '#app/modules/explore/limits.ts'
+import { type Entry, sheetInputs, sheetResults } from '#app/modules/explore/sheet.ts'
+import { listStudies } from '#app/modules/studies/studies.server.ts'
+import { LIMITS } from '#engine/sweep/limits.ts'
+import { OBJECTIVE_LABELS } from '#engine/sweep/objective.ts'
+import { displayUnit, formatQuantity, toDisplay } from '#engine/units.ts'
+import type { Route } from './+types/compare'
+
+export const meta: Route.MetaFunction = () => [{ title: 'Compare studies · Rowfall' }]
+
+export const handle = {
+  crumbs: ({ project }: Route.ComponentProps['loaderData']) => [
+    { label: project.name, to: `/projects/${project.id}` },
+    { label: 'Compare', to: `/projects/${project.id}/compare` },
+  ],
+}
+
+export async function loader({ params, request, context }: Route.LoaderArgs) {
+  const chosen = new URL(request.url).searchParams.getAll('study')
+  const [compared, listed] = await Promise.all([
+    comparedStudies(params.projectId, chosen),
+    listStudies(params.projectId),
+  ])
+  const { projectId, projectName } = context.get(projectContext)
+  return {
+    project: { id: projectId, name: projectName },
+    most: MOST_COMPARED,
+    listed: listed
+      .filter(({ run }) => run)
+      .map(({ id, name }) => ({ id, name, chosen: chosen.includes(id) })),
+    compared,
+  }
+}
+
+type Compared = Extract<Route.ComponentProps['loaderData']['compared'][number], { objective: unknown }>
+
+export default function Compare({ loaderData }: Route.ComponentProps) {
+  const { compared, listed, most } = loaderData
+  const units = useUnits()
+  const studies = compared.filter((study): study is Compared => study.run !== null)
+  const without = compared.filter((study) => study.run === null)
+  if (studies.length < 2)
+    return (
+      <PlainPage>
+        <PageHead
+          title="Choose the studies to set side by side"
+          reason={`Two to ${most}, each with a run.`}
+        />
+        {listed.length < 2 ? (
+          <EmptyState title="There are not yet two studies with a run">
+            Run another study of this project, or a copy of one with something changed.
+          </EmptyState>
+        ) : (
+          <Sheet>
+            <Choice listed={listed} />
+          </Sheet>
+        )}
+      </PlainPage>
+    )
+  return (
+    <PlainPage>
+      <PageHead
+        title={<Said>{headline(studies, (area) => formatQuantity(area, 'area', units, { digits: 3 }))}</Said>}
+        reason={reasonOf(studies)}
+      />
+      {without.map(({ id, name }) => (
+        <MarginNote key={id} tone="attention" title={`${name} has no points yet.`}>
+          Run it to set it beside the others.
+        </MarginNote>
+      ))}
+      <SideBySide studies={studies} />
+      <Fronts studies={studies} />
+      <details className="screen-only">
+        <summary className="font-semibold text-verdigris-ink">Choose other studies</summary>
+        <Sheet className="mt-3">
+          <Choice listed={listed} />
+        </Sheet>
+      </details>
+    </PlainPage>
+  )
+}
+
+function Choice({ listed }: { listed: { id: string; name: string; chosen: boolean }[] }) {
+  return (
+    <Form method="get" className="grid gap-3">
+      <ul className="grid gap-1">
+        {listed.map(({ id, name, chosen }) => (
+          <li key={`${id}${chosen}`}>
+            <label className="inline-flex items-baseline gap-2">
+              <input
+                type="checkbox"
+                name="study"
+                value={id}
+                defaultChecked={chosen}
+                className="size-4 translate-y-0.5"
+              />
+              {name}
+            </label>
+          </li>
+        ))}
+      </ul>
+      <Button type="submit" look="main" className="justify-self-start">
+        Set side by side
+      </Button>
+    </Form>
+  )
+}
+
+const areaOf = (study: RunCandidate) => chosenOf(study)?.result.outsideArea ?? null
+
+/** Who has the least area, claimed only where the studies ask for the same duty within the same limits. */
+function headline(studies: Compared[], area: (value: number) => string): string {
+  const withArea = studies.filter((study) => areaOf(study) !== null)
+  if (withArea.length === 0) return `None of ${studies.length} studies has a point that meets its limits`
+  const sorted = [...withArea].sort((a, b) => (areaOf(a) as number) - (areaOf(b) as number))
+  const [least, next] = sorted
+  const text = `${least.name} needs least: ${area(areaOf(least) as number)}`
+  if (!next) return `${text}; the others have no point that meets their limits`
+  const share = (areaOf(next) as number) / (areaOf(least) as number) - 1
+  return share < 0.0005
+    ? `${least.name} and ${next.name} need the same: ${area(areaOf(least) as number)}`
+    : `${text}, ${Number((share * 100).toPrecision(2))} % under ${next.name}`
+}
+
+function reasonOf(studies: Compared[]): string {
+  const duties = studies.map((study) => chosenOf(study)?.result.duty ?? null)
+  const known = duties.filter((duty) => duty !== null)
+  const sameDuty = known.every((duty) => Math.abs(duty / known[0] - 1) < 0.001)
+  const sameLimits = studies.every(
+    ({ limits }) => JSON.stringify(limits) === JSON.stringify(studies[0].limits),
+  )
+  if (!sameDuty) return 'Their duties differ, so their areas answer different questions.'
+  return sameLimits
+    ? 'All have the same duty and the same limits.'
+    : 'All have the same duty; their limits differ.'
+}
+
+function SideBySide({ studies }: { studies: Compared[] }) {
+  const units = useUnits()
+  const points = studies.map(chosenOf)
+  const inputs = comparedRows(
+    points.map((point) => (point ? sheetInputs(point.case, point.names, units) : [])),
+  )
+  const results = comparedRows(points.map((point) => (point ? sheetResults(point.case, point.result) : [])))
+  const differing = inputs.filter(({ same }) => !same)
+  const areas = studies.map(areaOf)
+  const least = Math.min(...areas.filter((area) => area !== null))
+  return (
+    <div className="sheet scroll-thin overflow-x-auto">
+      <table className="data-table compare-table">
+        <caption className="visually-hidden">Studies side by side</caption>
+        <thead>
+          <tr>
+            <th scope="col" className="align-top">
+              <span className="visually-hidden">Of each study</span>
+            </th>
+            {studies.map((study, i) => {
+              const point = points[i]
+              return (
+                <th key={study.id} scope="col" className="min-w-48 align-top text-ink!">
+                  <Link
+                    to={`/studies/${study.id}/explore?run=${study.run?.id}`}
+                    className="link text-body font-bold"
+                  >
+                    {study.name}
+                  </Link>
+                  {point ? (
+                    <div className="mt-3">
+                      <BundleThumbnail
+                        geometry={bundleGeometry(point.case)}
+                        rows={point.result.rows}
+                        name={study.name}
+                        width={160}
+                        height={110}
+                      />
+                    </div>
+                  ) : null}
+                </th>
+              )
+            })}
+          </tr>
+        </thead>
+        <Group title="Finding">
+          <Row label="Run" cells={studies.map(({ run }) => run && <RunCell key={run.id} run={run} />)} />
+          <Row
+            label="Least is asked of"
+            cells={studies.map(({ objective }) => OBJECTIVE_LABELS[objective])}
+          />
+          <Row
+            label="Varied"
+            cells={studies.map(({ swept }) =>
+              swept.map(({ label, values }) => (values === null ? label : `${label} (${values})`)).join(', '),
+            )}
+          />
+          <Row
+            label="Points that meet every limit"
+            cells={studies.map(({ id, meetingLimits, run }) => (
+              <span key={id}>
+                <Digits>{meetingLimits}</Digits> of <Digits>{run?.done ?? 0}</Digits>
+              </span>
+            ))}
+          />
+          <Row
+            label="Outside area"
+            cells={studies.map((study, i) => {
+              const area = areas[i]
+              return area === null ? (
+                <Tag key={study.id} tone="attention">
+                  nothing meets the limits
+                </Tag>
+              ) : (
+                <span key={study.id} className="inline-flex flex-wrap items-center gap-2 text-lead font-bold">
+                  <Quantity value={area} dimension="area" digits={4} />
+                  {area === least ? <Tag tone="sound">least</Tag> : null}
+                </span>
+              )
+            })}
+          />
+          <Row
+            label="Candidate"
+            cells={studies.map((study, i) => {
+              const point = points[i]
+              return point ? (
+                <Link
+                  key={study.id}
+                  to={`/studies/${study.id}/points/${point.point}?run=${study.run?.id}`}
+                  className="link"
+                >
+                  {point.point === 'refined' ? 'refined point' : `point ${point.point}`}
+                </Link>
+              ) : null
+            })}
+          />
+        </Group>
+        <Group title={differing.length > 0 ? 'Inputs that differ' : 'No input differs'}>
+          {differing.map((row) => (
+            <EntryRow key={`${row.group} ${row.label}`} row={row} given />
+          ))}
+        </Group>
+        <Limits studies={studies} />
+        <Group title="Results">
+          {results
+            .filter(({ label }) => label !== 'Outside area')
+            .map((row) => (
+              <EntryRow key={`${row.group} ${row.label}`} row={row} />
+            ))}
+        </Group>
+        <Group title="Inputs that are the same">
+          {inputs
+            .filter(({ same }) => same)
+            .map((row) => (
+              <EntryRow key={`${row.group} ${row.label}`} row={row} given />
+            ))}
+        </Group>
+      </table>
+    </div>
+  )
+}
+
+function Group({ title, children }: { title: string; children: ReactNode }) {
+  return (
+    <tbody>
+      <tr>
+        <th scope="colgroup" colSpan={7} className="pt-5! font-bold text-ink!">
+          {title}
+        </th>
+      </tr>
+      {children}
+    </tbody>
+  )
+}
+
+function Row({ label, cells }: { label: ReactNode; cells: ReactNode[] }) {
+  return (
+    <tr>
+      <th scope="row" className="text-soft!">
+        {label}
+      </th>
+      {cells.map((cell, i) => (
+        // biome-ignore lint/suspicious/noArrayIndexKey: cells keep their study's place
+        <td key={i}>{cell ?? <span className="text-soft">–</span>}</td>
+      ))}
+    </tr>
+  )
+}
+
+function EntryRow({ row, given }: { row: ComparedRow; given?: boolean }) {
+  return (
+    <Row
+      label={row.label}
+      cells={row.cells.map((cell, i) =>
+        cell ? <EntryValue key={studyPlace(i)} entry={cell} given={given} /> : null,
+      )}
+    />
+  )
+}
+
+const studyPlace = (i: number) => `study ${i}`
+
+function EntryValue({ entry, given }: { entry: Entry; given?: boolean }) {
+  if ('text' in entry) return entry.text
+  return given && entry.value !== null ? (
+    <Given value={entry.value} dimension={entry.dimension} hint={entry.hint} />
+  ) : (
+    <Quantity value={entry.value} dimension={entry.dimension} hint={entry.hint} digits={4} />
+  )
+}
+
+function RunCell({ run }: { run: NonNullable<Compared['run']> }) {
+  return (
+    <span className="inline-flex flex-wrap items-center gap-2">
+      revision {run.revision}
+      <RunStateTag state={run.state} />
+      <span className="text-note text-soft">
+        <PointsDone done={run.done} points={run.points} />
+      </span>
+    </span>
+  )
+}
+
+function Limits({ studies }: { studies: Compared[] }) {
+  const given = LIMITS.filter(({ id }) => studies.some(({ limits }) => limits[id]))
+  if (given.length === 0) return null
+  return (
+    <Group title="Limits">
+      {given.map(({ id, label }) => (
+        <Row
+          key={id}
+          label={label}
+          cells={studies.map((study) => {
+            const point = chosenOf(study)
+            const standing = limitStandings(study.limits, (result) =>
+              point ? keyResultOf(point.result, result) : null,
+            ).find((one) => one.id === id)
+            if (!standing) return <span className="text-soft">no limit</span>
+            return (
+              <span key={study.id} className="inline-flex flex-wrap items-baseline gap-x-2">
+                <span className={standing.met === false ? 'text-red-ink' : ''}>
+                  <Quantity
+                    value={standing.value}
+                    dimension={standing.dimension}
+                    hint={standing.hint}
+                    digits={4}
+                  />
+                </span>
+                <span className="text-note text-soft">
+                  <LimitBounds {...standing} />
+                </span>
+              </span>
+            )
+          })}
+        />
+      ))}
+    </Group>
+  )
+}
+
+/** Least area at each coolant pressure drop, of all points that could be evaluated: the limit itself may be moved. */
+function Fronts({ studies }: { studies: Compared[] }) {
+  const units = useUnits()
+  const lines = studies
+    .filter(({ front }) => front.length > 1)
+    .map(({ name, front }) => ({
+      label: name,
+      x: front.map(({ x }) => toDisplay(x, 'pressure', units).value),
+      y: front.map(({ y }) => toDisplay(y, 'area', units).value),
+    }))
+  if (lines.length === 0) return null
+  const bounds = studies.map(({ limits }) => limits.coolantPressureDrop?.max)
+  const shared = bounds.every((bound) => bound !== undefined && bound === bounds[0]) ? bounds[0] : undefined
+  return (
+    <Sheet title="Least area at each coolant pressure drop">
+      <LineChart
+        name="Fronts of outside area against coolant pressure drop"
+        height={340}
+        x={{
+          label: 'coolant pressure drop',
+          unit: displayUnit('pressure', units),
+          max: shared === undefined ? undefined : toDisplay(shared, 'pressure', units).value,
+        }}
+        y={{ label: 'outside area', unit: displayUnit('area', units) }}
+        lines={lines}
+      />
+    </Sheet>
+  )
+}
