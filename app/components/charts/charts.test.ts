@@ -6,6 +6,7 @@ import { LineChart } from './line-chart.tsx'
 import {
   beyond,
   type ChartTheme,
+  drawnBox,
   lowerFront,
   pointerShapes,
   type Scatter,
@@ -113,6 +114,14 @@ test('a point looked at is a shape of fixed size, so that the points need not be
     yanchor: 60,
     line: { color: theme.copper },
   })
+})
+
+test('a box drawn by hand is read from the axes, logarithms and all', () => {
+  const ranges = { x: { low: 1, high: 1000, log: true }, y: { low: 30, high: 90, log: false } }
+  const change = { 'xaxis.range[0]': 1, 'xaxis.range[1]': 2, 'yaxis.range[0]': 60, 'yaxis.range[1]': 40 }
+  expect(drawnBox(change, ranges)).toEqual({ x: [10, 100], y: [40, 60] })
+  expect(drawnBox({ 'xaxis.range[0]': 1, 'xaxis.range[1]': 2 }, ranges)?.y).toEqual([30, 90])
+  expect(drawnBox({ 'xaxis.autorange': true }, ranges)).toBeNull()
 })
 
 test('no trace needs evaluated code: all are SVG scatter', () => {

@@ -1,8 +1,16 @@
 // The live scatter plot. Loaded after hydration, and only where a plot is: plotly is larger than the rest together.
 import Plotly from 'plotly.js'
-import { memo, useMemo, useRef } from 'react'
+import { memo, useMemo } from 'react'
 import createPlotlyComponent from 'react-plotly.js/factory'
-import { type ChartTheme, type Mark, pointerShapes, type Scatter, scatterFigure } from './scatter.ts'
+import {
+  type ChartTheme,
+  drawnBox,
+  type Mark,
+  pointerShapes,
+  type Scatter,
+  scatterFigure,
+  scatterRanges,
+} from './scatter.ts'
 
 const Plot = createPlotlyComponent(Plotly)
 
@@ -34,35 +42,24 @@ export const LiveScatter = memo(function LiveScatter({
     return {
       ...figure.layout,
       shapes: [...(figure.layout.shapes ?? []), ...pointerShapes(pointers, theme)],
-      dragmode: onBrush && !coarse ? 'select' : false,
+      dragmode: onBrush && !coarse ? 'zoom' : false,
     } as const
   }, [figure, pointers, theme, onBrush])
   const style = useMemo(() => ({ width: '100%', height }), [height])
-  // Plotly tells of a selection again when the plot is redrawn; only what a hand has drawn since is meant.
-  const drawn = useRef(false)
   return (
-    <div
-      onPointerDownCapture={() => {
-        drawn.current = true
+    <Plot
+      data={figure.data}
+      layout={layout}
+      config={CONFIG}
+      style={style}
+      onClick={(event) => {
+        const id = event.points[0]?.customdata
+        if (typeof id === 'number') onPick?.(id)
       }}
-    >
-      <Plot
-        data={figure.data}
-        layout={layout}
-        config={CONFIG}
-        style={style}
-        onClick={(event) => {
-          const id = event.points[0]?.customdata
-          if (typeof id === 'number') onPick?.(id)
-        }}
-        onSelected={(event) => {
-          const range = event?.range as { x?: number[]; y?: number[] } | undefined
-          if (!range?.x || !range.y || !drawn.current) return
-          drawn.current = false
-          const sorted = (values: number[]) => [...values].sort((a, b) => a - b) as [number, number]
-          onBrush?.({ x: sorted(range.x), y: sorted(range.y) })
-        }}
-      />
-    </div>
+      onRelayout={(change) => {
+        const box = drawnBox(change as Record<string, unknown>, scatterRanges(spec))
+        if (box) onBrush?.(box)
+      }}
+    />
   )
 })

@@ -69,6 +69,27 @@ export function beyond(axis: Axis, range: Range): [number, number][] {
   return parts
 }
 
+/**
+ * The box a hand has drawn, from what plotly says of its axes' new ranges; null when it says nothing of both. On a
+ * logarithmic axis ranges are logarithms.
+ */
+export function drawnBox(
+  change: Readonly<Record<string, unknown>>,
+  ranges: { x: Range; y: Range },
+): { x: [number, number]; y: [number, number] } | null {
+  const side = (axis: 'x' | 'y'): [number, number] | null => {
+    const ends = [change[`${axis}axis.range[0]`], change[`${axis}axis.range[1]`]]
+    if (!ends.every((end) => typeof end === 'number')) return null
+    const values = (ends as number[]).map((end) => (ranges[axis].log ? 10 ** end : end))
+    return [Math.min(...values), Math.max(...values)]
+  }
+  const x = side('x')
+  const y = side('y')
+  if (!x && !y) return null
+  const whole = ({ low, high }: Range): [number, number] => [low, high]
+  return { x: x ?? whole(ranges.x), y: y ?? whole(ranges.y) }
+}
+
 /** "limit 60 kPa" with the axis' unit. */
 export function limitText(axis: Axis, side: 'min' | 'max'): string {
   return `${side === 'max' ? 'at most' : 'at least'} ${axis[side]}${axis.unit === '' ? '' : ` ${axis.unit}`}`
@@ -86,7 +107,6 @@ export function scatterFigure(spec: Scatter, theme: ChartTheme): { data: Data[];
     linecolor: theme.line,
     tickfont: { size: 12.5, color: theme.soft },
     ticks: '',
-    fixedrange: true,
     automargin: true,
     // Grouped by a narrow space (see separators), never by an SI prefix.
     tickformat: ',~r',
@@ -107,7 +127,6 @@ export function scatterFigure(spec: Scatter, theme: ChartTheme): { data: Data[];
       yaxis: axis(spec.y, ranges.y),
       shapes,
       annotations,
-      selections: [],
       separators: '.\u202f',
       showlegend: false,
       paper_bgcolor: 'transparent',
@@ -122,9 +141,7 @@ export function scatterFigure(spec: Scatter, theme: ChartTheme): { data: Data[];
         font: { family: theme.font, size: 12.5, color: theme.sheet },
         align: 'left',
       },
-      dragmode: 'select',
-      newselection: { line: { color: theme.verdigris, width: 1.5, dash: 'solid' } },
-      activeselection: { fillcolor: theme.verdigris, opacity: 0.08 },
+      dragmode: 'zoom',
     } as Partial<Layout>,
   }
 }
@@ -163,8 +180,6 @@ function groupTrace(
       line: { width: group.value ? 0.5 : 0, color: theme.verdigris },
       ...colour,
     },
-    selected: { marker: { opacity: 1 } },
-    unselected: { marker: { opacity: 0.3 } },
     hovertemplate: hover(`Point %{customdata}${name}${met ? '' : ' (misses a limit)'}`),
   } as Data
 }
