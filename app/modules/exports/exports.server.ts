@@ -1,5 +1,6 @@
 // A run as files: its stored columns, streamed.
 import { PassThrough, Readable } from 'node:stream'
+import { createReadableStreamFromReadable } from '@react-router/node'
 import { AppError } from '#app/http/errors.ts'
 import { readTable } from '#app/modules/points/column-copy.server.ts'
 import { pointSheet, refinedBest } from '#app/modules/points/points.server.ts'
@@ -85,8 +86,10 @@ export async function workbookResponse(runId: string): Promise<Response> {
       `A workbook takes at most ${WORKBOOK_POINTS} points and this run has ${report.points}; take the CSV file.`,
     )
   const stream = new PassThrough()
+  // Whoever stops the download ends the writing; that is no fault of ours.
+  stream.on('error', () => {})
   writeWorkbook(stream, report).catch((error) => stream.destroy(error))
-  return new Response(Readable.toWeb(stream) as ReadableStream, {
+  return new Response(createReadableStreamFromReadable(stream), {
     headers: {
       'Content-Type': 'application/vnd.openxmlformats-officedocument.spreadsheetml.sheet',
       'Content-Disposition': attachment(name, 'xlsx'),
@@ -97,7 +100,7 @@ export async function workbookResponse(runId: string): Promise<Response> {
 
 export async function csvResponse(runId: string): Promise<Response> {
   const { name, report } = await reportOfRun(runId)
-  return new Response(Readable.toWeb(Readable.from(csvLines(report))) as ReadableStream, {
+  return new Response(createReadableStreamFromReadable(Readable.from(csvLines(report))), {
     headers: {
       'Content-Type': 'text/csv; charset=utf-8',
       'Content-Disposition': attachment(name, 'csv'),

@@ -162,11 +162,21 @@ async function points(
     const table = await report.table(first, count)
     for (let k = 0; k < count; k++) sheet.addRow(pointRow(plan, first + k, table, k, count)).commit()
     // The writer takes no notice of a full stream: waiting here is what keeps memory flat.
-    if (stream.writableNeedDrain) await new Promise((resolve) => stream.once('drain', resolve))
+    if (stream.writableNeedDrain) await drained(stream)
     else await new Promise(setImmediate)
+    if (stream.destroyed) throw new Error('the download was stopped')
   }
   sheet.commit()
 }
+
+const drained = (stream: Writable): Promise<void> =>
+  new Promise((resolve) => {
+    const done = () => {
+      stream.off('drain', done).off('close', done)
+      resolve()
+    }
+    stream.on('drain', done).on('close', done)
+  })
 
 function bestPoint(
   book: ExcelJS.stream.xlsx.WorkbookWriter,
