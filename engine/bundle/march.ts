@@ -93,12 +93,10 @@ export class BundleMarch extends RowMarch {
     const { s } = this
     this.start(true)
     this.coolantSide()
-    const resistance =
-      this.fixedResistance + s.outsideDiameter / (this.insideDiameter * this.passCoefficient[0])
     const area = this.tubes * Math.PI * s.outsideDiameter * this.length
     const capacity = this.flow * this.passSpecificHeat[0]
     const guess =
-      -Math.expm1((-0.5 * area) / (resistance * capacity)) * capacity * (this.Ts - s.inletTemperature)
+      -Math.expm1((-this.guessedCoefficient() * area) / capacity) * capacity * (this.Ts - s.inletTemperature)
     this.inletVapour = guess / this.inlet[H_FG]
     if (!this.quickVapour(true)) {
       const outcome = this.bracket(BY_VAPOUR, Number.NaN, true)
@@ -126,13 +124,14 @@ export class BundleMarch extends RowMarch {
       if (!Number.isFinite(mismatch)) return false
       if (Math.abs(mismatch) < CLOSE && this.moved < CLOSE && !(change > close)) return true
       const log = Math.log(this.inletVapour)
-      if (Math.abs(log - lastLog) > 1e-7) {
+      // What the rows are still settling by must not be taken for the vapour's doing.
+      if (this.moved < 0.3 * Math.abs(log - lastLog)) {
         const seen = (mismatch - lastMismatch) / (log - lastLog)
         if (seen < -0.3 && seen > -6) slope = seen
       }
       lastLog = log
       lastMismatch = mismatch
-      this.inletVapour *= Math.exp(Math.max(-0.7, Math.min(0.7, -mismatch / slope)))
+      this.inletVapour *= Math.exp(Math.max(-1.5, Math.min(0.7, -mismatch / slope)))
     }
     return false
   }
@@ -162,17 +161,15 @@ export class BundleMarch extends RowMarch {
     return this.refusal()
   }
 
-  /** From a film as resistant as all the rest. */
   private guessLength(): number {
     const { s } = this
     this.length = 3
     this.start(true)
     this.coolantSide()
-    const resistance =
-      this.fixedResistance + s.outsideDiameter / (this.insideDiameter * this.passCoefficient[0])
     const reach = this.Ts - s.inletTemperature
-    const effectiveness = Math.min(0.999, s.duty / (this.flow * this.passSpecificHeat[0] * reach))
-    const area = -Math.log1p(-effectiveness) * this.flow * this.passSpecificHeat[0] * 2 * resistance
+    const capacity = this.flow * this.passSpecificHeat[0]
+    const effectiveness = Math.min(0.999, s.duty / (capacity * reach))
+    const area = (-Math.log1p(-effectiveness) * capacity) / this.guessedCoefficient()
     return Math.min(LONGEST, Math.max(1e-3, area / (this.tubes * Math.PI * s.outsideDiameter)))
   }
 
@@ -201,7 +198,7 @@ export class BundleMarch extends RowMarch {
       this.inletVapour = (total * this.condensate) / this.duty
       const log = Math.log(by === BY_LENGTH ? this.length : this.flow)
       if (n < 1 || Number.isNaN(slope)) slope = by === BY_LENGTH ? this.lengthElasticity() : 0.5
-      if (Math.abs(log - lastLog) > 1e-7) {
+      if (this.moved < 0.7 * Math.abs(log - lastLog)) {
         const seen = -(short - lastShort) / (log - lastLog)
         if (seen > 0.1 && seen < 4) slope = seen
       }

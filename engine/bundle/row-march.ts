@@ -96,7 +96,7 @@ const PRESSURE_FLOOR = 0.2
 /** Film and coolant properties are taken again when their temperature has moved by more [K]. */
 const SAME_TEMPERATURE = 1e-8
 /** Saturation temperature is taken again when the pressure has moved by more, relative. */
-const SAME_PRESSURE = 1e-12
+const SAME_PRESSURE = 1e-11
 /** A row's pressure loss is taken again when its flows have moved by more, relative. */
 const SAME_FLOW = 1e-10
 /** A wall's Newton steps stop below this share of the driving difference; the sweeps take it further. */
@@ -404,6 +404,33 @@ export class RowMarch {
     const perMetre = Math.PI * Do
     const flowArea = L * this.flowWidth()
     const { weight, eps, exponent, first, heed } = this
+    const {
+      rowTubes,
+      rowPass,
+      rowPressure,
+      rowTs,
+      rowLatent,
+      rowVapourDensity,
+      rowX,
+      rowFlux,
+      rowCondensate,
+      rowExpected,
+      rowArriving,
+      rowCoolant,
+      rowVelocity,
+    } = this
+    const {
+      rowFilmTemperature,
+      rowDensity,
+      rowSpecificHeat,
+      rowViscosity,
+      rowConductivity,
+      rowLoss,
+      rowLossFlow,
+      rowLossLiquid,
+      rowShare,
+    } = this
+    const { passIn, passTubes, passHeat, passCoefficient, passSpecificHeat } = this
     const dropping = this.drop !== NO_DROP && this.inlet[RHO_V] > 0
     const sheared = this.shear !== NO_SHEAR && this.inlet[RHO_V] > 0
     // The common laws are written out below; the others go through `singleFlux` and `rowLaw`.
@@ -418,40 +445,40 @@ export class RowMarch {
     let lowest = Number.POSITIVE_INFINITY
     let most = 0
     this.clamped = false
-    if (cooled) for (let j = 0; j < s.passes; j++) this.passHeat[j] = 0
+    if (cooled) for (let j = 0; j < s.passes; j++) passHeat[j] = 0
 
     for (let r = 0; r < rows; r++) {
-      if (dropping && !fluid.fixed && Math.abs(pressure - this.rowPressure[r]) > SAME_PRESSURE * pressure)
+      if (dropping && !fluid.fixed && Math.abs(pressure - rowPressure[r]) > SAME_PRESSURE * pressure)
         this.takeVapour(r, pressure)
-      const Ts = this.rowTs[r]
-      const rhoV = this.rowVapourDensity[r]
-      const hfg = this.rowLatent[r]
-      const tubes = this.rowTubes[r]
+      const Ts = rowTs[r]
+      const rhoV = rowVapourDensity[r]
+      const hfg = rowLatent[r]
+      const tubes = rowTubes[r]
       if (first && r > 0) {
-        this.rowX[r] = this.rowX[r - 1]
-        this.rowExpected[r] = this.rowCondensate[r - 1]
-      } else if (first) this.rowExpected[r] = this.inletVapour / rows
-      const middle = Math.max(0, remaining - 0.5 * this.rowExpected[r])
+        rowX[r] = rowX[r - 1]
+        rowExpected[r] = rowCondensate[r - 1]
+      } else if (first) rowExpected[r] = this.inletVapour / rows
+      const middle = Math.max(0, remaining - 0.5 * rowExpected[r])
       const velocity = rhoV > 0 ? middle / (rhoV * flowArea * eps) : 0
-      let x = this.rowX[r]
+      let x = rowX[r]
       const reference = Ts - x + weight * x
-      if (!(Math.abs(reference - this.rowFilmTemperature[r]) < SAME_TEMPERATURE)) this.takeFilm(r, reference)
-      const rho = this.rowDensity[r]
-      const mu = this.rowViscosity[r]
-      const k = this.rowConductivity[r]
-      const cp = this.plainLatent ? 0 : this.rowSpecificHeat[r]
+      if (!(Math.abs(reference - rowFilmTemperature[r]) < SAME_TEMPERATURE)) this.takeFilm(r, reference)
+      const rho = rowDensity[r]
+      const mu = rowViscosity[r]
+      const k = rowConductivity[r]
+      const cp = this.plainLatent ? 0 : rowSpecificHeat[r]
       const onTube = gathered / (tubes * L)
       let dh = hfg + FILM_SUBCOOLING * cp * x
       const arriving = (onTube * dh) / perMetre
       const film = sheared ? velocity : 0
       let q = 0
       if (cooled) {
-        const j = this.rowPass[r]
-        const inner = this.fixedResistance + Do / (this.insideDiameter * this.passCoefficient[j])
-        const T = Ts - this.passIn[j]
-        const g = (perMetre * L * this.passTubes[j]) / (this.flow * this.passSpecificHeat[j])
+        const j = rowPass[r]
+        const inner = this.fixedResistance + Do / (this.insideDiameter * passCoefficient[j])
+        const T = Ts - passIn[j]
+        const g = (perMetre * L * passTubes[j]) / (this.flow * passSpecificHeat[j])
         if (T > 0) {
-          const U = 1 / (inner + this.rowShare[r] * g)
+          const U = 1 / (inner + rowShare[r] * g)
           let low = 0
           let high = T
           if (!(x < T && x > 0)) x = 0.5 * T
@@ -522,13 +549,37 @@ export class RowMarch {
           q = U * (T - x)
           dh = hfg + FILM_SUBCOOLING * cp * x
           const star = inner * q + x
-          this.rowShare[r] = riseShare(T, q * g, star, x / star, e)
-          this.passHeat[j] += q * perMetre * L * tubes
-          this.rowCoolant[r] = Ts - star
+          const w = x / star
+          const p = 1 / (1 - w + w / e)
+          const rise = q * g
+          const u = rise / (2 * T - rise)
+          if (u > 0 && u < 0.16) {
+            // `riseShare` as a series about the arithmetic mean, to 1e-11.
+            const v = u * u
+            const z =
+              ((p * (p + 1)) / 6) *
+              v *
+              (1 +
+                (p + 2) *
+                  (p + 3) *
+                  v *
+                  (1 / 20) *
+                  (1 +
+                    (p + 4) *
+                      (p + 5) *
+                      v *
+                      (1 / 42) *
+                      (1 + (p + 6) * (p + 7) * v * (1 / 72) * (1 + (p + 8) * (p + 9) * v * (1 / 110)))))
+            const y = (-z * (1 - z * (1 / 2 - z * (1 / 3 - z / 4)))) / p
+            const lowered = -y * (1 + y * (1 / 2 + y * (1 / 6 + y * (1 / 24 + y / 120))))
+            rowShare[r] = 0.5 + lowered / (2 * u)
+          } else rowShare[r] = riseShare(T, rise, star, p)
+          passHeat[j] += q * perMetre * L * tubes
+          rowCoolant[r] = Ts - star
         } else {
           q = 0
           x = 0
-          this.rowCoolant[r] = this.passIn[j]
+          rowCoolant[r] = passIn[j]
         }
       } else {
         x = s.wallSubcooling
@@ -537,15 +588,15 @@ export class RowMarch {
       }
       const heat = q * perMetre * L * tubes
       const made = heat / dh
-      const before = this.rowFlux[r]
+      const before = rowFlux[r]
       const change = Math.abs(q - before)
       if (change > most * q) most = q > 0 ? change / q : 1
-      this.rowX[r] = x
-      this.rowFlux[r] = q
-      this.rowArriving[r] = onTube
-      this.rowVelocity[r] = velocity
-      this.rowCondensate[r] = made
-      this.rowExpected[r] += heed * (made - this.rowExpected[r])
+      rowX[r] = x
+      rowFlux[r] = q
+      rowArriving[r] = onTube
+      rowVelocity[r] = velocity
+      rowCondensate[r] = made
+      rowExpected[r] += heed * (made - rowExpected[r])
       duty += heat
       const wall = Ts - x
       if (wall < lowest) lowest = wall
@@ -553,12 +604,12 @@ export class RowMarch {
         const drained = gathered + 0.5 * made
         if (
           !(
-            Math.abs(middle - this.rowLossFlow[r]) <= SAME_FLOW * middle &&
-            Math.abs(drained - this.rowLossLiquid[r]) <= SAME_FLOW * drained
+            Math.abs(middle - rowLossFlow[r]) <= SAME_FLOW * middle &&
+            Math.abs(drained - rowLossLiquid[r]) <= SAME_FLOW * drained
           )
         )
           this.takeLoss(r, middle, drained, flowArea)
-        pressure -= this.rowLoss[r]
+        pressure -= rowLoss[r]
         if (pressure < PRESSURE_FLOOR * this.inletPressure) {
           pressure = PRESSURE_FLOOR * this.inletPressure
           this.clamped = true
@@ -695,6 +746,15 @@ export class RowMarch {
     return this.singleFlux(this.rowX[row], row, this.shear === NO_SHEAR ? 0 : this.rowVelocity[row])
   }
 
+  /** Overall coefficient of the first row in still vapour, lowered for the rows below: what a point's guesses rest on. */
+  protected guessedCoefficient(): number {
+    const x = 0.35 * (this.Ts - this.s.inletTemperature)
+    this.takeFilm(0, this.Ts - x)
+    const inner =
+      this.fixedResistance + this.s.outsideDiameter / (this.insideDiameter * this.passCoefficient[0])
+    return 1 / (inner + x / (0.7 * this.singleFlux(x, 0, 0)))
+  }
+
   /** Re~ of a row: liquid properties, vapour velocity. */
   shearReynolds(row: number): number {
     return (this.rowDensity[row] * this.rowVelocity[row] * this.s.outsideDiameter) / this.rowViscosity[row]
@@ -759,31 +819,13 @@ export class RowMarch {
 
 /**
  * Share κ of the coolant's rise in a row at which the flux of the whole row stands, the flux going as a power p of the
- * difference to the coolant: the generalised mean of the end differences `T` and `T − rise` is T − κ rise.
- * `rise` is what the flux found at the difference `star` would give; `w` is the film's share of that difference, `e` the
- * exponent of the film's flux in its subcooling.
+ * difference to the coolant: the generalised mean of the end differences `T` and `T − rise` is T − κ rise. `rise` is what
+ * the flux found at the difference `star` would give.
+ *
+ * Along the row the difference falls as dθ = −(rise/star^p) θ^p: its end value comes first, which no guess of κ can upset.
  */
-function riseShare(T: number, rise: number, star: number, w: number, e: number): number {
-  const p = 1 / (1 - w + w / e)
-  const u = rise / (2 * T - rise)
-  if (u >= 0 && u < 0.16) {
-    // Series about the arithmetic mean, to 1e-11.
-    const v = u * u
-    const z =
-      ((p * (p + 1)) / 6) *
-      v *
-      (1 +
-        (((p + 2) * (p + 3)) / 20) *
-          v *
-          (1 +
-            (((p + 4) * (p + 5)) / 42) *
-              v *
-              (1 + (((p + 6) * (p + 7)) / 72) * v * (1 + (((p + 8) * (p + 9)) / 110) * v))))
-    const y = (-z * (1 - z * (1 / 2 - z * (1 / 3 - z / 4)))) / p
-    const lowered = -y * (1 + y * (1 / 2 + y * (1 / 6 + y * (1 / 24 + y / 120))))
-    return u > 0 ? 0.5 + lowered / (2 * u) : 0.5
-  }
-  // Along the row the difference falls as dθ = −(rise/star^p) θ^p: its end value first, which no guess of κ can upset.
+function riseShare(T: number, rise: number, star: number, p: number): number {
+  if (!(rise > 0)) return 0.5
   const power = 1 - p
   const units = rise / star
   let integral = units
