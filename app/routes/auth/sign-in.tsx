@@ -22,7 +22,11 @@ const DEMO_PEOPLE = [
   { role: 'Engineer', email: 'engineer@example.com', does: 'defines, runs and explores studies' },
   { role: 'Lead', email: 'lead@example.com', does: 'does all that, and decides on projects and members' },
   { role: 'Analyst', email: 'analyst@example.com', does: 'reads, compares and exports' },
-  { role: 'Administrator', email: 'administrator@example.com', does: 'looks after roles and the library' },
+  {
+    role: 'Administrator',
+    email: 'administrator@example.com',
+    does: 'may do everything in every project of theirs',
+  },
 ]
 
 /** The picture: a refrigerant condenser in which every row works under what the rows above let fall. */
@@ -88,8 +92,8 @@ export default function SignIn({ loaderData }: Route.ComponentProps) {
             Each row drains onto the next. Find the bundle that still works under it.
           </p>
           <p className="mt-3 max-w-[56ch] text-lead text-soft">
-            Sweep tube size, rows, layout and fluid; find the least area that meets every limit; see why it is
-            the least, how sure the number is, and where each method comes from.
+            Sweep tube size, rows, layout and fluid; find the least area that meets every limit; see which
+            limit binds and where each method and number comes from.
           </p>
         </div>
         <figure className="hidden max-w-[26rem] lg:block">
