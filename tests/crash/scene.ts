@@ -224,7 +224,7 @@ export class Scene {
     const chunks = Math.max(CHUNKS, CHUNKS_A_KILL * times)
     const planned = await plantRun(given, Math.max(10, Math.round(plan.points / chunks)))
     this.#log(`${what}: run of ${planned.points} points in chunks of ${planned.chunkPoints}`)
-    await until('the run is under way', async () => (await runProgress(planned.id)).done > 0, 30_000)
+    await until('the run is under way', async () => (await runProgress(planned.id)).done > 0, 120_000)
     await disturb(planned)
     const done = await ended(planned.id, 300_000)
     return {

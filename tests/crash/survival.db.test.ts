@@ -20,7 +20,9 @@ test.each([
   'a run survives %s: same points, each once, same content',
   async (_, disturb) => {
     const outcome = await disturb()
-    expect(survived(outcome), `${JSON.stringify(outcome, null, 2)}\n${lines.slice(-30).join('\n')}`).toBe(true)
+    expect(survived(outcome), `${JSON.stringify(outcome, null, 2)}\n${lines.slice(-30).join('\n')}`).toBe(
+      true,
+    )
   },
-  180_000,
+  400_000,
 )
