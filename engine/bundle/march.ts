@@ -16,8 +16,10 @@ import { OUTCOME_INDEX } from './key-results.ts'
 import { MAX_PASSES, MAX_ROWS } from './point-state.ts'
 import { RowMarch } from './row-march.ts'
 
-/** Relative change of a sweep at which a point stands; what then remains is about a tenth of it. */
+/** What may remain when a point stands: of a balance, and of what a sweep still changes, relative. */
 const CLOSE = 3e-10
+/** A sweep may change this much if it changes so much less than the one before that `CLOSE` is what remains. */
+const LAST_CHANGE = 1e-7
 /** Sweeps after which the quick loop gives way to the bracketed search. */
 const QUICK_SWEEPS = 30
 /** Sweeps that one trial of the bracketed search may take. */
@@ -105,6 +107,13 @@ export class BundleMarch extends RowMarch {
     return this.refusal()
   }
 
+  /** Whether the rows and the coolant (`change` and `close` in K) will move no more, by how fast they come to rest. */
+  private stands(change: number, close: number): boolean {
+    const { moved } = this
+    const pace = Math.min(1, moved / this.movedBefore)
+    return moved < LAST_CHANGE && moved * pace < CLOSE && !(change * pace > close)
+  }
+
   /** Brings the inlet vapour to what the rows condense, a secant step in its logarithm after every sweep. */
   private quickVapour(cooled: boolean): boolean {
     const close = CLOSE * (this.Ts - this.s.inletTemperature)
@@ -122,7 +131,7 @@ export class BundleMarch extends RowMarch {
       } else this.sweep(false)
       const mismatch = Math.log(this.condensate / this.inletVapour)
       if (!Number.isFinite(mismatch)) return false
-      if (Math.abs(mismatch) < CLOSE && this.moved < CLOSE && !(change > close)) return true
+      if (Math.abs(mismatch) < CLOSE && this.stands(change, close)) return true
       const log = Math.log(this.inletVapour)
       // What the rows are still settling by must not be taken for the vapour's doing.
       if (this.moved < 0.3 * Math.abs(log - lastLog)) {
@@ -193,8 +202,7 @@ export class BundleMarch extends RowMarch {
       const change = this.passTemperatures(by === BY_LENGTH ? total : Number.NaN)
       const off = this.followOutlet(total, outlet)
       const short = Math.log(total / this.duty)
-      if (Math.abs(short) < CLOSE && this.moved < CLOSE && change < close && Math.abs(off) < CLOSE)
-        return true
+      if (Math.abs(short) < CLOSE && Math.abs(off) < CLOSE && this.stands(change, close)) return true
       this.inletVapour = (total * this.condensate) / this.duty
       const log = Math.log(by === BY_LENGTH ? this.length : this.flow)
       if (n < 1 || Number.isNaN(slope)) slope = by === BY_LENGTH ? this.lengthElasticity() : 0.5
@@ -266,7 +274,7 @@ export class BundleMarch extends RowMarch {
         off = this.followOutlet(total, outlet)
       } else this.sweep(false)
       if (by !== BY_VAPOUR && this.duty > 0) this.inletVapour = (total * this.condensate) / this.duty
-      if (this.moved < CLOSE && !(change > close) && Math.abs(off) < CLOSE) break
+      if (Math.abs(off) < CLOSE && this.stands(change, close)) break
     }
     return by === BY_VAPOUR ? x - Math.log(this.condensate) : Math.log(this.duty / total)
   }
@@ -320,7 +328,7 @@ export class BundleMarch extends RowMarch {
       x = Math.min(high - edge, Math.max(low + edge, x))
       const f = this.trial(by, x, total, cooled, outlet)
       missing = Math.abs(f)
-      if (missing < CLOSE && this.moved < 10 * CLOSE) return 0
+      if (missing < CLOSE && this.moved < LAST_CHANGE) return 0
       if (f > 0) {
         high = x
         fHigh = f

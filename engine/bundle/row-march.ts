@@ -94,11 +94,15 @@ const OUTCOME = OUTCOME_INDEX as Readonly<Record<string, number>>
 /** Vapour pressure is held above this share of the inlet's inside trials. */
 const PRESSURE_FLOOR = 0.2
 /** Film and coolant properties are taken again when their temperature has moved by more [K]. */
-const SAME_TEMPERATURE = 1e-8
-/** Saturation temperature is taken again when the pressure has moved by more, relative. */
-const SAME_PRESSURE = 1e-11
-/** A row's pressure loss is taken again when its flows have moved by more, relative. */
-const SAME_FLOW = 1e-10
+const SAME_TEMPERATURE = 2e-8
+/** Saturation is taken again when the pressure has moved by more, relative; less follows Clausius and Clapeyron. */
+const SAME_PRESSURE = 2e-8
+/** A row's pressure loss is taken again when its flows have moved by more, relative; less follows a power. */
+const SAME_FLOW = 1e-7
+/** Power of the mass velocity that a row's loss goes by, near enough for such small moves. */
+const LOSS_POWER = 1.8
+/** Below this relative move a power is followed by its series, to 1e-13. */
+const SMALL_MOVE = 1e-3
 /** A wall's Newton steps stop below this share of the driving difference; the sweeps take it further. */
 const STEP = 1e-4
 
@@ -168,8 +172,14 @@ export class RowMarch {
   readonly rowTension = new Float64Array(MAX_ROWS)
   private readonly rowColumnLine = new Float64Array(MAX_ROWS)
   private readonly rowSheetLine = new Float64Array(MAX_ROWS)
+  /** Saturation at `rowPressure` and its slope with pressure (vapour volume only) [K/Pa]. */
+  private readonly rowSaturation = new Float64Array(MAX_ROWS)
+  private readonly rowSlope = new Float64Array(MAX_ROWS)
+  /** Share of its own condensate in a row's leaving flow, and its power `exponent`, where last taken. */
+  private readonly rowOwn = new Float64Array(MAX_ROWS)
+  private readonly rowPower = new Float64Array(MAX_ROWS)
   private readonly rowLoss = new Float64Array(MAX_ROWS)
-  private readonly rowLossFlow = new Float64Array(MAX_ROWS)
+  private readonly rowLossVapour = new Float64Array(MAX_ROWS)
   private readonly rowLossLiquid = new Float64Array(MAX_ROWS)
   /** Where along the row's coolant rise the wall is solved: share κ of the rise below the inlet difference. */
   private readonly rowShare = new Float64Array(MAX_ROWS)
@@ -205,7 +215,8 @@ export class RowMarch {
   lowestWall = 0
   clamped = false
   /** Largest relative change of a row's flux against the sweep before. */
-  protected moved = 0
+  protected moved = 1
+  protected movedBefore = 1
 
   // --- what the sweeps are made for
   inletVapour = 0
@@ -326,12 +337,15 @@ export class RowMarch {
       this.rowFlux[r] = 0
       this.rowShare[r] = 0.5
       this.rowTs[r] = this.Ts
+      this.rowSaturation[r] = this.Ts
+      this.rowSlope[r] = this.Ts / (this.inlet[RHO_V] * this.inlet[H_FG])
       this.rowPressure[r] = this.inletPressure
       this.rowLatent[r] = this.inlet[H_FG]
       this.rowVapourDensity[r] = this.inlet[RHO_V]
       this.rowVapourViscosity[r] = this.inlet[MU_V]
       this.rowFilmTemperature[r] = Number.NaN
-      this.rowLossFlow[r] = Number.NaN
+      this.rowOwn[r] = Number.NaN
+      this.rowLossVapour[r] = Number.NaN
     }
     for (let j = 0; j < s.passes; j++) {
       this.passIn[j] = s.inletTemperature
@@ -426,9 +440,13 @@ export class RowMarch {
       rowViscosity,
       rowConductivity,
       rowLoss,
-      rowLossFlow,
+      rowLossVapour,
       rowLossLiquid,
       rowShare,
+      rowSaturation,
+      rowSlope,
+      rowOwn,
+      rowPower,
     } = this
     const { passIn, passTubes, passHeat, passCoefficient, passSpecificHeat } = this
     const dropping = this.drop !== NO_DROP && this.inlet[RHO_V] > 0
@@ -448,8 +466,11 @@ export class RowMarch {
     if (cooled) for (let j = 0; j < s.passes; j++) passHeat[j] = 0
 
     for (let r = 0; r < rows; r++) {
-      if (dropping && !fluid.fixed && Math.abs(pressure - rowPressure[r]) > SAME_PRESSURE * pressure)
-        this.takeVapour(r, pressure)
+      if (dropping && !fluid.fixed && pressure !== rowPressure[r]) {
+        const off = pressure - rowPressure[r]
+        if (Math.abs(off) > SAME_PRESSURE * pressure) this.takeVapour(r, pressure)
+        else rowTs[r] = rowSaturation[r] + off * rowSlope[r]
+      }
       const Ts = rowTs[r]
       const rhoV = rowVapourDensity[r]
       const hfg = rowLatent[r]
@@ -508,7 +529,19 @@ export class RowMarch {
               let slope = (e * q1) / x + U
               if (flooded) {
                 const total = line + arriving
-                const row = q1 * Math.exp(exponent * Math.log(line / total))
+                const own = line / total
+                const d = own / rowOwn[r] - 1
+                let power: number
+                if (d < SMALL_MOVE && d > -SMALL_MOVE)
+                  power =
+                    rowPower[r] *
+                    (1 + exponent * d * (1 + (exponent - 1) * d * (1 / 2 + ((exponent - 2) / 6) * d)))
+                else {
+                  power = Math.exp(exponent * Math.log(own))
+                  rowOwn[r] = own
+                  rowPower[r] = power
+                }
+                const row = q1 * power
                 f = row - line
                 slope = row * (e / x - (exponent * arriving * U) / (line * total)) + U
               }
@@ -601,15 +634,16 @@ export class RowMarch {
       const wall = Ts - x
       if (wall < lowest) lowest = wall
       if (dropping) {
-        const drained = gathered + 0.5 * made
-        if (
-          !(
-            Math.abs(middle - rowLossFlow[r]) <= SAME_FLOW * middle &&
-            Math.abs(drained - rowLossLiquid[r]) <= SAME_FLOW * drained
-          )
-        )
-          this.takeLoss(r, middle, drained, flowArea)
-        pressure -= rowLoss[r]
+        const vapourFlux = middle / flowArea
+        const liquidFlux = (gathered + 0.5 * made) / flowArea
+        const more = vapourFlux / rowLossVapour[r] - 1
+        const wetter = liquidFlux / rowLossLiquid[r] - 1
+        if (more < SAME_FLOW && more > -SAME_FLOW && wetter < SAME_FLOW && wetter > -SAME_FLOW)
+          pressure -= rowLoss[r] * (1 + LOSS_POWER * more)
+        else {
+          this.takeLoss(r, vapourFlux, liquidFlux)
+          pressure -= rowLoss[r]
+        }
         if (pressure < PRESSURE_FLOOR * this.inletPressure) {
           pressure = PRESSURE_FLOOR * this.inletPressure
           this.clamped = true
@@ -618,6 +652,7 @@ export class RowMarch {
       gathered += made
       remaining = Math.max(0, remaining - made)
     }
+    this.movedBefore = first ? 1 : this.moved
     this.first = false
     this.duty = duty
     this.condensate = gathered
@@ -632,11 +667,13 @@ export class RowMarch {
     const Ts = pressure === this.inletPressure ? this.Ts : saturationTemperature(fluid, pressure)
     this.rowPressure[r] = pressure
     this.rowTs[r] = Ts
+    this.rowSaturation[r] = Ts
     fillVapour(fluid, Ts, vapour)
+    this.rowSlope[r] = Ts / (vapour[RHO_V] * vapour[H_FG])
     this.rowLatent[r] = vapour[H_FG]
     this.rowVapourDensity[r] = vapour[RHO_V]
     this.rowVapourViscosity[r] = vapour[MU_V]
-    this.rowLossFlow[r] = Number.NaN
+    this.rowLossVapour[r] = Number.NaN
   }
 
   private takeFilm(r: number, reference: number): void {
@@ -655,22 +692,21 @@ export class RowMarch {
     }
   }
 
-  /** Pressure loss of a row for its mean vapour flow and the condensate that drains through it. */
-  private takeLoss(r: number, middle: number, drained: number, flowArea: number): void {
+  /** Pressure loss of a row from its mean vapour flow and what drains through it, kg/s per m² of frontal area. */
+  private takeLoss(r: number, vapourFlux: number, liquidFlux: number): void {
     const Do = this.s.outsideDiameter
-    const area = flowArea * this.fmin
     const rhoV = this.rowVapourDensity[r]
-    const throat = middle / (rhoV * area)
+    const throat = vapourFlux / (rhoV * this.fmin)
     let loss = rowPressureDrop(this.lossOf((rhoV * throat * Do) / this.rowVapourViscosity[r]), rhoV, throat)
     if (this.twoPhase) {
       const rhoL = this.rowDensity[r]
-      const slow = drained / (rhoL * area)
+      const slow = liquidFlux / (rhoL * this.fmin)
       const re = (rhoL * slow * Do) / this.rowViscosity[r]
       loss = ishihara(loss, rowPressureDrop(this.lossOf(re), rhoL, slow))
     }
     this.rowLoss[r] = loss
-    this.rowLossFlow[r] = middle
-    this.rowLossLiquid[r] = drained
+    this.rowLossVapour[r] = vapourFlux
+    this.rowLossLiquid[r] = liquidFlux
   }
 
   private lossOf(re: number): number {
