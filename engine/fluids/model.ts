@@ -186,7 +186,8 @@ export function saturationTemperature(model: FluidModel, p: number): number {
   let base = 0
   while (lnP > c[base + INVERSE]) base += STRIDE
   const x = (lnP - c[base + INVERSE + 1]) * c[base + INVERSE + 2]
-  if (x < -1 || x > 1) {
+  // Inside the table a pressure at a joint may fall a rounding beyond its segment; only past the ends the line goes on.
+  if ((x < -1 && base === 0) || (x > 1 && base === (model.segments - 1) * STRIDE)) {
     const end = x < 0 ? model.minTemperature : model.maxTemperature
     logPressure(c, end)
     const inverse = 1 / end - (lnP - pair[0]) / (pair[1] * end * end)
