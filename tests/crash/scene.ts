@@ -1,6 +1,6 @@
 // A database cluster of its own, worker processes to kill, and a line to cut: what runs have to survive.
 import { type ChildProcess, spawn } from 'node:child_process'
-import { mkdirSync, rmSync } from 'node:fs'
+import { existsSync, mkdirSync, readdirSync, rmSync } from 'node:fs'
 import net from 'node:net'
 import { dirname, join } from 'node:path'
 import { fileURLToPath } from 'node:url'
@@ -96,7 +96,10 @@ export class Scene {
 
   /** Has to come before anything uses the application's database. */
   static async open(log: (line: string) => void): Promise<Scene> {
-    const folder = join(PRIVATE, 'crash', String(process.pid))
+    const scenes = join(PRIVATE, 'crash')
+    mkdirSync(scenes, { recursive: true })
+    for (const name of readdirSync(scenes)) if (!lives(Number(name))) await clearAway(join(scenes, name))
+    const folder = join(scenes, String(process.pid))
     mkdirSync(folder, { recursive: true })
     const cluster = await startCluster(settings(folder))
     process.env.DATABASE_URL = cluster.url
@@ -109,11 +112,7 @@ export class Scene {
     await this.#dismiss()
     await (await queue()).stop({ close: false, graceful: false })
     await pool.end()
-    await this.#cluster.stop('immediate')
-    const { dataFolder } = this.#cluster.record
-    rmSync(dataFolder, { recursive: true, force: true })
-    if (dirname(dataFolder) !== this.#folder) rmSync(dirname(dataFolder), { recursive: true, force: true })
-    rmSync(this.#folder, { recursive: true, force: true })
+    await remove(this.#cluster, this.#folder)
   }
 
   /** SIGKILL at random moments; a new worker takes each one's place. */
@@ -282,6 +281,30 @@ export class Scene {
 }
 
 const settings = (folder: string) => ({ folder, packages: join(PRIVATE, 'postgresql'), durable: false })
+
+/** Ends and removes the cluster of a scene that was killed before it could. */
+async function clearAway(folder: string): Promise<void> {
+  if (existsSync(join(folder, 'cluster.json'))) await remove(await startCluster(settings(folder)), folder)
+  else rmSync(folder, { recursive: true, force: true })
+}
+
+async function remove(cluster: Cluster, folder: string): Promise<void> {
+  await cluster.stop('immediate')
+  const { dataFolder } = cluster.record
+  rmSync(dataFolder, { recursive: true, force: true })
+  if (dirname(dataFolder) !== folder) rmSync(dirname(dataFolder), { recursive: true, force: true })
+  rmSync(folder, { recursive: true, force: true })
+}
+
+function lives(pid: number): boolean {
+  try {
+    process.kill(pid, 0)
+    return true
+  } catch {
+    return false
+  }
+}
+
 const pause = (ms: number) => new Promise((resolve) => setTimeout(resolve, ms))
 const any = <T>(set: Set<T>): T => [...set][Math.floor(Math.random() * set.size)]
 
