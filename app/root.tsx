@@ -12,7 +12,7 @@ import {
 } from 'react-router'
 import type { Theme, Units } from '#drizzle/schema/person.ts'
 import type { Route } from './+types/root'
-import { ErrorPage } from './components/shell/error-page.tsx'
+import { ErrorPage, explain } from './components/shell/error-page.tsx'
 import { Mark } from './components/shell/mark.tsx'
 import { useSettled } from './components/ui/button.tsx'
 import { UnitsProvider } from './components/ui/number.tsx'
@@ -23,6 +23,10 @@ import './app.css'
 export { middleware } from '#app/http/gate.server.ts'
 
 export const links: Route.LinksFunction = () => [{ rel: 'icon', href: '/favicon.svg', type: 'image/svg+xml' }]
+
+export const meta: Route.MetaFunction = ({ error }) => [
+  { title: error ? `${explain(error).title} · Rowfall` : 'Rowfall' },
+]
 
 export function loader({ context }: Route.LoaderArgs) {
   const visitor = context.get(visitorContext)
@@ -84,7 +88,6 @@ export default function Root() {
 export function ErrorBoundary({ error }: Route.ErrorBoundaryProps) {
   return (
     <>
-      <title>Rowfall</title>
       <header className="flex h-14 items-center border-b border-line px-4 sm:px-7">
         <a href="/" className="flex items-center gap-2.5 text-lead font-extrabold">
           <Mark />

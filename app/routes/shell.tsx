@@ -1,10 +1,14 @@
 // The frame of every signed-in page.
 import { useEffect, useRef } from 'react'
 import { Outlet, useLocation } from 'react-router'
-import { ErrorPage } from '#app/components/shell/error-page.tsx'
+import { ErrorPage, explain } from '#app/components/shell/error-page.tsx'
 import { Header } from '#app/components/shell/header.tsx'
 import { viewerContext } from '#app/http/context.ts'
 import type { Route } from './+types/shell'
+
+export const meta: Route.MetaFunction = ({ error }) => [
+  { title: error ? `${explain(error).title} · Rowfall` : 'Rowfall' },
+]
 
 export function loader({ context }: Route.LoaderArgs) {
   const { name, email, role, theme } = context.get(viewerContext)

@@ -95,6 +95,7 @@ function PersonMenu({ person }: { person: HeaderPerson }) {
   const role = person.role.charAt(0).toUpperCase() + person.role.slice(1)
   return (
     <Disclosure
+      look="plain"
       name={`${person.name}, ${person.role}: your menu`}
       className="w-64 p-3"
       label={

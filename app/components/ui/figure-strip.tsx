@@ -17,7 +17,7 @@ export function FigureStrip({ figures, label }: { figures: Figure[]; label: stri
         >
           <dt className="text-note text-soft">{figure.label}</dt>
           <dd
-            className={`mt-0.5 text-head font-bold tracking-tight ${
+            className={`mt-0.5 text-head font-bold tracking-tight [&_.unit]:text-body [&_.unit]:font-semibold [&_.unit]:tracking-normal ${
               figure.tone === 'attention' ? 'text-copper-ink' : figure.tone === 'failed' ? 'text-red-ink' : ''
             }`}
           >

@@ -16,7 +16,7 @@ export function PageHead({
 }) {
   return (
     <header className="flex flex-wrap items-start justify-between gap-x-8 gap-y-3">
-      <div className="min-w-0 max-w-[62rem] grow basis-[24rem]">
+      <div className="min-w-0 max-w-[62rem] grow basis-[min(100%,32rem)]">
         {over ? <p className="mb-1 text-note font-semibold text-soft">{over}</p> : null}
         <h1 id="page-title" tabIndex={-1} className="text-head leading-tight sm:text-display">
           {title}
@@ -85,6 +85,24 @@ export function Sheet({
       <div className={flush ? '' : `px-4 pb-4 sm:px-5 sm:pb-5 ${title || acts ? '' : 'pt-4 sm:pt-5'}`}>
         {children}
       </div>
+    </section>
+  )
+}
+
+/** A wide table scrolls inside its sheet, by keyboard too. */
+export function Scroll({
+  label,
+  children,
+  className = '',
+}: {
+  label: string
+  children: ReactNode
+  className?: string
+}) {
+  return (
+    // biome-ignore lint/a11y/noNoninteractiveTabindex: what scrolls must be reachable by keyboard
+    <section aria-label={label} tabIndex={0} className={`scroll-thin overflow-x-auto ${className}`}>
+      {children}
     </section>
   )
 }

@@ -81,7 +81,7 @@ export default function SignIn({ loaderData }: Route.ComponentProps) {
   const { returnTo, signedOut, people, picture } = loaderData
   const per = (value: number | null) => formatQuantity(value, 'heatTransferCoefficient', 'si', { digits: 3 })
   return (
-    <div className="grid min-h-dvh lg:grid-cols-[minmax(0,1fr)_28rem]">
+    <main id="main" className="grid min-h-dvh lg:grid-cols-[minmax(0,1fr)_28rem]">
       <div className="flex flex-col justify-between gap-8 px-6 py-8 sm:px-12 lg:py-12">
         <p className="flex items-center gap-2.5 text-lead font-extrabold">
           <Mark />
@@ -114,8 +114,8 @@ export default function SignIn({ loaderData }: Route.ComponentProps) {
           follow local codes and licensed practice.
         </p>
       </div>
-      <main
-        id="main"
+      <section
+        aria-labelledby="page-title"
         className="flex flex-col justify-center gap-5 border-line bg-sheet px-6 py-10 max-lg:border-t sm:px-12 lg:border-s lg:px-10"
       >
         <h1 id="page-title" tabIndex={-1} className="text-head">
@@ -133,8 +133,10 @@ export default function SignIn({ loaderData }: Route.ComponentProps) {
                 <li key={email}>
                   <SignInForm returnTo={returnTo} loginHint={email}>
                     <Button type="submit" className="w-full justify-start! text-start!">
-                      <span className="block">{role}</span>
-                      <span className="block text-note font-medium text-soft">{does}</span>
+                      <span className="grid">
+                        {role}
+                        <span className="text-note font-medium text-soft">{does}</span>
+                      </span>
                     </Button>
                   </SignInForm>
                 </li>
@@ -154,8 +156,8 @@ export default function SignIn({ loaderData }: Route.ComponentProps) {
             </SignInForm>
           </>
         )}
-      </main>
-    </div>
+      </section>
+    </main>
   )
 }
 

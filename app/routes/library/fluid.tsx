@@ -6,7 +6,7 @@ import { Button } from '#app/components/ui/button.tsx'
 import { TextField } from '#app/components/ui/field.tsx'
 import { MarginNote } from '#app/components/ui/margin-note.tsx'
 import { Quantity, useUnits } from '#app/components/ui/number.tsx'
-import { MarginPage, PageHead, Sheet } from '#app/components/ui/page.tsx'
+import { MarginPage, PageHead, Scroll, Sheet } from '#app/components/ui/page.tsx'
 import { readQuantity } from '#app/components/ui/quantity-input.ts'
 import { viewerContext } from '#app/http/context.ts'
 import { AppError } from '#app/http/errors.ts'
@@ -175,7 +175,7 @@ export default function Fluid({ loaderData }: Route.ComponentProps) {
         ) : null}
       </Sheet>
       <Sheet title="Along the saturation line" flush>
-        <div className="scroll-thin overflow-x-auto">
+        <Scroll label="Saturation properties">
           <table className="data-table">
             <caption className="visually-hidden">Saturation properties of {titleOf(fluid)}</caption>
             <thead>
@@ -199,7 +199,7 @@ export default function Fluid({ loaderData }: Route.ComponentProps) {
               ))}
             </tbody>
           </table>
-        </div>
+        </Scroll>
       </Sheet>
       <div className="grid gap-5 md:grid-cols-2">
         {PLOTS.map(({ name, of }) => (

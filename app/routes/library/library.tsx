@@ -3,7 +3,7 @@ import type { ReactNode } from 'react'
 import { Link } from 'react-router'
 import { CHOICE_LABELS, evidenceTone, GRADE_WORDS, SAFETY_WORDS } from '#app/components/library/words.ts'
 import { Digits, Quantity } from '#app/components/ui/number.tsx'
-import { PageHead, PlainPage, Sheet } from '#app/components/ui/page.tsx'
+import { PageHead, PlainPage, Scroll, Sheet } from '#app/components/ui/page.tsx'
 import { Tag } from '#app/components/ui/tag.tsx'
 import { cards } from '#engine/correlations/registry.ts'
 import { coolants, fluids } from '#engine/fluids/index.ts'
@@ -291,7 +291,9 @@ function Part({
     <section id={id} className="grid scroll-mt-20 gap-2">
       <h2 className="text-head">{title}</h2>
       {note ? <p className="max-w-[75ch] text-soft">{note}</p> : null}
-      <div className="sheet scroll-thin overflow-x-auto">{children}</div>
+      <Scroll label={title} className="sheet">
+        {children}
+      </Scroll>
     </section>
   )
 }

@@ -2,7 +2,7 @@
 import { Link } from 'react-router'
 import { FigureStrip } from '#app/components/ui/figure-strip.tsx'
 import { Digits } from '#app/components/ui/number.tsx'
-import { PageHead, PlainPage, Sheet } from '#app/components/ui/page.tsx'
+import { PageHead, PlainPage, Scroll, Sheet } from '#app/components/ui/page.tsx'
 import { Tag } from '#app/components/ui/tag.tsx'
 import { cards } from '#engine/correlations/registry.ts'
 import { formatNumber } from '#engine/units.ts'
@@ -27,11 +27,15 @@ export function loader() {
   const unverified = cards
     .filter((card) => card.default && card.methodId !== undefined && !printed.has(card.id))
     .map(({ id, name, evidence }) => ({ id, name, evidence }))
-  return { rows, unverified, engineVersion: ENGINE_VERSION }
+  const byEvidence = EVIDENCE.map((evidence) => ({
+    evidence,
+    count: rows.filter((row) => row.evidence === evidence).length,
+  }))
+  return { rows, byEvidence, unverified, engineVersion: ENGINE_VERSION }
 }
 
 export default function Validation({ loaderData }: Route.ComponentProps) {
-  const { rows, unverified, engineVersion } = loaderData
+  const { rows, byEvidence, unverified, engineVersion } = loaderData
   const outside = rows.filter(({ within }) => !within)
   const worst = rows.reduce((most, { deviation }) => Math.max(most, Math.abs(deviation)), 0)
   return (
@@ -47,26 +51,31 @@ export default function Validation({ loaderData }: Route.ComponentProps) {
       <FigureStrip
         label="Checks by evidence"
         figures={[
-          ...EVIDENCE.map((evidence) => ({
-            label: evidence,
-            value: <Digits>{rows.filter((row) => row.evidence === evidence).length}</Digits>,
-          })),
+          ...byEvidence.map(({ evidence, count }) => ({ label: evidence, value: <Digits>{count}</Digits> })),
           { label: 'largest deviation', value: `${formatNumber(100 * worst, 2)} %` },
         ]}
       />
       <Parity rows={rows} />
       <Sheet title="Every check" flush>
-        <div className="scroll-thin overflow-x-auto">
+        <Scroll label="Every check">
           <table className="data-table">
             <thead>
               <tr>
-                <th>Check</th>
-                <th>Source</th>
-                <th>Evidence</th>
-                <th className="numeric">Expected</th>
-                <th className="numeric">Obtained</th>
-                <th className="numeric">Deviation</th>
-                <th className="numeric">Allowed</th>
+                <th scope="col">Check</th>
+                <th scope="col">Source</th>
+                <th scope="col">Evidence</th>
+                <th scope="col" className="numeric">
+                  Expected
+                </th>
+                <th scope="col" className="numeric">
+                  Obtained
+                </th>
+                <th scope="col" className="numeric">
+                  Deviation
+                </th>
+                <th scope="col" className="numeric">
+                  Allowed
+                </th>
               </tr>
             </thead>
             <tbody>
@@ -76,10 +85,12 @@ export default function Validation({ loaderData }: Route.ComponentProps) {
                   <td>{row.source}</td>
                   <td>{row.evidence}</td>
                   <td className="numeric">
-                    {formatNumber(row.expected, 6)} {row.unit}
+                    <Digits>{formatNumber(row.expected, 6)}</Digits>
+                    <span className="unit">{row.unit}</span>
                   </td>
                   <td className="numeric">
-                    {formatNumber(row.obtained, 6)} {row.unit}
+                    <Digits>{formatNumber(row.obtained, 6)}</Digits>
+                    <span className="unit">{row.unit}</span>
                   </td>
                   <td className="numeric">
                     <Tag tone={row.within ? 'sound' : 'failed'}>{percent(row.deviation)}</Tag>
@@ -91,7 +102,7 @@ export default function Validation({ loaderData }: Route.ComponentProps) {
               ))}
             </tbody>
           </table>
-        </div>
+        </Scroll>
       </Sheet>
       <Sheet title="Default methods without a printed-value check">
         <p className="mb-3 max-w-[70ch] text-soft">
@@ -114,6 +125,10 @@ export default function Validation({ loaderData }: Route.ComponentProps) {
 
 const percent = (share: number) => `${share < 0 ? '−' : ''}${formatNumber(Math.abs(100 * share), 2)} %`
 
+const SUPERSCRIPTS = '⁰¹²³⁴⁵⁶⁷⁸⁹'
+const power = (exponent: number) =>
+  [...String(exponent)].map((digit) => (digit === '-' ? '⁻' : SUPERSCRIPTS[Number(digit)])).join('')
+
 const SIZE = 320
 const EDGE = 34
 
@@ -123,7 +138,7 @@ function Parity({ rows }: { rows: ValidationRow[] }) {
   const low = Math.floor(Math.min(...logs))
   const high = Math.ceil(Math.max(...logs))
   const x = (value: number) =>
-    EDGE + ((Math.log10(Math.abs(value)) - low) / (high - low)) * (2 * SIZE - EDGE - 8)
+    EDGE + ((Math.log10(Math.abs(value)) - low) / (high - low)) * (2 * SIZE - EDGE - 24)
   const reach = 0.02
   const y = (deviation: number) =>
     SIZE / 2 - (Math.max(-1.2 * reach, Math.min(1.2 * reach, deviation)) / reach) * (SIZE / 2 - 40)
@@ -139,7 +154,7 @@ function Parity({ rows }: { rows: ValidationRow[] }) {
           <g key={line}>
             <line
               x1={EDGE}
-              x2={2 * SIZE - 8}
+              x2={2 * SIZE - 24}
               y1={y(line)}
               y2={y(line)}
               stroke="var(--line-strong)"
@@ -159,7 +174,7 @@ function Parity({ rows }: { rows: ValidationRow[] }) {
             fontSize="11"
             fill="var(--soft)"
           >
-            1e{decade}
+            10{power(decade)}
           </text>
         ))}
         {rows.map((row) => (

@@ -11,7 +11,7 @@ import { PointsDone, RunStateTag } from '#app/components/study/run-state.tsx'
 import { Button } from '#app/components/ui/button.tsx'
 import { MarginNote } from '#app/components/ui/margin-note.tsx'
 import { Digits, Quantity, useUnits } from '#app/components/ui/number.tsx'
-import { EmptyState, PageHead, PlainPage, Sheet } from '#app/components/ui/page.tsx'
+import { EmptyState, PageHead, PlainPage, Scroll, Sheet } from '#app/components/ui/page.tsx'
 import { Tag } from '#app/components/ui/tag.tsx'
 import { projectContext } from '#app/http/context.ts'
 import { chosenOf } from '#app/modules/comparisons/chosen.ts'
@@ -94,7 +94,7 @@ export default function Compare({ loaderData }: Route.ComponentProps) {
       <SideBySide studies={studies} />
       <Fronts studies={studies} />
       <details className="screen-only">
-        <summary className="font-semibold text-verdigris-ink">Choose other studies</summary>
+        <summary className="list-inside font-semibold text-verdigris-ink">Choose other studies</summary>
         <Sheet className="mt-3">
           <Choice listed={listed} />
         </Sheet>
@@ -169,7 +169,7 @@ function SideBySide({ studies }: { studies: Compared[] }) {
   const areas = studies.map(areaOf)
   const least = Math.min(...areas.filter((area) => area !== null))
   return (
-    <div className="sheet scroll-thin overflow-x-auto">
+    <Scroll label="Studies side by side" className="sheet">
       <table className="data-table compare-table">
         <caption className="visually-hidden">Studies side by side</caption>
         <thead>
@@ -276,7 +276,7 @@ function SideBySide({ studies }: { studies: Compared[] }) {
             ))}
         </Group>
       </table>
-    </div>
+    </Scroll>
   )
 }
 

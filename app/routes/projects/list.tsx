@@ -109,7 +109,7 @@ function NewProject({ refused, open }: { refused: Refused | undefined; open: boo
   const form = useFaultFocus(refused)
   return (
     <details open={open} className="max-w-2xl">
-      <summary className="mb-3 font-semibold text-verdigris-ink">New project</summary>
+      <summary className="mb-3 list-inside font-semibold text-verdigris-ink">New project</summary>
       <Sheet>
         <Form method="post" ref={form} className="grid gap-4">
           <TextField

@@ -99,7 +99,7 @@ export default function Project({ loaderData, actionData }: Route.ComponentProps
         title={
           nothing
             ? `${project.name} has no study yet`
-            : `${project.name}: ${listed}${archived ? '' : `, ${finished} run to the end`}`
+            : `${project.name}: ${listed}${archived ? '' : finishedText(finished, studies.length)}`
         }
         reason={project.description || null}
         acts={
@@ -123,6 +123,12 @@ export default function Project({ loaderData, actionData }: Route.ComponentProps
       <Members {...{ members, mayManage, refused }} viewerId={loaderData.viewerId} />
     </PlainPage>
   )
+}
+
+function finishedText(finished: number, all: number): string {
+  if (finished === 0) return ', none finished yet'
+  if (finished === all) return all === 1 ? ', finished' : ', all finished'
+  return `, ${finished} finished`
 }
 
 function useToldAndUndo(answer: Route.ComponentProps['actionData']) {
@@ -257,7 +263,7 @@ function StudyMenu({
   const form = useFaultFocus(mine)
   const id = <input type="hidden" name="studyId" value={study.id} />
   return (
-    <Disclosure label="Acts" name={`Acts on ${study.name}`} small className="w-72 p-2">
+    <Disclosure label="More" name={`More on ${study.name}`} small className="w-72 p-2">
       {archived ? null : (
         <>
           <Form
@@ -329,7 +335,7 @@ function NewStudy({
     sent?.get('intent') === intent && (example === '' || sent.get('example') === example)
   return (
     <details open={open || ['blank', 'upload'].includes(refused?.intent ?? '')} className="group">
-      <summary className="text-lead font-bold text-verdigris-ink">New study</summary>
+      <summary className="list-inside text-lead font-bold text-verdigris-ink">New study</summary>
       <div className="mt-4 grid gap-4 md:grid-cols-2 xl:grid-cols-3">
         {examples.map((example) => (
           <Form key={example.id} method="post" className="sheet grid content-between gap-3 p-5">
@@ -405,7 +411,7 @@ function Members({
   const form = useFaultFocus(mine)
   return (
     <details open={mine !== null}>
-      <summary className="text-lead font-bold text-verdigris-ink">
+      <summary className="list-inside text-lead font-bold text-verdigris-ink">
         {members.length} {plural(members.length, 'member')}
       </summary>
       <Sheet className="mt-4 max-w-3xl">

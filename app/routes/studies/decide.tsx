@@ -7,7 +7,7 @@ import { Said } from '#app/components/sheet/said.tsx'
 import { Button, DownloadLink, LinkButton } from '#app/components/ui/button.tsx'
 import { MarginNote, NoteList } from '#app/components/ui/margin-note.tsx'
 import { Digits, Quantity, useUnits } from '#app/components/ui/number.tsx'
-import { EmptyState, MarginPage, PageHead, PlainPage, Sheet } from '#app/components/ui/page.tsx'
+import { EmptyState, MarginPage, PageHead, PlainPage, Scroll, Sheet } from '#app/components/ui/page.tsx'
 import { projectContext } from '#app/http/context.ts'
 import { chosenOf } from '#app/modules/comparisons/chosen.ts'
 import { candidateOf, MOST_COMPARED, type RunCandidate } from '#app/modules/comparisons/comparison.server.ts'
@@ -146,7 +146,7 @@ function DecideOnRun({
       {best && refined?.improved ? (
         <Sheet title="What refining gained">
           <p className="mb-3 max-w-[70ch] text-soft">{refined.statement}</p>
-          <div className="scroll-thin overflow-x-auto">
+          <Scroll label="Best and refined point">
             <table className="data-table">
               <thead>
                 <tr>
@@ -189,7 +189,7 @@ function DecideOnRun({
                 ))}
               </tbody>
             </table>
-          </div>
+          </Scroll>
         </Sheet>
       ) : null}
       <Beside {...{ candidate, others, projectId, most }} />

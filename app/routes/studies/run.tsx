@@ -12,7 +12,7 @@ import { type Figure, FigureStrip } from '#app/components/ui/figure-strip.tsx'
 import { MarginNote } from '#app/components/ui/margin-note.tsx'
 import { Digits, useUnits } from '#app/components/ui/number.tsx'
 import { duration, plural, significant } from '#app/components/ui/number-format.ts'
-import { EmptyState, MarginPage, PageHead, PlainPage, Sheet } from '#app/components/ui/page.tsx'
+import { EmptyState, MarginPage, PageHead, PlainPage, Scroll, Sheet } from '#app/components/ui/page.tsx'
 import { ProgressBar } from '#app/components/ui/progress.tsx'
 import { When } from '#app/components/ui/when.tsx'
 import { viewerContext } from '#app/http/context.ts'
@@ -400,7 +400,7 @@ function Failures({
 function EarlierRuns({ runs, shown, studyId }: { runs: RunPage['runs']; shown: string; studyId: string }) {
   return (
     <Sheet title="All runs of this study" flush>
-      <div className="scroll-thin overflow-x-auto">
+      <Scroll label="Runs of this study">
         <table className="data-table">
           <caption className="visually-hidden">Runs of this study, the latest first</caption>
           <thead>
@@ -456,7 +456,7 @@ function EarlierRuns({ runs, shown, studyId }: { runs: RunPage['runs']; shown: s
             ))}
           </tbody>
         </table>
-      </div>
+      </Scroll>
     </Sheet>
   )
 }
