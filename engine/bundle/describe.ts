@@ -236,6 +236,24 @@ function noteOf(code: NoteCode, point: PointSolver, rows: RowResult[]): Note {
         `Rows ${list((row) => row.drainageMode === 'sheet')} drain as sheets, where an exponent of ${march.exponent} is on the hopeful side; see what drainageMode gives.`,
         'Hu and Jacobi 1996',
       )
+    case 'idleRows':
+      return note(
+        'caution',
+        `Rows ${list((row) => row.heatFlux === 0)} condense nothing: their coolant is as warm as the vapour's saturation there.`,
+        'balance of this point',
+      )
+    case 'shearRange':
+      return note(
+        'outOfRange',
+        `The two-phase Reynolds number of the first row is ${three(march.shearReynolds(0))}; the shear law was validated from 3e5 to 1e6.`,
+        'VDI Heat Atlas, Ja7',
+      )
+    case 'layoutRange':
+      return note(
+        'outOfRange',
+        `Transverse pitch over diameter is ${three(march.transverseRatio)}; the loss charts run from 1.25 to 2.5 and are held at their ends.`,
+        findCard(`vapourPressureDrop.${point.methods.vapourPressureDrop}`)?.source[0] ?? '',
+      )
     case 'manyRows':
       return note(
         'outOfRange',

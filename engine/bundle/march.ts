@@ -21,7 +21,7 @@ const CLOSE = 3e-10
 /** A sweep may change this much if it changes so much less than the one before that `CLOSE` is what remains. */
 const LAST_CHANGE = 1e-7
 /** Sweeps after which the quick loop gives way to the bracketed search. */
-const QUICK_SWEEPS = 30
+const QUICK_SWEEPS = 40
 /** Sweeps that one trial of the bracketed search may take. */
 const TRIAL_SWEEPS = 120
 /** Sweeps after which what swings from one to the next is damped. */
@@ -100,6 +100,7 @@ export class BundleMarch extends RowMarch {
     const guess =
       -Math.expm1((-this.guessedCoefficient() * area) / capacity) * capacity * (this.Ts - s.inletTemperature)
     this.inletVapour = guess / this.inlet[H_FG]
+    this.spreadRise(guess / capacity)
     if (!this.quickVapour(true)) {
       const outcome = this.bracket(BY_VAPOUR, Number.NaN, true)
       if (outcome !== 0) return outcome
@@ -162,6 +163,7 @@ export class BundleMarch extends RowMarch {
     const outlet = byOutlet ? s.outletTemperature : Number.NaN
     this.length = this.guessLength()
     this.start(true)
+    this.spreadRise(s.duty / (this.flow * this.water[COOLANT_CP]))
     if (!this.quickDuty(BY_LENGTH, s.duty, outlet)) {
       const outcome = this.bracket(BY_LENGTH, s.duty, true, outlet)
       if (outcome !== 0) return outcome
@@ -206,7 +208,7 @@ export class BundleMarch extends RowMarch {
       this.inletVapour = (total * this.condensate) / this.duty
       const log = Math.log(by === BY_LENGTH ? this.length : this.flow)
       if (n < 1 || Number.isNaN(slope)) slope = by === BY_LENGTH ? this.lengthElasticity() : 0.5
-      if (this.moved < 0.7 * Math.abs(log - lastLog)) {
+      if (this.moved < (by === BY_LENGTH ? 0.7 : 2) * Math.abs(log - lastLog)) {
         const seen = -(short - lastShort) / (log - lastLog)
         if (seen > 0.1 && seen < 4) slope = seen
       }
@@ -219,6 +221,7 @@ export class BundleMarch extends RowMarch {
       } else {
         this.flow *= grow
         if (!(this.flow < 1e9)) return false
+        this.stretchRise(total / (this.duty * grow))
       }
     }
     return false
@@ -385,8 +388,8 @@ export class BundleMarch extends RowMarch {
     const duty = this.duty
     if (s.inletTemperature >= this.Ts - s.wallSubcooling) return OUTCOME.noVelocityHoldsWall
     this.remember()
-    this.flow = this.velocityToFlow(1.5)
     this.start(true)
+    this.guessFlow(duty)
     let outcome = 0
     if (!this.quickDuty(BY_FLOW, duty, Number.NaN) || this.flow > this.velocityToFlow(FASTEST)) {
       this.length = this.kept[KEPT_LENGTH]
@@ -395,6 +398,27 @@ export class BundleMarch extends RowMarch {
     if (outcome === 0) outcome = this.refusal() === 0 ? this.finishCoolant() : OUTCOME.noVelocityHoldsWall
     this.recall()
     return outcome
+  }
+
+  /** The flow at which the inner conductance carries the duty from the wall to the coolant's mean temperature. */
+  private guessFlow(duty: number): void {
+    const { s } = this
+    const wall = this.Ts - s.wallSubcooling
+    const area = this.tubes * Math.PI * s.outsideDiameter * this.length
+    const cp = this.leastSpecificHeat()
+    const least = (1.02 * duty) / (cp * (wall - s.inletTemperature))
+    const most = this.velocityToFlow(FASTEST)
+    let flow = Math.max(least, this.velocityToFlow(1.5))
+    for (let n = 0; n < 12; n++) {
+      const rise = duty / (flow * cp)
+      this.flow = flow
+      this.spreadRise(rise)
+      this.coolantSide()
+      const carried = (this.innerConductance() * area * (wall - s.inletTemperature - 0.5 * rise)) / duty
+      const next = Math.min(most, Math.max(least, flow * Math.min(4, Math.max(0.25, carried ** -1.6))))
+      if (!(Math.abs(next - flow) > 0.01 * flow)) break
+      flow = next
+    }
   }
 
   /** Outlet temperatures from the heat of the rows as it stands, and the coolant's pressure drop. */

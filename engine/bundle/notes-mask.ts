@@ -23,6 +23,7 @@ import {
 } from '#engine/fluids/index.ts'
 import { NOTE_BIT, type NoteCode } from '#engine/notes.ts'
 import type { PointSolver } from './point-solver.ts'
+import { DROP, SHEAR } from './point-state.ts'
 
 const liquid = new Float64Array(SATURATION_LENGTH)
 const water = new Float64Array(COOLANT_LENGTH)
@@ -38,6 +39,11 @@ export const IMPINGEMENT = 2200
 /** Inner wall closer than this to freezing is noted [K]. */
 export const FREEZING_MARGIN = 2
 
+const ZUKAUSKAS = DROP.indexOf('zukauskas')
+const FUJII = SHEAR.indexOf('fujiiUeharaKurata')
+/** Two-phase Reynolds numbers that Fujii, Uehara and Kurata's law was validated in (VDI Heat Atlas). */
+export const FUJII_RANGE = [3e5, 1e6] as const
+
 export function notesMask(point: PointSolver): number {
   const { march } = point
   const { s } = march
@@ -48,7 +54,9 @@ export function notesMask(point: PointSolver): number {
   let high = 0
   let jakob = 0
   let reference = false
+  let idle = false
   for (let r = 0; r < rows; r++) {
+    if (march.rowFlux[r] === 0) idle = true
     const x = march.rowX[r]
     const T = march.rowTs[r] - x + march.weight * x
     fillFilm(fluid, T, liquid)
@@ -63,6 +71,7 @@ export function notesMask(point: PointSolver): number {
   if (jakob > 0.5) mask += BIT.jakobNumberHigh
   if (march.Ts > 0.9 * fluid.criticalTemperature) mask += BIT.nearCritical
   if (reference) mask += BIT.referenceTemperatureOutsideTable
+  if (idle) mask += BIT.idleRows
   if (rows > 30) mask += BIT.manyRows
   const ga = galileo(liquid[RHO_L], liquid[SIGMA], liquid[MU_L])
   if (Number.isNaN(ga)) mask += BIT.noSurfaceTension
@@ -86,8 +95,14 @@ export function notesMask(point: PointSolver): number {
       const re = (march.rowVapourDensity[0] * throat * s.outsideDiameter) / march.rowVapourViscosity[0]
       if (re < 1 || re > 3e5) mask += BIT.vapourReynoldsRange
       if (rows < 5) mask += BIT.fewRows
+      if (march.drop === ZUKAUSKAS && (march.transverseRatio < 1.25 || march.transverseRatio > 2.5))
+        mask += BIT.layoutRange
     }
     if (march.rowVapourDensity[0] * throat * throat > IMPINGEMENT) mask += BIT.vapourMomentumHigh
+    if (march.shear === FUJII) {
+      const re = march.shearReynolds(0)
+      if (re < FUJII_RANGE[0] || re > FUJII_RANGE[1]) mask += BIT.shearRange
+    }
   }
   if (s.pitchRatio > 2.5) mask += BIT.pitchRatioWide
   if (march.vapourDrop > 0.1 * march.inletPressure) mask += BIT.vapourPressureDropHigh

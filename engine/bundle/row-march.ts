@@ -356,6 +356,37 @@ export class RowMarch {
     }
   }
 
+  /** Guesses the passes' temperatures from the rise of the whole coolant. */
+  protected spreadRise(rise: number): void {
+    const { passes, inletTemperature } = this.s
+    const most = Math.min(rise, 0.98 * (this.Ts - inletTemperature))
+    for (let j = 0; j < passes; j++) {
+      this.passIn[j] = inletTemperature + (most * j) / passes
+      this.passMean[j] = inletTemperature + (most * (j + 0.5)) / passes
+      this.passWall[j] = this.passMean[j]
+    }
+  }
+
+  /** Foresees the passes' temperatures when every rise changes by `factor`. */
+  protected stretchRise(factor: number): void {
+    const Tin = this.s.inletTemperature
+    for (let j = 0; j < this.s.passes; j++) {
+      this.passIn[j] = Tin + factor * (this.passIn[j] - Tin)
+      this.passMean[j] = Tin + factor * (this.passMean[j] - Tin)
+    }
+  }
+
+  /** Conductance of everything inside the film, mean of the passes as they stand, W/(m² K). */
+  protected innerConductance(): number {
+    const { s } = this
+    let sum = 0
+    for (let j = 0; j < s.passes; j++)
+      sum +=
+        this.passRows[j] /
+        (this.fixedResistance + s.outsideDiameter / (this.insideDiameter * this.passCoefficient[j]))
+    return sum / s.rows
+  }
+
   /** Coolant properties and inside coefficient of each pass at its mean temperature of the last sweep. */
   protected coolantSide(): void {
     const { s, water } = this
