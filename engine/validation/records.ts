@@ -15,7 +15,12 @@ import {
   nusseltRowMean,
 } from '#engine/correlations/inundation.ts'
 import { butterworth, rose, shekriladzeGomelauri } from '#engine/correlations/shear.ts'
-import { dittusBoelterTurbulent, gnielinski, petukhovFromFriction } from '#engine/correlations/tube-side.ts'
+import {
+  dittusBoelterTurbulent,
+  gnielinski,
+  gnielinskiFromFriction,
+  petukhovFromFriction,
+} from '#engine/correlations/tube-side.ts'
 import { gaddisGnielinski, ishihara, zukauskas } from '#engine/correlations/vapour-drop.ts'
 import { evaluate } from '#engine/evaluate.ts'
 import type { Result } from '#engine/result.ts'
@@ -634,6 +639,18 @@ export const validationRecords: readonly ValidationRecord[] = [
     () => gnielinski(39344, 5.411, 0.015748 / 4),
     5e-4,
     'printed to five digits',
+  ),
+  check(
+    'gnielinski-printed',
+    'Water at 50 °C, 25 kg/min in a 25 mm bore, from the friction factor',
+    'Sukhatme, A Textbook on Heat Transfer, example 8.3 (Fanning factor 0.005635)',
+    'printed value seen',
+    ['tubeSide.gnielinski'],
+    '',
+    198.39,
+    () => gnielinskiFromFriction((4 * (25 / 60)) / (Math.PI * 0.025 * 988.1 * 5.56e-7), 3.54, 4 * 0.005635),
+    1e-3,
+    'same properties and friction factor',
   ),
   check(
     'gnielinski-transition',
