@@ -19,7 +19,7 @@ export function Header({ person }: { person: HeaderPerson }) {
       <div className="flex min-h-14 flex-wrap items-center gap-x-4 px-4 sm:px-7">
         <Link to="/projects" className="flex items-center gap-2.5 text-lead font-extrabold tracking-tight">
           <Mark />
-          <span className={crumbs.length > 0 ? 'max-sm:visually-hidden' : ''}>Rowfall</span>
+          <span className={crumbs.length > 0 ? 'max-sm:sr-only' : ''}>Rowfall</span>
         </Link>
         <nav aria-label="Breadcrumb" className="min-w-0 grow basis-0 truncate py-3 text-soft">
           {crumbs.map((crumb, i) => (
@@ -101,10 +101,7 @@ function PersonMenu({ person }: { person: HeaderPerson }) {
       label={
         <>
           <span className="max-sm:hidden">{person.name}</span>
-          <span
-            className="flex size-8 items-center justify-center rounded-full bg-verdigris-wash sm:hidden"
-            aria-hidden="true"
-          >
+          <span className="sm:hidden" aria-hidden="true">
             {initials(person.name)}
           </span>
           {person.name.toLowerCase() === person.role ? null : (

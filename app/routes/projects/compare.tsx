@@ -22,11 +22,11 @@ import {
 } from '#app/modules/comparisons/comparison.server.ts'
 import { type ComparedRow, comparedRows } from '#app/modules/comparisons/differences.ts'
 import { keyResultOf, limitStandings } from '#app/modules/explore/limits.ts'
-import { type Entry, sheetInputs, sheetResults } from '#app/modules/explore/sheet.ts'
+import { type Entry, type EntryGroup, sheetInputs, sheetResults } from '#app/modules/explore/sheet.ts'
 import { listStudies } from '#app/modules/studies/studies.server.ts'
 import { LIMITS } from '#engine/sweep/limits.ts'
 import { OBJECTIVE_LABELS } from '#engine/sweep/objective.ts'
-import { displayUnit, formatQuantity, toDisplay } from '#engine/units.ts'
+import { displayUnit, formatQuantity, toDisplay, type UnitSystem } from '#engine/units.ts'
 import type { Route } from './+types/compare'
 
 export const meta: Route.MetaFunction = () => [{ title: 'Compare studies · Rowfall' }]
@@ -82,10 +82,7 @@ export default function Compare({ loaderData }: Route.ComponentProps) {
     )
   return (
     <PlainPage>
-      <PageHead
-        title={<Said>{headline(studies, (area) => formatQuantity(area, 'area', units, { digits: 3 }))}</Said>}
-        reason={reasonOf(studies)}
-      />
+      <PageHead title={<Said>{headline(studies, units)}</Said>} reason={reasonOf(studies)} />
       {without.map(({ id, name }) => (
         <MarginNote key={id} tone="attention" title={`${name} has no points yet.`}>
           Run it to set it beside the others.
@@ -131,43 +128,57 @@ function Choice({ listed }: { listed: { id: string; name: string; chosen: boolea
 
 const areaOf = (study: RunCandidate) => chosenOf(study)?.result.outsideArea ?? null
 
-/** Who has the least area, claimed only where the studies ask for the same duty within the same limits. */
-function headline(studies: Compared[], area: (value: number) => string): string {
-  const withArea = studies.filter((study) => areaOf(study) !== null)
-  if (withArea.length === 0) return `None of ${studies.length} studies has a point that meets its limits`
-  const sorted = [...withArea].sort((a, b) => (areaOf(a) as number) - (areaOf(b) as number))
-  const [least, next] = sorted
-  const text = `${least.name} needs least: ${area(areaOf(least) as number)}`
-  if (!next) return `${text}; the others have no point that meets their limits`
-  const share = (areaOf(next) as number) / (areaOf(least) as number) - 1
+const dutyOf = (study: RunCandidate) => chosenOf(study)?.result.duty ?? null
+
+/** Areas are only held against one another where they serve the same duty. */
+function sameDuty(studies: Compared[]): boolean {
+  const duties = studies.map(dutyOf).filter((duty) => duty !== null)
+  return duties.every((duty) => Math.abs(duty / duties[0] - 1) < 0.001)
+}
+
+function headline(studies: Compared[], units: UnitSystem): string {
+  const found = studies
+    .map((study) => ({ name: study.name, area: areaOf(study), duty: dutyOf(study) }))
+    .filter((study): study is { name: string; area: number; duty: number } => study.area !== null)
+    .sort((a, b) => a.area - b.area)
+  const area = (value: number) => formatQuantity(value, 'area', units, { digits: 3 })
+  if (found.length === 0) return `None of ${studies.length} studies has a point that meets its limits`
+  if (!sameDuty(studies))
+    return `${studies.length} studies of different duties: ${found
+      .map((study) => `${area(study.area)} for ${formatQuantity(study.duty, 'power', units, { digits: 3 })}`)
+      .join(', ')}`
+  const [least, next] = found
+  if (!next) return `Only ${least.name} has a point that meets its limits: ${area(least.area)}`
+  const share = 1 - least.area / next.area
   return share < 0.0005
-    ? `${least.name} and ${next.name} need the same: ${area(areaOf(least) as number)}`
-    : `${text}, ${Number((share * 100).toPrecision(2))} % under ${next.name}`
+    ? `${least.name} and ${next.name} need the same: ${area(least.area)}`
+    : `${least.name} needs least: ${area(least.area)}, ${Number((share * 100).toPrecision(2))} % under ${next.name}`
 }
 
 function reasonOf(studies: Compared[]): string {
-  const duties = studies.map((study) => chosenOf(study)?.result.duty ?? null)
-  const known = duties.filter((duty) => duty !== null)
-  const sameDuty = known.every((duty) => Math.abs(duty / known[0] - 1) < 0.001)
+  if (!sameDuty(studies)) return 'Their areas answer different questions; the rows below still compare.'
   const sameLimits = studies.every(
     ({ limits }) => JSON.stringify(limits) === JSON.stringify(studies[0].limits),
   )
-  if (!sameDuty) return 'Their duties differ, so their areas answer different questions.'
   return sameLimits
     ? 'All have the same duty and the same limits.'
     : 'All have the same duty; their limits differ.'
 }
 
+/** The drive's fields stand in one group, whichever of the two drives a study has. */
+const oneDrive = (groups: EntryGroup[]): EntryGroup[] =>
+  groups.map((group) => (/ given$/.test(group.title) ? { ...group, title: 'Drive' } : group))
+
 function SideBySide({ studies }: { studies: Compared[] }) {
   const units = useUnits()
   const points = studies.map(chosenOf)
   const inputs = comparedRows(
-    points.map((point) => (point ? sheetInputs(point.case, point.names, units) : [])),
+    points.map((point) => (point ? oneDrive(sheetInputs(point.case, point.names, units)) : [])),
   )
   const results = comparedRows(points.map((point) => (point ? sheetResults(point.case, point.result) : [])))
   const differing = inputs.filter(({ same }) => !same)
   const areas = studies.map(areaOf)
-  const least = Math.min(...areas.filter((area) => area !== null))
+  const least = sameDuty(studies) ? Math.min(...areas.filter((area) => area !== null)) : null
   return (
     <Scroll label="Studies side by side" className="sheet">
       <table className="data-table compare-table">
@@ -261,13 +272,15 @@ function SideBySide({ studies }: { studies: Compared[] }) {
           ))}
         </Group>
         <Limits studies={studies} />
-        <Group title="Results">
-          {results
-            .filter(({ label }) => label !== 'Outside area')
-            .map((row) => (
-              <EntryRow key={`${row.group} ${row.label}`} row={row} />
-            ))}
-        </Group>
+        {[...new Set(results.map(({ group }) => group))].map((group) => (
+          <Group key={group} title={group}>
+            {results
+              .filter((row) => row.group === group && row.label !== 'Outside area')
+              .map((row) => (
+                <EntryRow key={row.label} row={row} />
+              ))}
+          </Group>
+        ))}
         <Group title="Inputs that are the same">
           {inputs
             .filter(({ same }) => same)

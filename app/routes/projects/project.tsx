@@ -201,7 +201,9 @@ function StudyItem({
 }) {
   const { run } = study
   return (
-    <li className="grid grid-cols-[auto_minmax(0,1fr)_auto] items-center gap-x-3 px-4 py-3 sm:px-5">
+    <li
+      className={`grid items-center gap-x-3 px-4 py-3 sm:px-5 ${comparable ? 'grid-cols-[1rem_minmax(0,1fr)_auto]' : 'grid-cols-[minmax(0,1fr)_auto]'}`}
+    >
       {comparable && run ? (
         <input
           type="checkbox"
@@ -211,9 +213,9 @@ function StudyItem({
           aria-label={`Compare ${study.name}`}
           className="size-4"
         />
-      ) : (
+      ) : comparable ? (
         <span />
-      )}
+      ) : null}
       <div className="grid min-w-0 gap-x-6 gap-y-0.5 md:grid-cols-[minmax(0,1fr)_18rem] md:items-center">
         <div className="min-w-0">
           <Link to={`/studies/${study.id}`} className="link font-semibold">
