@@ -80,7 +80,7 @@ function walk(folder) {
 /** @param {string} path */
 function check(path) {
   const isTest = /\.test\.tsx?$/.test(path)
-  const isCommand = /\.cli\.ts$/.test(path)
+  const isCommand = /\/cli-[\w-]+\.ts$/.test(path)
   const text = readFileSync(join(root, path), 'utf8')
   if (path.startsWith('engine/') && !isTest && !isCommand) {
     const found = IMPURE.exec(text.replace(/\/\*[\s\S]*?\*\/|\/\/.*$/gm, ''))
