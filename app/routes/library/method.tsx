@@ -83,11 +83,14 @@ export default function Method({ loaderData }: Route.ComponentProps) {
               </>
             )}
           </MarginNote>
-          {card.notes?.map((note) => (
-            <MarginNote key={note} title={firstClause(note).head}>
-              {firstClause(note).rest}
-            </MarginNote>
-          ))}
+          {card.notes?.map((note) => {
+            const { head, rest } = firstClause(note)
+            return (
+              <MarginNote key={note} title={<Formula>{head}</Formula>}>
+                {rest === '' ? null : <Formula>{rest}</Formula>}
+              </MarginNote>
+            )
+          })}
           {card.available || card.methodId === undefined ? null : (
             <MarginNote tone="attention" title="Not yet selectable.">
               It stands here as a reference; no case can choose it.
@@ -186,6 +189,6 @@ function Grouped({ children }: { children: string }) {
 }
 
 function firstClause(note: string): { head: string; rest: string } {
-  const match = /^(.{12,90}?[.;:])\s+(.*)$/s.exec(note)
+  const match = /^(.{12,90}?[.;])\s+(.*)$/s.exec(note)
   return match ? { head: match[1], rest: match[2] } : { head: note, rest: '' }
 }
