@@ -472,13 +472,16 @@ function missingProperties(value: Case): Fault[] {
     for (const property of card?.requires ?? []) {
       if (given[property] !== undefined || faults.some((fault) => fault.path.endsWith(`.${property}`)))
         continue
-      const cheaper =
-        choice === 'vapourShear' || choice === 'vapourPressureDrop' ? `, or methods.${choice} "none"` : ''
-      const simpler = choice === 'latentHeat' ? ', or methods.latentHeat "plain"' : cheaper
+      const simpler =
+        choice === 'latentHeat'
+          ? 'methods.latentHeat "plain"'
+          : choice === 'vapourShear' || choice === 'vapourPressureDrop'
+            ? `methods.${choice} "none"`
+            : 'a method that does without it'
       faults.push({
         path: `fluid.properties.${property}`,
         problem: `it is missing and the method ${choice} "${value.methods[choice]}" needs it`,
-        remedy: `give it, or choose a method that does without it${simpler}`,
+        remedy: `give it, or choose ${simpler}`,
       })
     }
   }

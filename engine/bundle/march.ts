@@ -23,7 +23,7 @@ const LAST_CHANGE = 1e-7
 /** Sweeps after which the quick loop gives way to the bracketed search. */
 const QUICK_SWEEPS = 40
 /** Sweeps that one trial of the bracketed search may take. */
-const TRIAL_SWEEPS = 120
+const TRIAL_SWEEPS = 200
 /** Sweeps after which what swings from one to the next is damped. */
 const SWINGING = 12
 /** Trial lengths stay below this; a duty that needs more is out of reach [m]. */
@@ -123,7 +123,7 @@ export class BundleMarch extends RowMarch {
     let lastMismatch = Number.NaN
     for (let n = 0; n < QUICK_SWEEPS; n++) {
       this.sweeps++
-      this.heed = n < SWINGING ? 1 : 0.5
+      this.heed = n < SWINGING ? 1 : n < 4 * SWINGING ? 0.5 : 0.25
       let change = 0
       if (cooled) {
         this.coolantSide()
@@ -197,7 +197,7 @@ export class BundleMarch extends RowMarch {
     let lastShort = Number.NaN
     for (let n = 0; n < QUICK_SWEEPS; n++) {
       this.sweeps++
-      this.heed = n < SWINGING ? 1 : 0.5
+      this.heed = n < SWINGING ? 1 : n < 4 * SWINGING ? 0.5 : 0.25
       this.coolantSide()
       this.sweep(true)
       if (!(this.duty > 0)) return false
@@ -267,7 +267,7 @@ export class BundleMarch extends RowMarch {
     this.start(cooled)
     for (let n = 0; n < TRIAL_SWEEPS; n++) {
       this.sweeps++
-      this.heed = n < SWINGING ? 1 : 0.5
+      this.heed = n < SWINGING ? 1 : n < 4 * SWINGING ? 0.5 : 0.25
       let change = 0
       let off = 0
       if (cooled) {
@@ -277,7 +277,7 @@ export class BundleMarch extends RowMarch {
         off = this.followOutlet(total, outlet)
       } else this.sweep(false)
       if (by !== BY_VAPOUR && this.duty > 0) this.inletVapour = (total * this.condensate) / this.duty
-      if (Math.abs(off) < CLOSE && this.stands(change, close)) break
+      if (this.moved < CLOSE && !(change > close) && Math.abs(off) < CLOSE) break
     }
     return by === BY_VAPOUR ? x - Math.log(this.condensate) : Math.log(this.duty / total)
   }

@@ -214,7 +214,7 @@ export class RowMarch {
   vapourDrop = 0
   lowestWall = 0
   clamped = false
-  /** Largest relative change of a row's flux against the sweep before. */
+  /** Largest change of a row's flux against the sweep before, over the mean flux. */
   protected moved = 1
   protected movedBefore = 1
 
@@ -654,7 +654,7 @@ export class RowMarch {
       const made = heat / dh
       const before = rowFlux[r]
       const change = Math.abs(q - before)
-      if (change > most * q) most = q > 0 ? change / q : 1
+      if (change > most) most = change
       rowX[r] = x
       rowFlux[r] = q
       rowArriving[r] = onTube
@@ -689,7 +689,7 @@ export class RowMarch {
     this.condensate = gathered
     this.vapourDrop = dropping ? this.inletPressure - pressure : this.drop === NO_DROP ? 0 : Number.NaN
     this.lowestWall = lowest
-    this.moved = most
+    this.moved = (most * this.tubes * perMetre * L) / duty
   }
 
   private takeVapour(r: number, pressure: number): void {
@@ -875,8 +875,8 @@ export class RowMarch {
         coolant.maxTemperature,
       )
       change = Math.max(change, Math.abs(mean - this.passMean[j]), Math.abs(wall - this.passWall[j]))
-      this.passMean[j] = mean
-      this.passWall[j] = wall
+      this.passMean[j] += this.heed * (mean - this.passMean[j])
+      this.passWall[j] += this.heed * (wall - this.passWall[j])
       T += rise
       this.passOut[j] = T
     }
