@@ -9,7 +9,7 @@ import { freePort } from '#drizzle/local-postgres/processes.mjs'
 const BASE = 'http://127.0.0.1:3000'
 const folder = mkdtempSync(join(tmpdir(), 'rowfall-sign-in-'))
 let provider: IdentityProvider
-let signIn: (request: Request) => Promise<Response>
+let signIn: (request: Request, address: string) => Promise<Response>
 let viewerOfSession: (token: string) => Promise<{ role: string; email: string } | null>
 
 beforeAll(async () => {
@@ -44,6 +44,7 @@ async function begin(loginHint: string, returnTo = '/projects') {
         method: 'POST',
         body: new URLSearchParams({ loginHint, returnTo }),
       }),
+      '127.0.0.1',
     ),
   )
   const flow = /rowfall-flow=([\w-]+)/.exec(response.headers.get('set-cookie') ?? '')?.[1] ?? ''
@@ -62,7 +63,10 @@ async function atProvider(url: URL): Promise<URL> {
 
 const finish = (callback: URL, flow: string) =>
   answer(
-    signIn(new Request(callback, { headers: { Cookie: `rowfall-flow=${flow}`, 'User-Agent': 'a test' } })),
+    signIn(
+      new Request(callback, { headers: { Cookie: `rowfall-flow=${flow}`, 'User-Agent': 'a test' } }),
+      '127.0.0.1',
+    ),
   )
 
 describe('signing in', () => {

@@ -1,6 +1,6 @@
 // People: they appear by signing in, or by being invited to a project before that.
 import { and, eq, isNull, sql } from 'drizzle-orm'
-import { db } from '#app/db.server.ts'
+import { db, type Queryable } from '#app/db.server.ts'
 import { type Person, person, ROLES, type Role, type Theme, type Units } from '#drizzle/schema/index.ts'
 
 export type Identity = {
@@ -8,7 +8,8 @@ export type Identity = {
   subject: string
   name: string
   email: string
-  emailVerified: boolean
+  /** The provider gives an address and does not say that it is unverified; many say nothing. */
+  emailTrusted: boolean
   groups: string[]
 }
 
@@ -20,34 +21,36 @@ export function roleOfGroups(groups: readonly string[], map: Readonly<Record<str
 
 /**
  * The person of an identity, made or brought up to date. Someone invited by an address becomes this person at the
- * first sign-in with it, if the provider vouches for the address.
+ * first sign-in with it, unless the provider says that the address is not verified.
  */
-export async function personOfIdentity(identity: Identity, role: Role | null): Promise<Person> {
+export async function personOfIdentity(
+  tx: Queryable,
+  identity: Identity,
+  role: Role | null,
+): Promise<Person> {
   const { issuer, subject, name, email } = identity
   const now = { name, email, role, signedInAt: sql`now()` }
-  return db.transaction(async (tx) => {
-    const [known] = await tx
+  const [known] = await tx
+    .update(person)
+    .set(now)
+    .where(and(eq(person.issuer, issuer), eq(person.subject, subject)))
+    .returning()
+  if (known) return known
+  if (identity.emailTrusted) {
+    const [invited] = await tx
       .update(person)
-      .set(now)
-      .where(and(eq(person.issuer, issuer), eq(person.subject, subject)))
+      .set({ ...now, issuer, subject })
+      .where(and(isNull(person.subject), eq(sql`lower(${person.email})`, email.toLowerCase())))
       .returning()
-    if (known) return known
-    if (identity.emailVerified) {
-      const [invited] = await tx
-        .update(person)
-        .set({ ...now, issuer, subject })
-        .where(and(isNull(person.subject), eq(sql`lower(${person.email})`, email.toLowerCase())))
-        .returning()
-      if (invited) return invited
-    }
-    // Two tabs may sign the same new person in at once.
-    const [made] = await tx
-      .insert(person)
-      .values({ issuer, subject, ...now })
-      .onConflictDoUpdate({ target: [person.issuer, person.subject], set: now })
-      .returning()
-    return made
-  })
+    if (invited) return invited
+  }
+  // Two tabs may sign the same new person in at once.
+  const [made] = await tx
+    .insert(person)
+    .values({ issuer, subject, ...now })
+    .onConflictDoUpdate({ target: [person.issuer, person.subject], set: now })
+    .returning()
+  return made
 }
 
 export async function setPreferences(

@@ -2,6 +2,7 @@
 import * as oidc from 'openid-client'
 import { env } from '#app/env.server.ts'
 import { AppError } from '#app/http/errors.ts'
+import { isLoopback } from '#app/settings.ts'
 
 let found: Promise<oidc.Configuration> | undefined
 
@@ -17,11 +18,12 @@ function discover(): Promise<oidc.Configuration> {
   const issuer = new URL(env.OIDC_ISSUER)
   return oidc.discovery(issuer, env.OIDC_CLIENT_ID, env.OIDC_CLIENT_SECRET, undefined, {
     timeout: 10,
-    // Plain http is for a provider on this machine; anywhere else the library refuses it.
-    execute:
-      issuer.protocol === 'http:' && ['127.0.0.1', 'localhost', '[::1]'].includes(issuer.hostname)
-        ? [oidc.allowInsecureRequests]
-        : [],
+    execute: [
+      // Checks the ID token's signature too; by itself the library trusts the connection that it came over.
+      oidc.enableNonRepudiationChecks,
+      // Plain http is for a provider on this machine; anywhere else the library refuses it.
+      ...(issuer.protocol === 'http:' && isLoopback(issuer.hostname) ? [oidc.allowInsecureRequests] : []),
+    ],
   })
 }
 

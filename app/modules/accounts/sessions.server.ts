@@ -1,6 +1,6 @@
 // Sessions in PostgreSQL: begun at sign-in, looked up at every request, gone as soon as they are revoked.
-import { and, desc, eq, gt, isNull, ne, sql } from 'drizzle-orm'
-import { db } from '#app/db.server.ts'
+import { and, desc, eq, gt, isNull, lt, ne, sql } from 'drizzle-orm'
+import { db, type Queryable } from '#app/db.server.ts'
 import type { Viewer } from '#app/http/context.ts'
 import { person, session } from '#drizzle/schema/index.ts'
 import { randomToken, tokenHash } from './secrets.server.ts'
@@ -11,13 +11,15 @@ export const LONGEST_SECONDS = 14 * 24 * 3600
 /** A session's last use is written at most this often. */
 const TOUCH_SECONDS = 60
 
-/** Begins a session for a person; the token goes to the browser and nowhere else. */
+/** Begins a session for a person; the token goes to the browser and nowhere else. Expired ones are cleared away. */
 export async function beginSession(
   personId: string,
   { userAgent, idToken }: { userAgent: string; idToken?: string },
+  tx: Queryable = db,
 ): Promise<string> {
   const token = randomToken()
-  await db.insert(session).values({
+  await tx.delete(session).where(lt(session.expiresAt, sql`now()`))
+  await tx.insert(session).values({
     idHash: tokenHash('session', token),
     personId,
     expiresAt: sql`now() + make_interval(secs => ${IDLE_SECONDS})`,
@@ -58,14 +60,17 @@ export async function viewerOfSession(token: string): Promise<Viewer | null> {
   return { ...viewer, role }
 }
 
-/** Ends the session of a token; the provider's ID token, for signing out there too. */
-export async function endSession(token: string): Promise<{ idToken: string | null }> {
-  const [ended] = await db
+/** Ends the session of a token, if it is open; the provider's ID token is for signing out there too. */
+export async function endSession(
+  token: string,
+  tx: Queryable = db,
+): Promise<{ personId: string; idToken: string | null } | null> {
+  const [ended] = await tx
     .update(session)
     .set({ revokedAt: sql`now()` })
     .where(and(eq(session.idHash, tokenHash('session', token)), isNull(session.revokedAt)))
-    .returning({ idToken: session.idToken })
-  return { idToken: ended?.idToken ?? null }
+    .returning({ personId: session.personId, idToken: session.idToken })
+  return ended ?? null
 }
 
 /** A person's open sessions, the latest used first. */

@@ -5,45 +5,45 @@ import { Authenticator } from 'remix-auth'
 import { db } from '#app/db.server.ts'
 import { env } from '#app/env.server.ts'
 import { AppError } from '#app/http/errors.ts'
-import { recordAct } from '#app/modules/audit/audit.server.ts'
+import { type Acting, recordAct } from '#app/modules/audit/audit.server.ts'
 import { cookie, readCookie } from './cookies.server.ts'
 import { personOfIdentity, roleOfGroups } from './people.server.ts'
 import { provider } from './provider.server.ts'
 import { beginSession, endSession, LONGEST_SECONDS } from './sessions.server.ts'
-import { OpenIdConnectStrategy } from './strategy.server.ts'
+import { OpenIdConnectStrategy, type SignedIn } from './strategy.server.ts'
 
 export { localPath } from './strategy.server.ts'
 
-type Session = { token: string; returnTo: string }
-
-const authenticator = new Authenticator<Session>()
-authenticator.use(
-  new OpenIdConnectStrategy<Session>(async ({ request, identity, idToken, returnTo }) => {
-    const role = roleOfGroups(identity.groups, env.ROLE_GROUPS)
-    const signedIn = await personOfIdentity(identity, role)
-    if (role === null)
-      throw new AppError(
-        'forbidden',
-        `${identity.name} is known to the identity provider, and none of their groups has a role in Rowfall. Ask an administrator to map one.`,
-      )
-    const earlier = readCookie(request, 'session')
-    if (earlier) await endSession(earlier)
-    const token = await beginSession(signedIn.id, {
-      userAgent: request.headers.get('user-agent') ?? '',
-      idToken,
-    })
-    await recordAct(
-      db,
-      { personId: signedIn.id, name: signedIn.name, address: '' },
-      { act: 'person.signIn', subject: 'person', subjectId: signedIn.id, projectId: null, after: { role } },
-    )
-    return { token, returnTo }
-  }),
-)
+const authenticator = new Authenticator<SignedIn>()
+authenticator.use(new OpenIdConnectStrategy<SignedIn>(async (signedIn) => signedIn))
 
 /** Begins (POST) or ends (GET, the provider's answer) a sign-in; the response to send. */
-export async function signIn(request: Request): Promise<Response> {
-  const { token, returnTo } = await authenticator.authenticate('openid-connect', request)
+export async function signIn(request: Request, address: string): Promise<Response> {
+  const { identity, idToken, returnTo } = await authenticator.authenticate('openid-connect', request)
+  const role = roleOfGroups(identity.groups, env.ROLE_GROUPS)
+  const token = await db.transaction(async (tx) => {
+    const { id, name } = await personOfIdentity(tx, identity, role)
+    const earlier = readCookie(request, 'session')
+    if (earlier) await endSession(earlier, tx)
+    await recordAct(
+      tx,
+      { personId: id, name, address },
+      {
+        act: role === null ? 'person.signInRefused' : 'person.signIn',
+        subject: 'person',
+        subjectId: id,
+        projectId: null,
+        after: { role },
+      },
+    )
+    if (role === null) return null
+    return beginSession(id, { userAgent: request.headers.get('user-agent') ?? '', idToken }, tx)
+  })
+  if (token === null)
+    throw new AppError(
+      'forbidden',
+      `${identity.name} is known to the identity provider, and none of their groups has a role in Rowfall. Ask an administrator to map one.`,
+    )
   const headers = new Headers()
   headers.append('Set-Cookie', cookie('session', token, LONGEST_SECONDS))
   headers.append('Set-Cookie', cookie('flow', '', 0))
@@ -51,12 +51,12 @@ export async function signIn(request: Request): Promise<Response> {
 }
 
 /** Ends the session here and, where the provider can, there. */
-export async function signOut(request: Request): Promise<Response> {
+export async function signOut(request: Request, acting: Acting | null): Promise<Response> {
   const token = readCookie(request, 'session')
-  const ended = token ? await endSession(token) : { idToken: null }
+  const ended = token ? await close(token, acting) : null
   const headers = { 'Set-Cookie': cookie('session', '', 0) }
   const home = '/sign-in?signedOut=1'
-  if (ended.idToken === null) return redirect(home, { headers })
+  if (!ended?.idToken) return redirect(home, { headers })
   try {
     const config = await provider()
     if (!config.serverMetadata().end_session_endpoint) return redirect(home, { headers })
@@ -69,4 +69,18 @@ export async function signOut(request: Request): Promise<Response> {
     // Signed out here; that the provider did not answer changes nothing about it.
     return redirect(home, { headers })
   }
+}
+
+function close(token: string, acting: Acting | null) {
+  return db.transaction(async (tx) => {
+    const ended = await endSession(token, tx)
+    if (ended && acting)
+      await recordAct(tx, acting, {
+        act: 'person.signOut',
+        subject: 'person',
+        subjectId: ended.personId,
+        projectId: null,
+      })
+    return ended
+  })
 }

@@ -7,6 +7,7 @@ import { Strategy } from 'remix-auth/strategy'
 import { db } from '#app/db.server.ts'
 import { env } from '#app/env.server.ts'
 import { AppError } from '#app/http/errors.ts'
+import { trimmedTo } from '#app/modules/stored-text.ts'
 import { authFlow } from '#drizzle/schema/index.ts'
 import { cookie, readCookie } from './cookies.server.ts'
 import type { Identity } from './people.server.ts'
@@ -14,7 +15,6 @@ import { provider, unreachable } from './provider.server.ts'
 import { randomToken, tokenHash } from './secrets.server.ts'
 
 export type SignedIn = { identity: Identity; idToken: string; returnTo: string }
-type Verified = SignedIn & { request: Request }
 
 const FLOW_SECONDS = 600
 const CALLBACK = '/auth/callback'
@@ -24,7 +24,7 @@ const CALLBACK = '/auth/callback'
  * person. What must not be guessed or replayed lies in a row that only this browser's cookie together with this very
  * answer's state finds, and finding it removes it.
  */
-export class OpenIdConnectStrategy<User> extends Strategy<User, Verified> {
+export class OpenIdConnectStrategy<User> extends Strategy<User, SignedIn> {
   name = 'openid-connect'
 
   override async authenticate(request: Request): Promise<User> {
@@ -51,7 +51,7 @@ export class OpenIdConnectStrategy<User> extends Strategy<User, Verified> {
     const hint = form.get('loginHint')
     const url = oidc.buildAuthorizationUrl(config, {
       redirect_uri: `${env.BASE_URL}${CALLBACK}`,
-      scope: 'openid profile email groups',
+      scope: scopeOf(config),
       code_challenge: await oidc.calculatePKCECodeChallenge(codeVerifier),
       code_challenge_method: 'S256',
       state,
@@ -99,11 +99,30 @@ export class OpenIdConnectStrategy<User> extends Strategy<User, Verified> {
     const claims = tokens.claims()
     if (!claims) throw new AppError('not-signed-in', 'The identity provider sent no identity. Sign in again.')
     return this.verify({
-      request,
-      identity: identityOf(claims),
+      identity: identityOf(await withUserInfo(config, claims, tokens.access_token)),
       idToken: tokens.id_token as string,
       returnTo: flow.returnTo,
     })
+  }
+}
+
+/** Group claims come of themselves or are asked for by a scope; a provider that does not list it may refuse it. */
+function scopeOf(config: oidc.Configuration): string {
+  const known = config.serverMetadata().scopes_supported
+  return ['openid', 'profile', 'email', ...(!known || known.includes('groups') ? ['groups'] : [])].join(' ')
+}
+
+/** Some providers name groups only at their user info endpoint. */
+async function withUserInfo(
+  config: oidc.Configuration,
+  claims: oidc.IDToken,
+  accessToken: string,
+): Promise<oidc.IDToken> {
+  if (claims.groups !== undefined || !config.serverMetadata().userinfo_endpoint) return claims
+  try {
+    return { ...(await oidc.fetchUserInfo(config, accessToken, claims.sub)), ...claims }
+  } catch (error) {
+    throw unreachable(error)
   }
 }
 
@@ -120,17 +139,15 @@ async function takeFlow(token: string | null, state: string | null) {
 }
 
 function identityOf(claims: oidc.IDToken): Identity {
-  const text = (value: unknown) => (typeof value === 'string' ? value.trim().slice(0, 200) : '')
+  const text = (value: unknown) => (typeof value === 'string' ? trimmedTo(value, 200) : '')
   const email = text(claims.email)
   return {
     issuer: claims.iss,
     subject: claims.sub,
     email,
-    emailVerified: claims.email_verified === true,
+    emailTrusted: email !== '' && claims.email_verified !== false,
     name: text(claims.name) || text(claims.preferred_username) || email || claims.sub.slice(0, 200),
-    groups: Array.isArray(claims.groups)
-      ? claims.groups.filter((group): group is string => typeof group === 'string')
-      : [],
+    groups: [claims.groups].flat().filter((group): group is string => typeof group === 'string'),
   }
 }
 

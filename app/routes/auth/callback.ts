@@ -1,7 +1,8 @@
 // Back from the identity provider.
+import { addressContext } from '#app/http/context.ts'
 import { signIn } from '#app/modules/accounts/sign-in.server.ts'
 import type { Route } from './+types/callback'
 
-export async function loader({ request }: Route.LoaderArgs) {
-  return signIn(request)
+export async function loader({ request, context }: Route.LoaderArgs) {
+  return signIn(request, context.get(addressContext))
 }
