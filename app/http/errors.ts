@@ -8,6 +8,7 @@ const STATUS = {
   'not-found': 404,
   'method-not-allowed': 405,
   conflict: 409,
+  'length-required': 411,
   'too-large': 413,
   unavailable: 503,
 } as const

@@ -18,6 +18,7 @@ import {
   visitorContext,
 } from './context.ts'
 import { AppError, failureOf, toJsonResponse } from './errors.ts'
+import { isId } from './ids.ts'
 import { isSameOrigin } from './origin.ts'
 import { can } from './permissions.ts'
 import { type Rule, rules, type Scope, type UrlRules } from './rules.ts'
@@ -92,6 +93,8 @@ function refuseForeign(request: Request): void {
       'forbidden',
       'The request came from another site and was not carried out. Open Rowfall and try again there.',
     )
+  if (request.headers.has('transfer-encoding'))
+    throw new AppError('length-required', 'The body’s length is not given; send it with Content-Length.')
   const length = Number(request.headers.get('content-length') ?? 0)
   if (length > LARGEST_BODY) throw new AppError('too-large', 'That is more than 8 MB; send a smaller file.')
 }
@@ -120,8 +123,6 @@ async function admit(
   return scope
 }
 
-const UUID = /^[0-9a-f]{8}-[0-9a-f]{4}-[0-9a-f]{4}-[0-9a-f]{4}-[0-9a-f]{12}$/i
-
 /** The project of the URL's id, if the person is a member of it; a stranger's id and no id look the same. */
 async function scopeOf(
   scope: Scope,
@@ -129,7 +130,7 @@ async function scopeOf(
   personId: string,
 ): Promise<ProjectScope> {
   const id = params[`${scope}Id`]
-  const found = id !== undefined && UUID.test(id) ? await find[scope](id, personId) : undefined
+  const found = isId(id) ? await find[scope](id, personId) : undefined
   if (!found)
     throw new AppError('not-found', `There is no such ${scope}, or you are not a member of its project.`)
   return found

@@ -1,5 +1,6 @@
 // Studies of a project set side by side: of each the latest run with points, its best point and its front.
 import { AppError } from '#app/http/errors.ts'
+import { isId } from '#app/http/ids.ts'
 import { caseNames } from '#app/modules/explore/names.server.ts'
 import { aggregates, paretoFront, pointSheet, refinedBest } from '#app/modules/points/points.server.ts'
 import { planOfRevision } from '#app/modules/runs/run-plan.server.ts'
@@ -69,7 +70,7 @@ export async function comparedStudies(projectId: string, studyIds: readonly stri
       'bad-request',
       `${asked.length} studies are too many to compare; choose up to ${MOST_COMPARED}.`,
     )
-  if (asked.some((id) => !/^[0-9a-f-]{36}$/i.test(id))) throw missing()
+  if (!asked.every(isId)) throw missing()
   const found = await Promise.all(asked.map(candidateOf))
   if (found.some((study) => study.projectId !== projectId)) throw missing()
   return Promise.all(

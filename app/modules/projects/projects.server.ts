@@ -1,8 +1,9 @@
 // Projects and their members.
-import { and, asc, count, desc, eq, isNull, max, sql } from 'drizzle-orm'
-import { db } from '#app/db.server.ts'
+import { and, asc, count, eq, isNull, max, sql } from 'drizzle-orm'
+import { db, type Queryable } from '#app/db.server.ts'
 import { AppError } from '#app/http/errors.ts'
 import { type Acting, recordAct } from '#app/modules/audit/audit.server.ts'
+import { oneLine, trimmedTo } from '#app/modules/stored-text.ts'
 import { person, project, projectMember, study } from '#drizzle/schema/index.ts'
 
 export type ProjectListing = {
@@ -70,13 +71,13 @@ export async function createProject(
   description: string,
   acting: Acting & { personId: string },
 ) {
-  const title = name.trim()
-  if (title === '' || title.length > 120)
-    throw new AppError('invalid', 'Project name: give 1 to 120 characters.')
+  const title = oneLine(name)
+  if (title === null || title === '' || title.length > 120)
+    throw new AppError('invalid', 'Project name: give 1 to 120 characters, all of which can be shown.')
   return db.transaction(async (tx) => {
     const [made] = await tx
       .insert(project)
-      .values({ name: title, description: description.trim().slice(0, 2000), createdBy: acting.personId })
+      .values({ name: title, description: trimmedTo(description, 2000), createdBy: acting.personId })
       .onConflictDoNothing()
       .returning()
     if (!made)
@@ -100,19 +101,11 @@ export async function createProject(
 
 /** Adds a person by e-mail address; someone not seen yet is invited and becomes a member at their first sign-in. */
 export async function addMember(projectId: string, email: string, acting: Acting) {
-  const address = email.trim()
-  if (!/^[^\s@]+@[^\s@]+$/.test(address) || address.length > 200)
+  const address = oneLine(email)
+  if (address === null || !/^[^\s@]+@[^\s@]+$/.test(address) || address.length > 200)
     throw new AppError('invalid', 'E-mail: that is not an address; write name@company.example.')
   return db.transaction(async (tx) => {
-    const [known] = await tx
-      .select({ id: person.id })
-      .from(person)
-      .where(eq(sql`lower(${person.email})`, address.toLowerCase()))
-      .orderBy(desc(person.signedInAt))
-      .limit(1)
-    const id =
-      known?.id ??
-      (await tx.insert(person).values({ name: address, email: address }).returning({ id: person.id }))[0].id
+    const id = (await personOfAddress(tx, address)) ?? (await invite(tx, address))
     const added = await tx
       .insert(projectMember)
       .values({ projectId, personId: id, addedBy: acting.personId })
@@ -128,6 +121,27 @@ export async function addMember(projectId: string, email: string, acting: Acting
     })
     return id
   })
+}
+
+/** Who goes by an address; of several, whoever signed in last. */
+async function personOfAddress(tx: Queryable, address: string): Promise<string | undefined> {
+  const [known] = await tx
+    .select({ id: person.id })
+    .from(person)
+    .where(eq(sql`lower(${person.email})`, address.toLowerCase()))
+    .orderBy(sql`${person.signedInAt} desc nulls last`)
+    .limit(1)
+  return known?.id
+}
+
+async function invite(tx: Queryable, address: string): Promise<string> {
+  const [made] = await tx
+    .insert(person)
+    .values({ name: address, email: address })
+    .onConflictDoNothing()
+    .returning({ id: person.id })
+  // Invited by someone else at the same moment.
+  return made?.id ?? ((await personOfAddress(tx, address)) as string)
 }
 
 export async function removeMember(projectId: string, personId: string, acting: Acting) {

@@ -1,8 +1,9 @@
 // Studies: listed, made, renamed, copied, archived; their drafts and the revisions that runs are computed from.
-import { and, desc, eq, ilike, isNotNull, isNull, sql } from 'drizzle-orm'
+import { and, desc, eq, ilike, inArray, isNotNull, isNull, sql } from 'drizzle-orm'
 import { db, type Queryable } from '#app/db.server.ts'
 import { AppError } from '#app/http/errors.ts'
 import { type Acting, recordAct } from '#app/modules/audit/audit.server.ts'
+import { oneLine, trimmedTo, unstorableIn } from '#app/modules/stored-text.ts'
 import {
   person,
   run,
@@ -49,6 +50,9 @@ export async function listStudies(
       endedAt: run.endedAt,
     })
     .from(run)
+    .where(
+      inArray(run.studyId, db.select({ id: study.id }).from(study).where(eq(study.projectId, projectId))),
+    )
     .orderBy(run.studyId, desc(run.plannedAt))
     .as('latest')
   const rows = await db
@@ -78,13 +82,7 @@ export async function listStudies(
         archived ? isNotNull(study.archivedAt) : isNull(study.archivedAt),
         search.trim() === ''
           ? undefined
-          : ilike(
-              study.name,
-              `%${search
-                .trim()
-                .slice(0, 200)
-                .replace(/[\\%_]/g, '\\$&')}%`,
-            ),
+          : ilike(study.name, `%${trimmedTo(search, LONGEST_NAME).replace(/[\\%_]/g, '\\$&')}%`),
       ),
     )
     .orderBy(desc(study.changedAt))
@@ -117,20 +115,18 @@ export async function createStudy(
   acting: Person,
 ): Promise<StudyRow> {
   const title = checkedName(name)
-  checkSize(definition)
+  checkStorable(definition)
   return db.transaction(async (tx) => {
     const [made] = await tx
       .insert(study)
       .values({ projectId, name: title, origin, createdBy: acting.personId })
       .returning()
-    await tx
-      .insert(studyDraft)
-      .values({
-        studyId: made.id,
-        personId: acting.personId,
-        definition: { ...definition, name: title },
-        baseRevision: 0,
-      })
+    await tx.insert(studyDraft).values({
+      studyId: made.id,
+      personId: acting.personId,
+      definition: { ...definition, name: title },
+      baseRevision: 0,
+    })
     await recordAct(tx, acting, {
       act: 'study.create',
       subject: 'study',
@@ -149,7 +145,7 @@ export async function copyStudy(studyId: string, acting: Person): Promise<StudyR
     (await latestRevision(studyId))?.definition ??
     (await getDraft(studyId, acting.personId))?.definition ??
     {}
-  const name = `${from.name.slice(0, LONGEST_NAME - 7)} (copy)`
+  const name = `${trimmedTo(from.name, LONGEST_NAME - 7)} (copy)`
   return createStudy(from.projectId, { name, origin: `copy of ${from.name}`, definition }, acting)
 }
 
@@ -230,7 +226,7 @@ export async function saveDraft(
   definition: Definition,
   seenVersion: number,
 ): Promise<DraftSaved> {
-  checkSize(definition)
+  checkStorable(definition)
   return db.transaction(async (tx) => {
     if (seenVersion > 0) {
       const [saved] = await tx
@@ -293,7 +289,7 @@ export type Kept =
  * The person's draft has then served.
  */
 export async function keepRevision(studyId: string, definition: Definition, acting: Person): Promise<Kept> {
-  checkSize(definition)
+  checkStorable(definition)
   const parsed = parseStudy(definition)
   if (!parsed.ok) return { ok: false, faults: parsed.faults }
   return db.transaction(async (tx) => {
@@ -333,16 +329,24 @@ export async function keepRevision(studyId: string, definition: Definition, acti
 // --- checks ---------------------------------------------------------------------------------------------------
 
 function checkedName(name: string): string {
-  const title = name.trim().replace(/\s+/g, ' ')
+  const title = oneLine(name)
+  if (title === null)
+    throw new AppError('invalid', 'Study name: it has a character that cannot be shown; type it anew.')
   if (title === '') throw new AppError('invalid', 'Study name: it is empty; give it a name.')
   if (title.length > LONGEST_NAME)
     throw new AppError('invalid', `Study name: it has ${title.length} characters; at most ${LONGEST_NAME}.`)
   return title
 }
 
-function checkSize(definition: Definition): void {
+function checkStorable(definition: Definition): void {
   if (JSON.stringify(definition).length > LARGEST_DEFINITION)
     throw new AppError('too-large', 'The study is larger than 2 MB; give ranges instead of long lists.')
+  const text = unstorableIn(definition)
+  if (text !== undefined)
+    throw new AppError(
+      'invalid',
+      `The study has a character that cannot be stored, in "${trimmedTo(text, 60)}"; type that text anew.`,
+    )
 }
 
 /** Keys in one order: jsonb gives them back in its own. */

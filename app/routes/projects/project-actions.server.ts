@@ -2,9 +2,11 @@
 import { data, redirect } from 'react-router'
 import type { Viewer } from '#app/http/context.ts'
 import { AppError, failureOf } from '#app/http/errors.ts'
+import { isId } from '#app/http/ids.ts'
 import { can } from '#app/http/permissions.ts'
 import type { Acting } from '#app/modules/audit/audit.server.ts'
 import { addMember, removeMember } from '#app/modules/projects/projects.server.ts'
+import { trimmedTo } from '#app/modules/stored-text.ts'
 import {
   archiveStudy,
   copyStudy,
@@ -86,7 +88,7 @@ export async function actOnProject(projectId: string, form: FormData, viewer: Vi
 /** The study's id, if it is one of this project's: the gate has only looked at the project. */
 async function ownStudy(projectId: string, studyId: string): Promise<string> {
   const missing = new AppError('not-found', 'There is no such study in this project.')
-  if (!/^[0-9a-f-]{36}$/i.test(studyId)) throw missing
+  if (!isId(studyId)) throw missing
   const study = await getStudy(studyId)
   if (study.projectId !== projectId) throw missing
   return study.id
@@ -106,7 +108,7 @@ async function upload(projectId: string, file: FormDataEntryValue | null, acting
   const name = typeof given === 'string' && given.trim() !== '' ? given : file.name.replace(/\.json$/i, '')
   const made = await createStudy(
     projectId,
-    { name: name.slice(0, 200), origin: `file ${file.name.slice(0, 100)}`, definition: read.definition },
+    { name: trimmedTo(name, 200), origin: `file ${trimmedTo(file.name, 100)}`, definition: read.definition },
     acting,
   )
   return redirect(`/studies/${made.id}/define`)

@@ -17,6 +17,7 @@ import { ProgressBar } from '#app/components/ui/progress.tsx'
 import { When } from '#app/components/ui/when.tsx'
 import { viewerContext } from '#app/http/context.ts'
 import { AppError, failureOf } from '#app/http/errors.ts'
+import { isId } from '#app/http/ids.ts'
 import { can } from '#app/http/permissions.ts'
 import { pointColumns } from '#app/modules/explore/columns.ts'
 import { finding } from '#app/modules/explore/finding.ts'
@@ -37,6 +38,12 @@ export async function loader({ params, request, context }: Route.LoaderArgs) {
   return { page, mayRun: can(role, 'study.run') }
 }
 
+const CHANGES = new Map<unknown, typeof cancelRun>([
+  ['cancel', cancelRun],
+  ['pause', pauseRun],
+  ['resume', resumeRun],
+])
+
 export async function action({ params, request, context }: Route.ActionArgs) {
   const form = await request.formData()
   const acting = actingOf(context)
@@ -48,10 +55,9 @@ export async function action({ params, request, context }: Route.ActionArgs) {
       await startRun(params.studyId, revision.id, acting)
       return redirect(here)
     }
-    const change = { cancel: cancelRun, pause: pauseRun, resume: resumeRun }[String(form.get('intent'))]
-    const runId = String(form.get('run'))
-    if (!change || !/^[0-9a-f-]{36}$/i.test(runId))
-      throw new AppError('bad-request', 'This page does not know that act.')
+    const change = CHANGES.get(form.get('intent'))
+    const runId = form.get('run')
+    if (!change || !isId(runId)) throw new AppError('bad-request', 'This page does not know that act.')
     const run = await getRun(runId)
     if (run.studyId !== params.studyId) throw new AppError('not-found', 'This study has no such run.')
     await change(runId, acting)
