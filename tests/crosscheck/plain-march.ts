@@ -59,14 +59,13 @@ export type PlainResult = {
   rowDuty: number[]
 }
 
-/** Root of a function that changes sign between `low` and `high`, by bisection to the last bit that moves. */
-function bisect(f: (x: number) => number, low: number, high: number, steps = 200): number {
+/** Root of a function that changes sign between `low` and `high`, by halving to a billionth of the interval. */
+function bisect(f: (x: number) => number, low: number, high: number): number {
   let a = low
   let b = high
   const rising = f(b) > 0
-  for (let i = 0; i < steps; i++) {
+  while (b - a > 1e-9 * (high - low)) {
     const m = 0.5 * (a + b)
-    if (m === a || m === b) return m
     if (f(m) > 0 === rising) b = m
     else a = m
   }
@@ -185,11 +184,11 @@ export function plainMarch(c: Case, options: { segments: number; length: number 
                 : nusseltTubeFlux(film[K_L] / Do, factor, x)
               return { q: inundatedFlux(single, (arriving * dh) / (Math.PI * Do), exponent), dh }
             }
-            const x = bisect((x) => filmFlux(x).q - inner * (T - x), T * 1e-9, T, 60)
+            const x = bisect((x) => filmFlux(x).q - inner * (T - x), T * 1e-9, T)
             return { ...filmFlux(x), x }
           }
           const area = Math.PI * Do * piece
-          const rise = bisect((dT) => dT * capacity - fluxAt(Tc + 0.5 * dT).q * area, 0, Ts - Tc, 50)
+          const rise = bisect((dT) => dT * capacity - fluxAt(Tc + 0.5 * dT).q * area, 0, Ts - Tc)
           const found = fluxAt(Tc + 0.5 * rise)
           made += (found.q * area * perRow) / found.dh
           q += found.q * area
@@ -199,7 +198,12 @@ export function plainMarch(c: Case, options: { segments: number; length: number 
         return { made, q, outlet: Tc }
       }
       let middle = vapour
-      for (let i = 0; i < 12; i++) middle = vapour - 0.5 * walk(middle, false).made
+      for (let i = 0; i < 12; i++) {
+        const next = vapour - 0.5 * walk(middle, false).made
+        const moved = Math.abs(next - middle)
+        middle = next
+        if (moved <= 1e-7 * vapour || !(sheared || dropped)) break
+      }
       const result = walk(middle, true)
       condensed += result.made
       heat[j] += result.q * perRow
@@ -256,14 +260,14 @@ export function plainMarch(c: Case, options: { segments: number; length: number 
       means = nextMeans
       walls = nextWalls
       result = march(vapourIn, inlets, means, walls)
-      if (change < 1e-7) break
+      if (change < 1e-5) break
     }
     return { ...result, inlets, means }
   }
 
   let vapourIn = settled(0).condensed
   let last = settled(vapourIn)
-  for (let i = 0; i < 40 && Math.abs(last.condensed / vapourIn - 1) > 1e-8; i++) {
+  for (let i = 0; i < 40 && Math.abs(last.condensed / vapourIn - 1) > 1e-5; i++) {
     vapourIn = Math.sqrt(vapourIn * last.condensed)
     last = settled(vapourIn)
   }
