@@ -1,6 +1,7 @@
 // The result of one case, all SI: numbers are finite, or null with a note whose code says why.
-import type { Note } from './notes.ts'
+
 import type { Methods } from './case.ts'
+import type { Note } from './notes.ts'
 
 export type DrainageMode = 'droplet' | 'dropletColumn' | 'column' | 'columnSheet' | 'sheet'
 

@@ -33,10 +33,15 @@ const FASTEST = 100
 /** A bracket of this width across which the duty still changes by more than this has a leap in it. */
 const NARROWEST = 1e-13
 const LEAP = 1e-5
+/** Below this Reynolds number a coolant may have two steady states at one flow. */
+const TWO_STATES = 1e4
 /** Vapour losing more of its pressure than this is refused. */
 const EXHAUSTED = 0.5
 /** Vapour faster than this share of the speed of sound is refused. */
 const TOO_FAST = 0.7
+
+/** How far sweep `n` of a search follows the one before: what still swings after a dozen is damped. */
+const heedAt = (n: number): number => (n < SWINGING ? 1 : n < 4 * SWINGING ? 0.5 : 0.25)
 
 const OUTCOME = OUTCOME_INDEX as Readonly<Record<string, number>>
 
@@ -123,7 +128,7 @@ export class BundleMarch extends RowMarch {
     let lastMismatch = Number.NaN
     for (let n = 0; n < QUICK_SWEEPS; n++) {
       this.sweeps++
-      this.heed = n < SWINGING ? 1 : n < 4 * SWINGING ? 0.5 : 0.25
+      this.heed = heedAt(n)
       let change = 0
       if (cooled) {
         this.coolantSide()
@@ -164,7 +169,7 @@ export class BundleMarch extends RowMarch {
     this.length = this.guessLength()
     this.start(true)
     this.spreadRise(s.duty / (this.flow * this.water[COOLANT_CP]))
-    if (!this.quickDuty(BY_LENGTH, s.duty, outlet)) {
+    if (!this.quickLength(s.duty, outlet)) {
       const outcome = this.bracket(BY_LENGTH, s.duty, true, outlet)
       if (outcome !== 0) return outcome
     }
@@ -185,44 +190,76 @@ export class BundleMarch extends RowMarch {
   }
 
   /**
-   * Brings the duty to `total` by length or coolant flow, a secant step in its logarithm after every sweep. While the
-   * length is sought the coolant is taken to carry `total` all along; with an `outlet` temperature the flow follows.
+   * Brings the duty to `total` by length, a secant step in its logarithm after every sweep. The coolant is taken to carry
+   * `total` all along; with an `outlet` temperature the flow follows.
    */
-  private quickDuty(by: number, total: number, outlet: number): boolean {
-    const { s } = this
-    const close = CLOSE * (this.Ts - s.inletTemperature)
+  private quickLength(total: number, outlet: number): boolean {
+    const close = CLOSE * (this.Ts - this.s.inletTemperature)
     this.inletVapour = total / this.inlet[H_FG]
     let slope = Number.NaN
     let lastLog = Number.NaN
     let lastShort = Number.NaN
     for (let n = 0; n < QUICK_SWEEPS; n++) {
       this.sweeps++
-      this.heed = n < SWINGING ? 1 : n < 4 * SWINGING ? 0.5 : 0.25
+      this.heed = heedAt(n)
       this.coolantSide()
       this.sweep(true)
       if (!(this.duty > 0)) return false
-      const change = this.passTemperatures(by === BY_LENGTH ? total : Number.NaN)
+      const change = this.passTemperatures(total)
       const off = this.followOutlet(total, outlet)
       const short = Math.log(total / this.duty)
       if (Math.abs(short) < CLOSE && Math.abs(off) < CLOSE && this.stands(change, close)) return true
       this.inletVapour = (total * this.condensate) / this.duty
-      const log = Math.log(by === BY_LENGTH ? this.length : this.flow)
-      if (n < 1 || Number.isNaN(slope)) slope = by === BY_LENGTH ? this.lengthElasticity() : 0.5
-      if (this.moved < (by === BY_LENGTH ? 0.7 : 2) * Math.abs(log - lastLog)) {
+      const log = Math.log(this.length)
+      if (Number.isNaN(slope)) slope = this.lengthElasticity()
+      // What the rows are still settling by must not be taken for the length's doing.
+      if (this.moved < 0.7 * Math.abs(log - lastLog)) {
         const seen = -(short - lastShort) / (log - lastLog)
         if (seen > 0.1 && seen < 4) slope = seen
       }
       lastLog = log
       lastShort = short
-      const grow = Math.exp(Math.max(-1, Math.min(1, short / slope)))
-      if (by === BY_LENGTH) {
-        this.length *= grow
-        if (!(this.length < LONGEST)) return false
-      } else {
-        this.flow *= grow
-        if (!(this.flow < 1e9)) return false
-        this.stretchRise(total / (this.duty * grow))
-      }
+      this.length *= Math.exp(Math.max(-1, Math.min(1, short / slope)))
+      if (!(this.length < LONGEST)) return false
+    }
+    return false
+  }
+
+  /**
+   * Brings the duty to `total` by coolant flow: a secant step in its logarithm whenever the rows have settled to well
+   * under what is missing, because the passes' temperatures follow the flow only a sweep later.
+   */
+  private quickFlow(total: number): boolean {
+    const close = CLOSE * (this.Ts - this.s.inletTemperature)
+    this.inletVapour = total / this.inlet[H_FG]
+    let low = Number.NEGATIVE_INFINITY
+    let high = Number.POSITIVE_INFINITY
+    let slope = 0.5
+    let lastLog = Number.NaN
+    let lastShort = Number.NaN
+    for (let n = 0; n < 2 * QUICK_SWEEPS; n++) {
+      this.sweeps++
+      this.coolantSide()
+      this.sweep(true)
+      if (!(this.duty > 0)) return false
+      const change = this.passTemperatures(Number.NaN)
+      const short = Math.log(total / this.duty)
+      const missing = Math.abs(short)
+      if (missing < CLOSE && this.stands(change, close)) return true
+      this.inletVapour = (total * this.condensate) / this.duty
+      if (missing < CLOSE || this.moved > 0.2 * missing) continue
+      const log = Math.log(this.flow)
+      if (short > 0) low = log
+      else high = log
+      const seen = -(short - lastShort) / (log - lastLog)
+      if (seen > 0.02 && seen < 4) slope = seen
+      lastLog = log
+      lastShort = short
+      let next = log + Math.max(-1, Math.min(1, short / slope))
+      if (!(next > low && next < high)) next = 0.5 * (low + high)
+      this.flow = Math.exp(next)
+      if (!(this.flow < 1e9)) return false
+      this.stretchRise((total / this.duty) * Math.exp(log - next))
     }
     return false
   }
@@ -267,7 +304,7 @@ export class BundleMarch extends RowMarch {
     this.start(cooled)
     for (let n = 0; n < TRIAL_SWEEPS; n++) {
       this.sweeps++
-      this.heed = n < SWINGING ? 1 : n < 4 * SWINGING ? 0.5 : 0.25
+      this.heed = heedAt(n)
       let change = 0
       let off = 0
       if (cooled) {
@@ -391,13 +428,28 @@ export class BundleMarch extends RowMarch {
     this.start(true)
     this.guessFlow(duty)
     let outcome = 0
-    if (!this.quickDuty(BY_FLOW, duty, Number.NaN) || this.flow > this.velocityToFlow(FASTEST)) {
+    const quick = this.quickFlow(duty) && this.flow <= this.velocityToFlow(FASTEST)
+    if (!quick || !this.ratesTo(duty)) {
       this.length = this.kept[KEPT_LENGTH]
       outcome = this.bracket(BY_FLOW, duty, true)
+      if (outcome === 0 && !this.ratesTo(duty)) outcome = OUTCOME.betweenStates
     }
+    // The march came to the duty within what its search leaves; the coolant takes up the duty itself.
+    for (let j = 0; j < s.passes; j++) this.passHeat[j] *= duty / this.duty
     if (outcome === 0) outcome = this.refusal() === 0 ? this.finishCoolant() : OUTCOME.noVelocityHoldsWall
     this.recall()
     return outcome
+  }
+
+  /**
+   * Whether the coolant drive itself comes to the duty at the flow found. Only a coolant near the laminar limit, thinner
+   * the warmer it gets, may stand in two states at one flow.
+   */
+  private ratesTo(duty: number): boolean {
+    let slowest = Number.POSITIVE_INFINITY
+    for (let j = 0; j < this.s.passes; j++) slowest = Math.min(slowest, this.passReynolds[j])
+    if (slowest > TWO_STATES) return true
+    return this.rate() === 0 && Math.abs(this.duty / duty - 1) < 1e-8
   }
 
   /** The flow at which the inner conductance carries the duty from the wall to the coolant's mean temperature. */
