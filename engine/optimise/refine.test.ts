@@ -72,4 +72,29 @@ describe('refining the best point of a sweep', () => {
     expect(refined.improved).toBe(false)
     expect(refined.result.outsideArea).toBeCloseTo(area, 9)
   })
+
+  it('moves two variables along a limit that binds, as far as a dense grid of both does', () => {
+    const two = study((raw) => {
+      raw.sweep.variables = [
+        { path: 'drive.velocity', from: 1, to: 3, count: 4 },
+        { path: 'bundle.pitchRatio', from: 1.25, to: 1.6, count: 3 },
+      ]
+      raw.limits = { coolantPressureDrop: { max: 40_000 } }
+    })
+    const { plan, best } = bestOf(two)
+    const refined = refineBest(two, pointCase(plan, best))
+    const dense = bestOf({
+      ...two,
+      sweep: {
+        ...two.sweep,
+        variables: [
+          { path: 'drive.velocity', from: 1, to: 3, count: 201 },
+          { path: 'bundle.pitchRatio', from: 1.25, to: 1.6, count: 36 },
+        ],
+      },
+    })
+    expect(refined.objective).toBeLessThanOrEqual(dense.area * (1 + 1e-9))
+    expect(refined.objective / dense.area).toBeGreaterThan(0.995)
+    expect(refined.result.coolant?.pressureDrop).toBeLessThanOrEqual(40_000)
+  })
 })

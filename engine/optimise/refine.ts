@@ -1,5 +1,5 @@
-// The best point of a sweep, moved between the swept values: along each continuous variable in turn, under the same
-// limits, whole tubes kept as they are. Length follows from the duty at every step.
+// The best point of a sweep, moved between the swept values: along each continuous variable in turn, then all together,
+// under the same limits, whole tubes kept as they are. Length follows from the duty at every step.
 import { KEY_RESULTS } from '#engine/bundle/key-results.ts'
 import { PointSolver } from '#engine/bundle/point-solver.ts'
 import { type Case, parseCase } from '#engine/case.ts'
@@ -9,7 +9,8 @@ import { OBJECTIVE_LABELS, objectiveColumn } from '#engine/sweep/objective.ts'
 import { type PlanVariable, planSweep } from '#engine/sweep/plan.ts'
 import { getPath, type Study, withPath } from '#engine/sweep/study.ts'
 import { formatQuantity } from '#engine/units.ts'
-import { bestOnLine, type Trial } from './line.ts'
+import { bestOnLine, type LineResult, type Trial } from './line.ts'
+import { nelderMead } from './nelder-mead.ts'
 
 /** Variables that may take any value between the swept ones; sizes sold in steps are not among them. */
 const CONTINUOUS = [
@@ -26,6 +27,8 @@ const ROUNDS = 6
 const GAIN = 1e-9
 /** A result this close to its limit is on it. */
 const ON_LIMIT = 1e-5
+
+type ContinuousRange = { variable: PlanVariable; low: number; high: number }
 
 export type RefinementStep = { path: string; value: number; objective: number; trials: number }
 
@@ -73,24 +76,66 @@ export function refineBest(study: Study, best: Case): Refinement {
   let objective = before
   const trace: RefinementStep[] = []
   const ranges = continuousRanges(study, best)
+  const along = (from: Case, { variable, low, high }: ContinuousRange): LineResult | null => {
+    solver.load(from)
+    return bestOnLine({
+      low,
+      high,
+      trial: (x) => {
+        solver.set(variable.path, x)
+        return look()
+      },
+    })
+  }
+  const take = (path: string, value: number, found: LineResult) => {
+    objective = found.objective
+    current = withPath(current, path, value)
+    trace.push({ path, value, objective, trials: found.trials })
+  }
   for (let round = 0; round < ROUNDS && ranges.length > 0; round++) {
     const begun = objective
-    for (const { variable, low, high } of ranges) {
-      solver.load(current)
-      const found = bestOnLine({
-        low,
-        high,
-        trial: (x) => {
-          solver.set(variable.path, x)
-          return look()
-        },
-      })
-      if (!found?.feasible || !(found.objective < objective)) continue
-      objective = found.objective
-      current = withPath(current, variable.path, found.x)
-      trace.push({ path: variable.path, value: found.x, objective, trials: found.trials })
+    for (const range of ranges) {
+      const found = along(current, range)
+      if (found?.feasible && found.objective < objective) take(range.variable.path, found.x, found)
     }
     if (ranges.length === 1 || !(begun - objective > GAIN * begun)) break
+  }
+  // One at a time stops where a limit binds; with the first always at its best, the others may move along the limit.
+  if (ranges.length > 1) {
+    const [first, ...others] = ranges
+    const at = (logs: readonly number[]) =>
+      others.reduce(
+        (at, { variable, low, high }, j) =>
+          withPath(at, variable.path, Math.min(high, Math.max(low, Math.exp(logs[j])))),
+        current,
+      )
+    const found = nelderMead(
+      (logs) => {
+        const best = along(at(logs), first)
+        return best?.feasible ? best.objective : Number.POSITIVE_INFINITY
+      },
+      others.map(({ variable }) => Math.log(getPath(current, variable.path) as number)),
+      {
+        steps: others.map(({ low, high }) => 0.1 * Math.log(high / low)),
+        tolerance: 1e-5,
+        valueTolerance: 1e-8,
+        maxEvaluations: 60 * others.length,
+      },
+    )
+    if (found.value < objective * (1 - GAIN)) {
+      current = at(found.x)
+      const last = along(current, first)
+      if (last?.feasible) {
+        take(first.variable.path, last.x, last)
+        for (const { variable } of others)
+          trace.push({
+            path: variable.path,
+            value: getPath(current, variable.path) as number,
+            objective,
+            trials: 0,
+          })
+      }
+    }
   }
 
   const checked = parseCase(current)
@@ -117,7 +162,7 @@ export function refineBest(study: Study, best: Case): Refinement {
 }
 
 /** The swept continuous variables that the case carries, with the ends of what was swept. */
-function continuousRanges(study: Study, best: Case): { variable: PlanVariable; low: number; high: number }[] {
+function continuousRanges(study: Study, best: Case): ContinuousRange[] {
   return planSweep(study).variables.flatMap((variable) => {
     if (!CONTINUOUS.includes(variable.path) || typeof getPath(best, variable.path) !== 'number') return []
     const values = variable.values as readonly number[]
