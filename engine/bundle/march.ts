@@ -14,7 +14,7 @@ import {
 } from '#engine/fluids/index.ts'
 import { OUTCOME_INDEX } from './key-results.ts'
 import { MAX_PASSES, MAX_ROWS } from './point-state.ts'
-import { RowMarch } from './row-march.ts'
+import { CHEN_ROWS, RowMarch } from './row-march.ts'
 
 /** What may remain when a point stands: of a balance, and of what a sweep still changes, relative. */
 const CLOSE = 3e-10
@@ -442,13 +442,14 @@ export class BundleMarch extends RowMarch {
   }
 
   /**
-   * Whether the coolant drive itself comes to the duty at the flow found. Only a coolant near the laminar limit, thinner
-   * the warmer it gets, may stand in two states at one flow.
+   * Whether the coolant drive itself comes to the duty at the flow found. A coolant near the laminar limit, thinner the
+   * warmer it gets, may stand in two states at one flow, and so may rows under Chen's law, whose factor grows with
+   * subcooling.
    */
   private ratesTo(duty: number): boolean {
     let slowest = Number.POSITIVE_INFINITY
     for (let j = 0; j < this.s.passes; j++) slowest = Math.min(slowest, this.passReynolds[j])
-    if (slowest > TWO_STATES) return true
+    if (slowest > TWO_STATES && this.inundation !== CHEN_ROWS) return true
     return this.rate() === 0 && Math.abs(this.duty / duty - 1) < 1e-8
   }
 

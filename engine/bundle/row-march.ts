@@ -84,6 +84,7 @@ import {
   RHO_V,
   SATURATION_LENGTH,
   SIGMA,
+  saturationSlope,
   saturationTemperature,
 } from '#engine/fluids/index.ts'
 import { OUTCOME_INDEX } from './key-results.ts'
@@ -95,7 +96,7 @@ const OUTCOME = OUTCOME_INDEX as Readonly<Record<string, number>>
 const PRESSURE_FLOOR = 0.2
 /** Film and coolant properties are taken again when their temperature has moved by more [K]. */
 const SAME_TEMPERATURE = 2e-8
-/** Saturation is taken again when the pressure has moved by more, relative; less follows Clausius and Clapeyron. */
+/** Saturation is taken again when the pressure has moved by more, relative; less follows the saturation line's slope. */
 const SAME_PRESSURE = 2e-8
 /** A row's pressure loss is taken again when its flows have moved by more, relative; less follows a power. */
 const SAME_FLOW = 1e-7
@@ -109,6 +110,7 @@ const STEP = 1e-4
 // Laws that have a place of their own in the inner loop.
 const CONDENSATE_FLOW = 0
 const DRAINAGE_MODE = 1
+export const CHEN_ROWS = 5
 const NO_INUNDATION = 6
 const BUTTERWORTH = 0
 const SHEKRILADZE = 1
@@ -172,7 +174,7 @@ export class RowMarch {
   readonly rowTension = new Float64Array(MAX_ROWS)
   private readonly rowColumnLine = new Float64Array(MAX_ROWS)
   private readonly rowSheetLine = new Float64Array(MAX_ROWS)
-  /** Saturation at `rowPressure` and its slope with pressure (vapour volume only) [K/Pa]. */
+  /** Saturation at `rowPressure` and its slope with pressure [K/Pa]. */
   private readonly rowSaturation = new Float64Array(MAX_ROWS)
   private readonly rowSlope = new Float64Array(MAX_ROWS)
   /** Share of its own condensate in a row's leaving flow, and its power `exponent`, where last taken. */
@@ -333,12 +335,13 @@ export class RowMarch {
     this.first = true
     this.heed = 1
     this.rowX[0] = cooled ? 0.35 * (this.Ts - s.inletTemperature) : s.wallSubcooling
+    const slope = s.fluid.fixed ? 0 : 1 / saturationSlope(s.fluid, this.Ts)
     for (let r = 0; r < s.rows; r++) {
       this.rowFlux[r] = 0
       this.rowShare[r] = 0.5
       this.rowTs[r] = this.Ts
       this.rowSaturation[r] = this.Ts
-      this.rowSlope[r] = this.Ts / (this.inlet[RHO_V] * this.inlet[H_FG])
+      this.rowSlope[r] = slope
       this.rowPressure[r] = this.inletPressure
       this.rowLatent[r] = this.inlet[H_FG]
       this.rowVapourDensity[r] = this.inlet[RHO_V]
@@ -700,7 +703,7 @@ export class RowMarch {
     this.rowTs[r] = Ts
     this.rowSaturation[r] = Ts
     fillVapour(fluid, Ts, vapour)
-    this.rowSlope[r] = Ts / (vapour[RHO_V] * vapour[H_FG])
+    this.rowSlope[r] = 1 / saturationSlope(fluid, Ts)
     this.rowLatent[r] = vapour[H_FG]
     this.rowVapourDensity[r] = vapour[RHO_V]
     this.rowVapourViscosity[r] = vapour[MU_V]

@@ -123,7 +123,10 @@ describe('every case', () => {
       fc.assert(
         fc.property(cases, (input) => {
           const kase = checked(input)
-          fc.pre(kase.duty !== undefined && kase.drive.kind === 'coolant')
+          // Chen's row factor grows with subcooling: two states may share one length.
+          fc.pre(
+            kase.duty !== undefined && kase.drive.kind === 'coolant' && kase.methods.inundation !== 'chen',
+          )
           const sized = evaluate(kase)
           fc.pre(reasonOf(sized) === null && (sized.coolant?.massFlow as number) < 1e6)
           fc.pre(sized.rows[0].tubes <= 2000)
