@@ -35,6 +35,8 @@ const NARROWEST = 1e-13
 const LEAP = 1e-5
 /** Below this Reynolds number a coolant may have two steady states at one flow. */
 const TWO_STATES = 1e4
+/** Two states differ by more than this. */
+const SAME_STATE = 1e-6
 /** Vapour losing more of its pressure than this is refused. */
 const EXHAUSTED = 0.5
 /** Vapour faster than this share of the speed of sound is refused. */
@@ -169,11 +171,12 @@ export class BundleMarch extends RowMarch {
     this.length = this.guessLength()
     this.start(true)
     this.spreadRise(s.duty / (this.flow * this.water[COOLANT_CP]))
-    if (!this.quickLength(s.duty, outlet)) {
+    if (!this.quickLength(s.duty, outlet) || !this.ratesTo(s.duty)) {
       const outcome = this.bracket(BY_LENGTH, s.duty, true, outlet)
       if (outcome !== 0) return outcome
+      if (!this.ratesTo(s.duty)) return OUTCOME.betweenStates
     }
-    this.duty = s.duty
+    this.takeUp(s.duty)
     return this.refusal()
   }
 
@@ -434,15 +437,14 @@ export class BundleMarch extends RowMarch {
       outcome = this.bracket(BY_FLOW, duty, true)
       if (outcome === 0 && !this.ratesTo(duty)) outcome = OUTCOME.betweenStates
     }
-    // The march came to the duty within what its search leaves; the coolant takes up the duty itself.
-    for (let j = 0; j < s.passes; j++) this.passHeat[j] *= duty / this.duty
+    this.takeUp(duty)
     if (outcome === 0) outcome = this.refusal() === 0 ? this.finishCoolant() : OUTCOME.noVelocityHoldsWall
     this.recall()
     return outcome
   }
 
   /**
-   * Whether the coolant drive itself comes to the duty at the flow found. A coolant near the laminar limit, thinner the
+   * Whether the coolant drive itself comes to the duty at the length and flow found. A coolant near the laminar limit, thinner the
    * warmer it gets, may stand in two states at one flow, and so may rows under Chen's law, whose factor grows with
    * subcooling.
    */
@@ -450,7 +452,20 @@ export class BundleMarch extends RowMarch {
     let slowest = Number.POSITIVE_INFINITY
     for (let j = 0; j < this.s.passes; j++) slowest = Math.min(slowest, this.passReynolds[j])
     if (slowest > TWO_STATES && this.inundation !== CHEN_ROWS) return true
-    return this.rate() === 0 && Math.abs(this.duty / duty - 1) < 1e-8
+    this.rate()
+    return Math.abs(this.duty / duty - 1) < SAME_STATE
+  }
+
+  /** The march came to the duty within what its search leaves; rows and coolant are brought to the duty itself. */
+  private takeUp(duty: number): void {
+    const factor = duty / this.duty
+    for (let j = 0; j < this.s.passes; j++) this.passHeat[j] *= factor
+    for (let r = 0; r < this.s.rows; r++) {
+      this.rowFlux[r] *= factor
+      this.rowCondensate[r] *= factor
+    }
+    this.condensate *= factor
+    this.duty = duty
   }
 
   /** The flow at which the inner conductance carries the duty from the wall to the coolant's mean temperature. */
