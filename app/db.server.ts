@@ -20,9 +20,30 @@ class ApplicationPool extends pg.Pool {
   }
 }
 
+/**
+ * A connection whose answer never came is dead, and a transaction hands it back to the pool as if it were not. Broken
+ * off, the pool replaces it.
+ */
+function endWhenSilent(client: pg.PoolClient): void {
+  // What breaks while it is lent out reaches the borrower through its query.
+  client.on('error', () => {})
+  const send = client.query.bind(client) as (...args: unknown[]) => unknown
+  const query = (...args: unknown[]) => {
+    const answer = send(...args)
+    if (answer instanceof Promise)
+      answer.catch((error: Error) => {
+        if (error.message === 'Query read timeout')
+          (client as unknown as { connection: { stream: { destroy(): void } } }).connection.stream.destroy()
+      })
+    return answer
+  }
+  client.query = query as typeof client.query
+}
+
 function createPool(): pg.Pool {
   const pool = new ApplicationPool({ max: 10, application_name: 'rowfall' })
   // A connection that breaks while idle is replaced at the next use; without a listener it would end the process.
+  pool.on('connect', endWhenSilent)
   pool.on('error', (error) => console.warn(`PostgreSQL closed an idle connection: ${error.message}`))
   return pool
 }

@@ -5,8 +5,16 @@ import { env, requireSettings } from '#app/env.server.ts'
 import { ENGINE_VERSION } from '#engine/version.ts'
 import { JobWorker } from './worker.server.ts'
 
-/** A connection cut without a word must not hold a job for ever. */
-Object.assign(pool.options, { query_timeout: 10_000, connectionTimeoutMillis: 5000, keepAlive: true })
+/**
+ * A connection cut without a word must not hold a job for ever: here an answer is waited for so long, and there a
+ * transaction whose other end fell silent lets go of its locks.
+ */
+Object.assign(pool.options, {
+  query_timeout: 10_000,
+  connectionTimeoutMillis: 5000,
+  idle_in_transaction_session_timeout: 8_000,
+  keepAlive: true,
+})
 
 requireSettings('worker')
 // Threads take it over: where web process and worker share a machine, people are served first.
