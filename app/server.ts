@@ -6,14 +6,23 @@ import { RouterContextProvider, type ServerBuild } from 'react-router'
 import { pool } from '#app/db.server.ts'
 import { env, requireSettings } from '#app/env.server.ts'
 import { addressContext } from '#app/http/context.ts'
+import { FIXED_HEADERS } from '#app/http/security-headers.ts'
 
 requireSettings('web')
+
+/** What pages, forms and scripts of ours use; anything else never reaches the gate. */
+const METHODS = ['GET', 'HEAD', 'POST']
 
 const app = express()
 app.disable('x-powered-by')
 app.use(compression())
-app.use('/assets', express.static('build/client/assets', { immutable: true, maxAge: '1y' }))
-app.use(express.static('build/client', { maxAge: '1h' }))
+app.use((request, response, next) => {
+  if (METHODS.includes(request.method)) next()
+  else response.set(FIXED_HEADERS).set('Allow', METHODS.join(', ')).status(405).end()
+})
+const files = { setHeaders: (response: express.Response) => void response.set(FIXED_HEADERS) }
+app.use('/assets', express.static('build/client/assets', { immutable: true, maxAge: '1y', ...files }))
+app.use(express.static('build/client', { maxAge: '1h', ...files }))
 app.all(
   '*path',
   createRequestHandler({

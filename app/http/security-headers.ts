@@ -32,7 +32,8 @@ export function contentSecurityPolicy({ nonce, secure, formOrigins, development 
     .join('; ')
 }
 
-const FIXED = {
+/** What files are sent with too. */
+export const FIXED_HEADERS = {
   'X-Content-Type-Options': 'nosniff',
   'X-Frame-Options': 'DENY',
   'Referrer-Policy': 'same-origin',
@@ -42,7 +43,7 @@ const FIXED = {
 } as const
 
 export function setSecurityHeaders(headers: Headers, options: HeaderOptions): void {
-  for (const [name, value] of Object.entries(FIXED)) headers.set(name, value)
+  for (const [name, value] of Object.entries(FIXED_HEADERS)) headers.set(name, value)
   headers.set('Content-Security-Policy', contentSecurityPolicy(options))
   if (options.secure) headers.set('Strict-Transport-Security', 'max-age=31536000; includeSubDomains')
 }

@@ -1,6 +1,7 @@
 // A person's unit system and theme, set from any page and back to it.
 import { redirect } from 'react-router'
 import { z } from 'zod'
+import { readForm } from '#app/http/body.ts'
 import { viewerContext } from '#app/http/context.ts'
 import { AppError } from '#app/http/errors.ts'
 import { setPreferences } from '#app/modules/accounts/people.server.ts'
@@ -11,7 +12,7 @@ import type { Route } from './+types/preferences'
 const choice = z.object({ units: z.enum(UNIT_SYSTEMS).optional(), theme: z.enum(THEMES).optional() })
 
 export async function action({ request, context }: Route.ActionArgs) {
-  const form = await request.formData()
+  const form = await readForm(request)
   const read = choice.safeParse({
     units: form.get('units') ?? undefined,
     theme: form.get('theme') ?? undefined,

@@ -6,6 +6,7 @@ import { redirect } from 'react-router'
 import { Strategy } from 'remix-auth/strategy'
 import { db } from '#app/db.server.ts'
 import { env } from '#app/env.server.ts'
+import { readForm } from '#app/http/body.ts'
 import { AppError } from '#app/http/errors.ts'
 import { trimmedTo } from '#app/modules/stored-text.ts'
 import { authFlow } from '#drizzle/schema/index.ts'
@@ -32,7 +33,7 @@ export class OpenIdConnectStrategy<User> extends Strategy<User, SignedIn> {
   }
 
   private async begin(request: Request): Promise<never> {
-    const form = await request.formData()
+    const form = await readForm(request)
     const config = await provider()
     const codeVerifier = oidc.randomPKCECodeVerifier()
     const nonce = oidc.randomNonce()

@@ -1,6 +1,7 @@
 // Studies: listed, made, renamed, copied, archived; their drafts and the revisions that runs are computed from.
 import { and, desc, eq, ilike, inArray, isNotNull, isNull, sql } from 'drizzle-orm'
 import { db, type Queryable } from '#app/db.server.ts'
+import { parseJson } from '#app/http/body.ts'
 import { AppError } from '#app/http/errors.ts'
 import { type Acting, recordAct } from '#app/modules/audit/audit.server.ts'
 import { oneLine, trimmedTo, unstorableIn } from '#app/modules/stored-text.ts'
@@ -368,7 +369,7 @@ export function readStudyFile(
     return { ok: false, problem: 'Study file: it is larger than 2 MB; give ranges instead of long lists.' }
   let value: unknown
   try {
-    value = JSON.parse(text)
+    value = parseJson(text)
   } catch (error) {
     return {
       ok: false,

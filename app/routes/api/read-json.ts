@@ -1,3 +1,4 @@
+import { parseJson } from '#app/http/body.ts'
 import { AppError } from '#app/http/errors.ts'
 
 /** A definition with a long list of values in every variable stays well below this. */
@@ -15,7 +16,7 @@ export async function readJson(request: Request): Promise<unknown> {
       parts.push(part)
     }
   try {
-    return JSON.parse(Buffer.concat(parts).toString('utf8'))
+    return parseJson(Buffer.concat(parts).toString('utf8'))
   } catch (error) {
     throw new AppError('bad-request', `The body is not JSON: ${(error as Error).message}.`)
   }

@@ -7,6 +7,7 @@ import { EmptyState, PageHead, PlainPage, Sheet } from '#app/components/ui/page.
 import { Tag } from '#app/components/ui/tag.tsx'
 import { useFaultFocus } from '#app/components/ui/use-fault-focus.ts'
 import { When } from '#app/components/ui/when.tsx'
+import { readForm } from '#app/http/body.ts'
 import { viewerContext } from '#app/http/context.ts'
 import { failureOf } from '#app/http/errors.ts'
 import { can } from '#app/http/permissions.ts'
@@ -29,7 +30,7 @@ export async function loader({ context }: Route.LoaderArgs) {
 }
 
 export async function action({ request, context }: Route.ActionArgs) {
-  const form = await request.formData()
+  const form = await readForm(request)
   const name = String(form.get('name') ?? '')
   const description = String(form.get('description') ?? '')
   try {

@@ -12,6 +12,7 @@ import { Tag } from '#app/components/ui/tag.tsx'
 import { tell } from '#app/components/ui/toast.tsx'
 import { useFaultFocus } from '#app/components/ui/use-fault-focus.ts'
 import { When } from '#app/components/ui/when.tsx'
+import { readForm } from '#app/http/body.ts'
 import { viewerContext } from '#app/http/context.ts'
 import { can } from '#app/http/permissions.ts'
 import { getProject, listMembers } from '#app/modules/projects/projects.server.ts'
@@ -74,7 +75,7 @@ export async function loader({ params, request, context }: Route.LoaderArgs) {
 export async function action({ params, request, context }: Route.ActionArgs) {
   return actOnProject(
     params.projectId,
-    await request.formData(),
+    await readForm(request),
     context.get(viewerContext),
     actingOf(context),
   )

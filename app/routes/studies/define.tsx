@@ -10,6 +10,7 @@ import type { SaveAnswer } from '#app/components/define/use-autosave.ts'
 import { Button, DownloadLink } from '#app/components/ui/button.tsx'
 import { Disclosure } from '#app/components/ui/disclosure.tsx'
 import { useUnits } from '#app/components/ui/number.tsx'
+import { readForm } from '#app/http/body.ts'
 import { viewerContext } from '#app/http/context.ts'
 import { AppError } from '#app/http/errors.ts'
 import { can } from '#app/http/permissions.ts'
@@ -67,7 +68,7 @@ export function shouldRevalidate({
 }
 
 export async function action({ params, request, context }: Route.ActionArgs) {
-  const form = await request.formData()
+  const form = await readForm(request)
   const viewer = context.get(viewerContext)
   const intent = form.get('intent')
   const { studyId } = params

@@ -15,6 +15,7 @@ import { duration, plural, significant } from '#app/components/ui/number-format.
 import { EmptyState, MarginPage, PageHead, PlainPage, Scroll, Sheet } from '#app/components/ui/page.tsx'
 import { ProgressBar } from '#app/components/ui/progress.tsx'
 import { When } from '#app/components/ui/when.tsx'
+import { readForm } from '#app/http/body.ts'
 import { viewerContext } from '#app/http/context.ts'
 import { AppError, failureOf } from '#app/http/errors.ts'
 import { isId } from '#app/http/ids.ts'
@@ -45,7 +46,7 @@ const CHANGES = new Map<unknown, typeof cancelRun>([
 ])
 
 export async function action({ params, request, context }: Route.ActionArgs) {
-  const form = await request.formData()
+  const form = await readForm(request)
   const acting = actingOf(context)
   const here = `/studies/${params.studyId}/run`
   try {
