@@ -49,11 +49,10 @@ const headers: MiddlewareFunction<Response> = async ({ request, context }, next)
 const gate: MiddlewareFunction<Response> = async ({ request, context, params, pattern }, next) => {
   const reading = request.method === 'GET' || request.method === 'HEAD'
   const rule: UrlRules | undefined = rules[normal(pattern)]
-  const token = readCookie(request, 'session')
-  const visitor = token ? await viewerOfSession(token) : null
-  context.set(visitorContext, visitor)
-  if (visitor) context.set(viewerContext, visitor)
   try {
+    const visitor = await visitorOf(request)
+    context.set(visitorContext, visitor)
+    if (visitor) context.set(viewerContext, visitor)
     if (!reading) refuseForeign(request)
     const access = reading ? rule?.loader : rule?.action
     if (!access)
@@ -85,6 +84,20 @@ export const middleware: MiddlewareFunction<Response>[] = [headers, gate]
 function normal(pattern: string): string {
   const path = pattern.startsWith('/') ? pattern : `/${pattern}`
   return path.length > 1 && path.endsWith('/') ? path.slice(0, -1) : path
+}
+
+async function visitorOf(request: Request): Promise<Viewer | null> {
+  const token = readCookie(request, 'session')
+  if (token === null) return null
+  try {
+    return await viewerOfSession(token)
+  } catch (error) {
+    console.error(error)
+    throw new AppError(
+      'unavailable',
+      'The database does not answer. Nothing that was saved is lost; try again in a moment.',
+    )
+  }
 }
 
 function refuseForeign(request: Request): void {
