@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest'
+import { METHOD_CHOICES } from '#engine/correlations/registry.ts'
 import { displayUnit, parseQuantity } from '#engine/units.ts'
 import {
   type Definition,
@@ -7,6 +8,7 @@ import {
   fieldOfFault,
   fieldsFromDefinition,
   listItems,
+  METHOD_NAMES,
   QUANTITIES,
   SWEPT_FIELDS,
 } from './form-fields.ts'
@@ -98,6 +100,10 @@ describe('the definition and the form', () => {
         const unit = displayUnit(dimension, system, hint)
         expect(parseQuantity(`1 ${unit}`, dimension), `${dimension} ${unit}`).toMatchObject({ ok: true })
       }
+  })
+
+  it('knows the method choices of the registry', () => {
+    expect([...METHOD_NAMES]).toEqual([...METHOD_CHOICES])
   })
 
   it('names every swept field once', () => {
