@@ -39,10 +39,6 @@ export class AppError extends Error {
   }
 }
 
-export function statusOf(error: unknown): number {
-  return error instanceof AppError ? error.init.status : 500
-}
-
 /** What a resource route or the API answers. */
 export function toJsonResponse({ code, message }: AppErrorData): Response {
   return Response.json({ error: code, message }, { status: STATUS[code] })
