@@ -1,7 +1,7 @@
 // The whole way of one study: sign in, define, run, explore, export; and the workbook's numbers are the page's.
 import { readFileSync } from 'node:fs'
 import ExcelJS from 'exceljs'
-import type { Browser, BrowserContext, Page } from 'playwright-core'
+import type { Browser, BrowserContext, Locator, Page } from 'playwright-core'
 import { afterAll, beforeAll, expect, inject, test } from 'vitest'
 import { launch, openPage, signIn } from './browser.ts'
 
@@ -28,6 +28,18 @@ test('an engineer signs in through the identity provider and finds the demo', as
 
 let study = ''
 
+/** Ticks a box; the live result may move the page between aiming and clicking, so until it is ticked. */
+const tick = (box: Locator) =>
+  expect
+    .poll(
+      async () => {
+        await box.check({ timeout: 2000 }).catch(() => {})
+        return box.isChecked()
+      },
+      { timeout: 20_000 },
+    )
+    .toBe(true)
+
 test('defines a study over tube, rows, subcooling and fluid, and is told what is missing until it fits', async () => {
   await page
     .getByRole('link', { name: /Chiller line K4/ })
@@ -45,7 +57,7 @@ test('defines a study over tube, rows, subcooling and fluid, and is told what is
   await page.getByLabel('Study name').fill('Rows against subcooling')
   await page.getByLabel('Condensing fluid: one value or several').selectOption('list')
   for (const fluid of ['R134a, A1', 'Propane'])
-    await page.getByRole('checkbox', { name: new RegExp(fluid, 'i') }).check()
+    await tick(page.getByRole('checkbox', { name: new RegExp(fluid, 'i') }))
   await page.getByRole('textbox', { name: /^Saturation temperature/ }).fill('40')
   await page.getByRole('textbox', { name: /^Duty/ }).fill('300')
   await page.getByText('a given wall subcooling').click()
@@ -53,12 +65,12 @@ test('defines a study over tube, rows, subcooling and fluid, and is told what is
   await page.locator('[name="vary.drive.wallSubcooling.from"]').fill('3')
   await page.locator('[name="vary.drive.wallSubcooling.to"]').fill('7')
   await page.locator('[name="vary.drive.wallSubcooling.count"]').fill('5')
-  await page.getByRole('checkbox', { name: 'Name the coolant that would hold it' }).check()
+  await tick(page.getByRole('checkbox', { name: 'Name the coolant that would hold it' }))
   await page.locator('select[name="coolant.id"]').selectOption('water')
   await page.locator('[name="coolant.inletTemperature"]').fill('84,2 degF')
-  await page.getByRole('checkbox', { name: /Vary over standard tubes/ }).check()
-  await page.getByRole('group', { name: 'Standard tubes' }).getByRole('checkbox').nth(6).check()
-  await page.getByRole('group', { name: 'Standard tubes' }).getByRole('checkbox').nth(9).check()
+  await tick(page.getByRole('checkbox', { name: /Vary over standard tubes/ }))
+  await tick(page.getByRole('group', { name: 'Standard tubes' }).getByRole('checkbox').nth(6))
+  await tick(page.getByRole('group', { name: 'Standard tubes' }).getByRole('checkbox').nth(9))
   await page.locator('select[name="tube.material"]').selectOption('copper')
   await page.locator('[name="bundle.pitchRatio"]').fill('1.25')
   await page.getByLabel('Rows: one value or several').selectOption('list')
