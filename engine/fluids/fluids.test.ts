@@ -1,8 +1,7 @@
 // The fitted library against its tables, between their rows, and against figures published elsewhere.
 import { readFileSync } from 'node:fs'
 import { describe, expect, it } from 'vitest'
-import { coolantCoefficients, fluidCoefficients } from './coefficients.ts'
-import { fitCoolantTable, fitFluidTable } from './fit.ts'
+import { libraryCoefficients } from './fit-library.ts'
 import {
   COOLANT_CP,
   COOLANT_K,
@@ -22,7 +21,9 @@ import {
   K_V,
   MU_L,
   MU_V,
+  outsideRange,
   P,
+  properties,
   RHO_L,
   RHO_V,
   SATURATION_LENGTH,
@@ -31,10 +32,10 @@ import {
   saturationSlope,
   saturationTemperature,
 } from './index.ts'
+import { STRIDE } from './model.ts'
 import published from './published-points.json' with { type: 'json' }
 import coolantTable from './tables/coolants.json' with { type: 'json' }
 import fluidTable from './tables/fluids.json' with { type: 'json' }
-import { coolantColumns, saturationColumns } from './tables.ts'
 
 const read = (name: string) => readFileSync(new URL(`./tables/${name}`, import.meta.url), 'utf8')
 const csv = (name: string): Record<string, number>[] => {
@@ -98,6 +99,45 @@ describe.each(fluidTable.fluids.map(({ id, file }) => ({ id, file })))('$id', ({
     }
   })
 
+  it('is whole where its segments meet, in value and in slope', () => {
+    const step = 1e-4
+    const at = (T: number) => {
+      fillSaturation(model, T, out)
+      return Float64Array.from(out)
+    }
+    for (let segment = 0; segment + 1 < model.segments; segment++) {
+      const joint = model.data[segment * STRIDE]
+      const [below, left, right, above] = [-2 * step, 0, 1e-9, 2 * step].map((d) => at(joint + d))
+      for (let place = 0; place < SATURATION_LENGTH; place++) {
+        expect(Math.abs(right[place] / left[place] - 1), `place ${place} at ${joint} K`).toBeLessThan(1e-8)
+        const [down, up] = [left[place] - below[place], above[place] - right[place]].map(
+          (difference) => difference / (2 * step * left[place]),
+        )
+        expect(Math.abs(up - down), `slope of place ${place} at ${joint} K`).toBeLessThan(1e-4)
+      }
+    }
+  })
+
+  it('goes on steadily beyond its table, pressure along a straight line in 1/T', () => {
+    for (const [end, beyond] of [
+      [low, low - 5],
+      [high, high + 5],
+    ]) {
+      const rise = saturationPressure(model, beyond) / saturationPressure(model, end)
+      expect(rise > 1).toBe(beyond > end)
+      const straight = Math.exp(
+        ((saturationSlope(model, end) * end) / saturationPressure(model, end)) * (1 - end / beyond),
+      )
+      expect(Math.abs(rise / straight - 1)).toBeLessThan(1e-12)
+      expect(saturationTemperature(model, saturationPressure(model, beyond))).toBeCloseTo(beyond, 8)
+      expect(outsideRange(model, beyond)).toBe(true)
+      expect(outsideRange(model, end)).toBe(false)
+    }
+    expect(outsideRange(model, Number.NaN)).toBe(true)
+    expect(saturationTemperature(model, 0)).toBeNaN()
+    expect(() => properties(id, [high + 1])).toThrow(/outside the table/)
+  })
+
   it('finds the temperature of a pressure again', () => {
     for (let i = 1; i < 60; i++) {
       const T = low + ((high - low) * i) / 60
@@ -150,12 +190,17 @@ describe('figures published elsewhere', () => {
 })
 
 describe.each(coolantTable.coolants.map(({ id, file }) => ({ id, file })))('coolant $id', ({ id, file }) => {
-  it('agrees with its table', () => {
-    const model = coolantModel(id)
+  const model = coolantModel(id)
+  const at = (T: number) => {
     const values = new Float64Array(COOLANT_LENGTH)
+    fillCoolant(model, T, values)
+    return values
+  }
+
+  it('agrees with its table', () => {
     for (const row of csv(file)) {
       if (row.T_K < model.minTemperature || row.T_K > model.maxTemperature) continue
-      fillCoolant(model, row.T_K, values)
+      const values = at(row.T_K)
       expect(Math.abs(values[COOLANT_RHO] / row.rho_kg_m3 - 1)).toBeLessThan(1e-4)
       expect(Math.abs(values[COOLANT_CP] / row.cp_J_kgK - 1)).toBeLessThan(1e-4)
       expect(Math.abs(values[COOLANT_MU] / row.mu_Pa_s - 1)).toBeLessThan(1e-3)
@@ -163,41 +208,28 @@ describe.each(coolantTable.coolants.map(({ id, file }) => ({ id, file })))('cool
     }
     expect(coolants.find((card) => card.id === id)?.sources.length).toBeGreaterThan(0)
   })
+
+  it('thins as it warms, without a step', () => {
+    const points = 400
+    let before = at(model.minTemperature)
+    for (let i = 1; i <= points; i++) {
+      const now = at(model.minTemperature + ((model.maxTemperature - model.minTemperature) * i) / points)
+      expect(now[COOLANT_MU]).toBeLessThan(before[COOLANT_MU])
+      for (const place of [COOLANT_RHO, COOLANT_CP, COOLANT_K])
+        expect(Math.abs(now[place] / before[place] - 1)).toBeLessThan(5e-3)
+      before = now
+    }
+  })
+
+  it('says where it freezes, and stays finite beyond its table', () => {
+    expect(model.freezingTemperature).toBeLessThanOrEqual(model.minTemperature + 1)
+    for (const T of [1, model.minTemperature - 20, model.maxTemperature + 200]) {
+      expect(outsideRange(model, T)).toBe(true)
+      expect(at(T).every(Number.isFinite)).toBe(true)
+    }
+  })
 })
 
-describe('the coefficients file is what npm run fit writes', () => {
-  const GOAL = { thermodynamic: 2e-5, transport: 2e-4 }
-  it.each(['water', 'r134a', 'r717'])('%s', (id) => {
-    const entry = fluidTable.fluids.find((fluid) => fluid.id === id) as (typeof fluidTable.fluids)[number]
-    const fitted = fitFluidTable(
-      {
-        id,
-        criticalTemperature: entry.T_crit_K,
-        criticalPressure: entry.p_crit_Pa,
-        molarMass: entry.molar_mass_kg_mol,
-      },
-      saturationColumns(read(entry.file)),
-      GOAL,
-    )
-    const kept = fluidCoefficients.find((fluid) => fluid.id === id)?.data ?? []
-    expect(kept).toHaveLength(fitted.data.length)
-    kept.forEach((value, i) => {
-      if (Number.isFinite(value)) expect(value).toBe(Number(fitted.data[i].toPrecision(13)))
-    })
-  })
-
-  it('water as a coolant', () => {
-    const entry = coolantTable.coolants.find(
-      (coolant) => coolant.id === 'water',
-    ) as (typeof coolantTable.coolants)[number]
-    const fitted = fitCoolantTable(
-      { id: 'water', freezingTemperature: entry.T_freeze_K },
-      coolantColumns(read(entry.file)),
-      GOAL,
-    )
-    const kept = coolantCoefficients.find((coolant) => coolant.id === 'water')?.data ?? []
-    kept.forEach((value, i) => {
-      if (Number.isFinite(value)) expect(value).toBe(Number(fitted.data[i].toPrecision(13)))
-    })
-  })
+it('holds the coefficients that npm run fit writes from the tables', () => {
+  expect(readFileSync(new URL('./coefficients.ts', import.meta.url), 'utf8')).toBe(libraryCoefficients(read))
 })
