@@ -47,9 +47,15 @@ function employ(): JobWorker {
   return worker
 }
 
-afterAll(async () => {
+/** For runs that must be changed before a worker sees them. */
+async function retire(): Promise<void> {
   worker?.drain()
   await work
+  worker = undefined
+}
+
+afterAll(async () => {
+  await retire()
   await (await queue()).stop({ close: false, graceful: false })
   await pool.end()
 })
@@ -227,6 +233,7 @@ test('a run again is a new run of the same revision with the same content', asyn
 })
 
 test('a run of another engine version is not taken, and its page says that it waits', async () => {
+  await retire()
   const planned = await plantRun(SMALL)
   await db.update(run).set({ engineVersion: '0.0.1' }).where(eq(run.id, planned.id))
   await db.execute(sql`delete from pgboss.job where data->>'runId' = ${planned.id}`)
@@ -242,6 +249,7 @@ test('a run of another engine version is not taken, and its page says that it wa
 })
 
 test('a failed run says why, and an administrator’s retry finishes it', async () => {
+  await retire()
   const planned = await plantRun(SMALL, 200)
   await failRun(planned.id, 'The engine failed at chunk 3: out of luck')
   expect(await runProgress(planned.id)).toMatchObject({
