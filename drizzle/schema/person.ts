@@ -1,6 +1,6 @@
 // People, their sessions, and sign-ins under way. People appear by signing in or by being invited to a project.
 import { sql } from 'drizzle-orm'
-import { check, index, pgTable, text, uniqueIndex, uuid } from 'drizzle-orm/pg-core'
+import { boolean, check, index, integer, pgTable, text, uniqueIndex, uuid } from 'drizzle-orm/pg-core'
 import { id, moment } from './columns.ts'
 
 /** Highest first: where groups name several roles, the first of these wins. */
@@ -23,11 +23,19 @@ export const person = pgTable(
     name: text('name').notNull(),
     email: text('email').notNull(),
     // As of the latest sign-in; null when no group of the person has a role.
+    // The provider's groups at the last sign-in: a new mapping of groups changes roles at once.
+    groups: text('groups').array().notNull().default([]),
     role: text('role', { enum: ROLES }),
     units: text('units', { enum: UNIT_SYSTEMS }).notNull().default('si'),
     theme: text('theme', { enum: THEMES }).notNull().default('system'),
+    // What they are told by e-mail. A run is told of when it took longer than so many minutes; null: never.
+    mailRunMinutes: integer('mail_run_minutes').default(5),
+    mailReviews: boolean('mail_reviews').notNull().default(true),
+    mailMentions: boolean('mail_mentions').notNull().default(true),
     createdAt: moment('created_at').notNull().defaultNow(),
     signedInAt: moment('signed_in_at'),
+    // Set by an administrator: the person is refused from the next request on, and at every sign-in.
+    removedAt: moment('removed_at'),
   },
   (t) => [
     uniqueIndex('person_issuer_subject').on(t.issuer, t.subject),
@@ -75,6 +83,16 @@ export const authFlow = pgTable(
     expiresAt: moment('expires_at').notNull(),
   },
   (t) => [index('auth_flow_expires').on(t.expiresAt)],
+)
+
+/** Which role a group of the identity provider gives. Empty: the settings' map counts. */
+export const roleGroup = pgTable(
+  'role_group',
+  {
+    group: text('group').primaryKey(),
+    role: text('role', { enum: ROLES }).notNull(),
+  },
+  (t) => [check('role_group_role', sql`${t.role} in ('administrator', 'lead', 'engineer', 'analyst')`)],
 )
 
 export type Person = typeof person.$inferSelect

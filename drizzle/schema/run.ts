@@ -103,7 +103,7 @@ export const pointColumn = pgTable(
   (t) => [primaryKey({ columns: [t.runId, t.column, t.chunk, t.plannedOn] })],
 )
 
-export const POINT_RESULT_KINDS = ['best', 'refined', 'pinned'] as const
+export const POINT_RESULT_KINDS = ['best', 'refined', 'pinned', 'submitted'] as const
 
 /** Full results kept with the record, so that no later engine can change what was shown. */
 export const pointResult = pgTable(
