@@ -40,11 +40,9 @@ CREATE TABLE "bench_data" (
 CREATE TABLE "mail_outbox" (
 	"id" uuid PRIMARY KEY DEFAULT gen_random_uuid() NOT NULL,
 	"happening" text NOT NULL,
-	"to_address" text NOT NULL,
-	"subject" text NOT NULL,
-	"text" text NOT NULL,
-	"html" text NOT NULL,
-	"unsubscribe_url" text NOT NULL,
+	"person_id" uuid NOT NULL,
+	"kind" text NOT NULL,
+	"letter" jsonb NOT NULL,
 	"queued_at" timestamp with time zone DEFAULT now() NOT NULL,
 	"due_at" timestamp with time zone DEFAULT now() NOT NULL,
 	"attempts" integer DEFAULT 0 NOT NULL,
@@ -156,6 +154,7 @@ ALTER TABLE "analysis" ADD CONSTRAINT "analysis_requested_by_person_id_fk" FOREI
 ALTER TABLE "analysis_part" ADD CONSTRAINT "analysis_part_analysis_id_analysis_id_fk" FOREIGN KEY ("analysis_id") REFERENCES "public"."analysis"("id") ON DELETE cascade ON UPDATE no action;--> statement-breakpoint
 ALTER TABLE "bench_data" ADD CONSTRAINT "bench_data_project_id_project_id_fk" FOREIGN KEY ("project_id") REFERENCES "public"."project"("id") ON DELETE cascade ON UPDATE no action;--> statement-breakpoint
 ALTER TABLE "bench_data" ADD CONSTRAINT "bench_data_uploaded_by_person_id_fk" FOREIGN KEY ("uploaded_by") REFERENCES "public"."person"("id") ON DELETE no action ON UPDATE no action;--> statement-breakpoint
+ALTER TABLE "mail_outbox" ADD CONSTRAINT "mail_outbox_person_id_person_id_fk" FOREIGN KEY ("person_id") REFERENCES "public"."person"("id") ON DELETE cascade ON UPDATE no action;--> statement-breakpoint
 ALTER TABLE "notice" ADD CONSTRAINT "notice_person_id_person_id_fk" FOREIGN KEY ("person_id") REFERENCES "public"."person"("id") ON DELETE cascade ON UPDATE no action;--> statement-breakpoint
 ALTER TABLE "notice" ADD CONSTRAINT "notice_project_id_project_id_fk" FOREIGN KEY ("project_id") REFERENCES "public"."project"("id") ON DELETE cascade ON UPDATE no action;--> statement-breakpoint
 ALTER TABLE "accepted_record" ADD CONSTRAINT "accepted_record_project_id_project_id_fk" FOREIGN KEY ("project_id") REFERENCES "public"."project"("id") ON DELETE no action ON UPDATE no action;--> statement-breakpoint

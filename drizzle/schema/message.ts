@@ -1,6 +1,6 @@
 // What people are told: notices in the application, and e-mail on its way out.
 import { sql } from 'drizzle-orm'
-import { index, integer, pgTable, text, uuid } from 'drizzle-orm/pg-core'
+import { index, integer, jsonb, pgTable, text, uuid } from 'drizzle-orm/pg-core'
 import { id, moment } from './columns.ts'
 import { person } from './person.ts'
 import { project } from './project.ts'
@@ -27,18 +27,19 @@ export const notice = pgTable(
   (t) => [index('notice_person').on(t.personId, t.at)],
 )
 
-/** Written in the transaction of what it tells of; sent afterwards, with retries, by whichever worker claims it. */
+export type Letter = { subject: string; paragraphs: string[]; href: string }
+
+/** Written in the transaction of what it tells of; sent afterwards, with retries, by whichever web process claims it. */
 export const mailOutbox = pgTable(
   'mail_outbox',
   {
     id: id(),
     happening: text('happening').notNull().unique(),
-    toAddress: text('to_address').notNull(),
-    subject: text('subject').notNull(),
-    text: text('text').notNull(),
-    html: text('html').notNull(),
-    // A link that a mail program may open without signing in to unsubscribe from this kind.
-    unsubscribeUrl: text('unsubscribe_url').notNull(),
+    personId: uuid('person_id')
+      .notNull()
+      .references(() => person.id, { onDelete: 'cascade' }),
+    kind: text('kind', { enum: NOTICE_KINDS }).notNull(),
+    letter: jsonb('letter').$type<Letter>().notNull(),
     queuedAt: moment('queued_at').notNull().defaultNow(),
     dueAt: moment('due_at').notNull().defaultNow(),
     attempts: integer('attempts').notNull().default(0),
