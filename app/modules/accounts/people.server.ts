@@ -28,8 +28,8 @@ export async function personOfIdentity(
   identity: Identity,
   role: Role | null,
 ): Promise<Person> {
-  const { issuer, subject, name, email } = identity
-  const now = { name, email, role, signedInAt: sql`now()` }
+  const { issuer, subject, name, email, groups } = identity
+  const now = { name, email, groups, role, signedInAt: sql`now()` }
   const [known] = await tx
     .update(person)
     .set(now)
@@ -53,10 +53,15 @@ export async function personOfIdentity(
   return made
 }
 
-export async function setPreferences(
-  personId: string,
-  choice: { units?: Units; theme?: Theme },
-): Promise<void> {
-  if (choice.units === undefined && choice.theme === undefined) return
+export type Preferences = {
+  units?: Units
+  theme?: Theme
+  mailRunMinutes?: number | null
+  mailReviews?: boolean
+  mailMentions?: boolean
+}
+
+export async function setPreferences(personId: string, choice: Preferences): Promise<void> {
+  if (Object.values(choice).every((value) => value === undefined)) return
   await db.update(person).set(choice).where(eq(person.id, personId))
 }

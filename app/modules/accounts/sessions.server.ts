@@ -45,7 +45,14 @@ export async function viewerOfSession(token: string): Promise<Viewer | null> {
     })
     .from(session)
     .innerJoin(person, eq(person.id, session.personId))
-    .where(and(eq(session.idHash, idHash), isNull(session.revokedAt), gt(session.expiresAt, sql`now()`)))
+    .where(
+      and(
+        eq(session.idHash, idHash),
+        isNull(session.revokedAt),
+        gt(session.expiresAt, sql`now()`),
+        isNull(person.removedAt),
+      ),
+    )
   if (!row?.role) return null
   const { stale, role, ...viewer } = row
   if (stale) {

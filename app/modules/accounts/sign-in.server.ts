@@ -9,6 +9,7 @@ import { type Acting, recordAct } from '#app/modules/audit/audit.server.ts'
 import { cookie, readCookie } from './cookies.server.ts'
 import { personOfIdentity, roleOfGroups } from './people.server.ts'
 import { provider } from './provider.server.ts'
+import { roleMap } from './roles.server.ts'
 import { beginSession, endSession, LONGEST_SECONDS } from './sessions.server.ts'
 import { OpenIdConnectStrategy, type SignedIn } from './strategy.server.ts'
 
@@ -20,29 +21,34 @@ authenticator.use(new OpenIdConnectStrategy<SignedIn>(async (signedIn) => signed
 /** Begins (POST) or ends (GET, the provider's answer) a sign-in; the response to send. */
 export async function signIn(request: Request, address: string): Promise<Response> {
   const { identity, idToken, returnTo } = await authenticator.authenticate('openid-connect', request)
-  const role = roleOfGroups(identity.groups, env.ROLE_GROUPS)
-  const token = await db.transaction(async (tx) => {
-    const { id, name } = await personOfIdentity(tx, identity, role)
+  const { token, removed } = await db.transaction(async (tx) => {
+    const role = roleOfGroups(identity.groups, await roleMap(tx))
+    const { id, name, removedAt } = await personOfIdentity(tx, identity, role)
+    const removed = removedAt !== null
+    const refused = role === null || removed
     const earlier = readCookie(request, 'session')
     if (earlier) await endSession(earlier, tx)
     await recordAct(
       tx,
       { personId: id, name, address },
       {
-        act: role === null ? 'person.signInRefused' : 'person.signIn',
+        act: refused ? 'person.signInRefused' : 'person.signIn',
         subject: 'person',
         subjectId: id,
         projectId: null,
-        after: { role },
+        after: { role, ...(removed ? { removed } : {}) },
       },
     )
-    if (role === null) return null
-    return beginSession(id, { userAgent: request.headers.get('user-agent') ?? '', idToken }, tx)
+    if (refused) return { token: null, removed }
+    const userAgent = request.headers.get('user-agent') ?? ''
+    return { token: await beginSession(id, { userAgent, idToken }, tx), removed }
   })
   if (token === null)
     throw new AppError(
       'forbidden',
-      `${identity.name} is known to the identity provider, and none of their groups has a role in Rowfall. Ask an administrator to map one.`,
+      removed
+        ? `An administrator has removed ${identity.name} from Rowfall. Ask one if that should not be.`
+        : `${identity.name} is known to the identity provider, and none of their groups has a role in Rowfall. Ask an administrator to map one.`,
     )
   const headers = new Headers()
   headers.append('Set-Cookie', cookie('session', token, LONGEST_SECONDS))

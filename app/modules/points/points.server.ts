@@ -336,7 +336,7 @@ export async function pointSheet(runId: string, point: number): Promise<PointShe
       and(
         eq(pointResult.runId, runId),
         eq(pointResult.point, point),
-        inArray(pointResult.kind, ['best', 'pinned']),
+        inArray(pointResult.kind, ['best', 'pinned', 'submitted']),
       ),
     )
     .limit(1)

@@ -4,6 +4,7 @@ import { db, type Queryable } from '#app/db.server.ts'
 import { AppError } from '#app/http/errors.ts'
 import { enqueueChunks, enqueueFinish, queue, queuedChunks, withdrawChunks } from '#app/jobs/queue.server.ts'
 import { type Acting, recordAct } from '#app/modules/audit/audit.server.ts'
+import { tellRunEnded } from '#app/modules/notices/run-ended.server.ts'
 import { person, type Run, run, runChunk, study, studyRevision } from '#drizzle/schema/index.ts'
 import { ENGINE_VERSION } from '#engine/version.ts'
 import { chunkCount, chunkPointsFor } from './chunks.ts'
@@ -150,7 +151,9 @@ export async function failRun(runId: string, fault: string): Promise<void> {
       .set({ state: 'failed', fault, endedAt: new Date(), pausedAt: null })
       .where(and(eq(run.id, runId), inArray(run.state, OPEN)))
       .returning()
-    if (failed) await withdrawChunks(tx, failed)
+    if (!failed) return
+    await withdrawChunks(tx, failed)
+    await tellRunEnded(tx, runId)
   })
 }
 

@@ -3,6 +3,7 @@ import { createHash } from 'node:crypto'
 import { and, eq, inArray, sql } from 'drizzle-orm'
 import { db, type Queryable } from '#app/db.server.ts'
 import { enqueueFinish, holdJob, type Lease, queue, within } from '#app/jobs/queue.server.ts'
+import { tellRunEnded } from '#app/modules/notices/run-ended.server.ts'
 import { readColumn } from '#app/modules/points/column-copy.server.ts'
 import { pointColumn, pointResult, type Run, run, runChunk } from '#drizzle/schema/index.ts'
 import { KEY_RESULTS } from '#engine/bundle/key-results.ts'
@@ -134,6 +135,7 @@ export async function finishRun(lease: Lease, of: Run): Promise<boolean> {
         .returning({ id: run.id })
       if (!ended) throw new Refused()
       if (records.length > 0) await tx.insert(pointResult).values(records).onConflictDoNothing()
+      await tellRunEnded(tx, of.id)
       await boss.complete(lease.queue, lease.id, {}, { db: within(tx) })
       return true
     }),
