@@ -47,17 +47,14 @@ const AGAIN_MINUTES = [1, 5, 30, 120, 480]
 /** An e-mail whose sender fell silent in the middle is taken up again after so long. */
 const CLAIM_MINUTES = 5
 
-let transport: Transporter | undefined
-
 /**
  * Sends what is due, one at a time; answers how many. Claimed by moving its due time in one statement, so that two
  * processes never send the same; a sender that dies between sending and marking sends once more with the same
  * Message-ID, by which receiving servers tell the copy.
  */
-export async function sendDueMail(): Promise<number> {
-  const { SMTP_URL, MAIL_FROM } = env
-  if (!SMTP_URL) return 0
-  transport ??= createTransport(SMTP_URL, { from: MAIL_FROM })
+export async function sendDueMail(server: string | undefined = env.SMTP_URL): Promise<number> {
+  if (!server) return 0
+  const transport = createTransport(server, { from: env.MAIL_FROM })
   for (let sent = 0; ; sent++) {
     const { rows } = await db.execute<{ id: string; attempts: number }>(sql`
       update mail_outbox set attempts = attempts + 1, due_at = now() + make_interval(mins => ${CLAIM_MINUTES})
