@@ -1,5 +1,6 @@
 // A case: everything that fixes one evaluation. The schema here is the only one; form, file, API and job payload share it.
 import { z } from 'zod'
+import { MULTIPLIER_IDS } from '#engine/bundle/multipliers.ts'
 import { findCard } from '#engine/correlations/registry.ts'
 import {
   coolantModel,
@@ -394,6 +395,36 @@ const economicsSchema = record({
   ),
 })
 
+/** Corrections of one group together stay within these, as each does by itself. */
+const CORRECTION_RANGE = [0.2, 5] as const
+
+const line = (what: string) =>
+  z
+    .string({ error: () => said('it is missing', `give ${what} as text`) })
+    .trim()
+    .min(1, said('it is empty', `give ${what}`))
+    .max(200, said('it is too long', 'allowed are 200 characters'))
+
+const correctionSchema = record({
+  name: line('the name of the correction'),
+  group: oneOf(MULTIPLIER_IDS),
+  factor: quantity('none', {
+    min: CORRECTION_RANGE[0],
+    max: CORRECTION_RANGE[1],
+    allowed: 'from 0.2 to 5; 1 changes nothing',
+  }),
+  source: line('where the correction comes from'),
+})
+
+const correctionsSchema = z
+  .array(correctionSchema, {
+    error: () => said('it is not a list', 'give a list of { name, group, factor, source }'),
+  })
+  .max(20, said('there are too many', 'allowed are 20 corrections'))
+
+/** A factor on one part of the calculation, taken from measurements. */
+export type Correction = z.output<typeof correctionSchema>
+
 /** The fields of a case without the checks across fields. */
 const caseObject = record({
   fluid: fluidSchema,
@@ -406,6 +437,7 @@ const caseObject = record({
   vapour: vapourSchema.prefault({}),
   methods: methodsSchema.prefault({}),
   economics: economicsSchema.prefault({}),
+  corrections: correctionsSchema.optional(),
 })
 
 /** A case with every default filled in; it parses to itself. */
@@ -666,6 +698,16 @@ function crossFaults(value: Case): Fault[] {
       `"${methods.vapourShear}" is not evaluated by this version`,
       'choose butterworth, shekriladzeGomelauri, rose, fujiiUeharaKurata or none',
     )
+  const together = new Map<string, number>()
+  for (const { group, factor } of value.corrections ?? [])
+    together.set(group, (together.get(group) ?? 1) * factor)
+  for (const [group, factor] of together)
+    if (factor < CORRECTION_RANGE[0] || factor > CORRECTION_RANGE[1])
+      fault(
+        'corrections',
+        `those of ${group} multiply to ${Number(factor.toPrecision(3))}`,
+        `together they may be from ${CORRECTION_RANGE[0]} to ${CORRECTION_RANGE[1]}`,
+      )
   faults.push(...missingProperties(value))
   return faults
 }

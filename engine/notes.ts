@@ -57,6 +57,7 @@ export const NOTE_CODES = [
   'dropwiseTemperature',
   'dropwiseLife',
   'layoutRange',
+  'corrected',
 ] as const
 
 export type NoteCode = (typeof NOTE_CODES)[number]
@@ -118,6 +119,7 @@ export const NOTE_LABELS: Readonly<Record<NoteCode, string>> = {
   dropwiseTemperature: 'Dropwise outside its temperatures',
   dropwiseLife: 'Dropwise promotion is short-lived',
   layoutRange: 'Layout outside the loss method',
+  corrected: 'Corrected from bench data',
 }
 
 /** The codes in a notes mask, in storage order. */

@@ -1,6 +1,6 @@
 // The result of one case, all SI: numbers are finite, or null with a note whose code says why.
 
-import type { Methods } from './case.ts'
+import type { Correction, Methods } from './case.ts'
 import type { Note } from './notes.ts'
 
 export type DrainageMode = 'droplet' | 'dropletColumn' | 'column' | 'columnSheet' | 'sheet'
@@ -75,5 +75,7 @@ export type Result = {
   passes: PassResult[]
   notes: Note[]
   methods: Methods
+  /** As the case gives them; absent where it gives none. */
+  corrections?: Correction[]
   engineVersion: string
 }

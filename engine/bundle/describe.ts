@@ -22,6 +22,7 @@ import { type Note, type NoteCode, noteCodes, type Severity } from '#engine/note
 import type { PassResult, Result, RowResult } from '#engine/result.ts'
 import { ENGINE_VERSION } from '#engine/version.ts'
 import { OUTCOME_INDEX, OUTCOMES } from './key-results.ts'
+import { MULTIPLIER_GROUPS, type MultiplierGroup } from './multipliers.ts'
 import { FREEZING_MARGIN, IMPINGEMENT, notesMask } from './notes-mask.ts'
 import { PointSolver } from './point-solver.ts'
 
@@ -89,6 +90,7 @@ export function describe(point: PointSolver): Result {
     passes: cooled ? passesOf(point) : [],
     notes,
     methods: { ...point.methods },
+    ...(point.corrections.length > 0 ? { corrections: [...point.corrections] } : {}),
     engineVersion: ENGINE_VERSION,
   }
 }
@@ -119,7 +121,8 @@ function rowsOf(point: PointSolver): RowResult[] {
       : rohsenowLatentHeat(march.rowLatent[r], liquid[CP_L], x)
     const still =
       x > 0
-        ? nusseltTube(
+        ? march.factors.film *
+          nusseltTube(
             s.outsideDiameter,
             x,
             liquid[RHO_L],
@@ -156,8 +159,10 @@ function rowsOf(point: PointSolver): RowResult[] {
 /** h of the row over h of a clean tube in the same vapour. */
 function rowFactor(point: PointSolver, row: number, flux: number, arriving: number, still: number): number {
   const { march } = point
-  if (row === 0 || march.inundation === 6) return 1
-  if (march.inundation === 0) return condensateFlowFactor(flux, arriving, march.exponent)
+  if (row === 0) return 1
+  if (march.inundation === 6) return march.factors.inundation
+  if (march.inundation === 0)
+    return march.factors.inundation * condensateFlowFactor(flux, arriving, march.exponent)
   const single = march.singleAt(row)
   return single > 0 ? flux / single : still > 0 ? 1 : 0
 }
@@ -176,6 +181,8 @@ function passesOf(point: PointSolver): PassResult[] {
   }))
 }
 
+const groupLabel = (id: MultiplierGroup) =>
+  MULTIPLIER_GROUPS.find((group) => group.id === id)?.label.toLowerCase()
 const sentence = (text: string) => text.charAt(0).toUpperCase() + text.slice(1)
 const three = (value: number) => Number(value.toPrecision(3)).toString()
 
@@ -438,6 +445,12 @@ function noteOf(code: NoteCode, point: PointSolver, rows: RowResult[]): Note {
         'info',
         'No surface tension is given: drainage modes have no value.',
         'inputs of this point',
+      )
+    case 'corrected':
+      return note(
+        'info',
+        `Corrected from bench data: ${point.corrections.map(({ name, group, factor }) => `${name} (${groupLabel(group)} × ${three(factor)})`).join('; ')}.`,
+        [...new Set(point.corrections.map(({ source }) => source))].join('; '),
       )
     case 'tubesPerRowChosen':
       return note(

@@ -3,7 +3,13 @@
 // A quick loop corrects them after every sweep, together with all that lags in the rows; it settles in about eight
 // sweeps. Where it does not, a bracketed search does, each trial swept until it stands still. Every point starts from
 // the same guesses, so that its numbers depend on its inputs alone.
-import { churchill, colebrook, passPressureDrop, returnPressureDrop } from '#engine/correlations/friction.ts'
+import {
+  churchill,
+  colebrook,
+  PASS_HEADS,
+  passPressureDrop,
+  returnPressureDrop,
+} from '#engine/correlations/friction.ts'
 import {
   COOLANT_CP,
   COOLANT_RHO,
@@ -499,16 +505,17 @@ export class BundleMarch extends RowMarch {
       this.passOut[j] = T
     }
     if (outsideRange(s.coolant as CoolantModel, T)) return OUTCOME.coolantOutletOutsideRange
+    const { coolantFriction, coolantLosses } = this.factors
     const Di = this.insideDiameter
     const rough = s.roughness / Di
     let total = 0
     for (let j = 0; j < s.passes; j++) {
       const re = this.passReynolds[j]
-      const f = this.colebrookFriction ? colebrook(re, rough) : churchill(re, rough)
+      const f = coolantFriction * (this.colebrookFriction ? colebrook(re, rough) : churchill(re, rough))
       const rho = this.passDensity[j]
       const v = this.passVelocity[j]
-      let drop = passPressureDrop(f, this.length, Di, rho, v)
-      if (j > 0) drop += returnPressureDrop(rho, v)
+      let drop = passPressureDrop(f, this.length, Di, rho, v, coolantLosses * PASS_HEADS)
+      if (j > 0) drop += coolantLosses * returnPressureDrop(rho, v)
       this.passDrop[j] = drop
       total += drop
     }

@@ -22,6 +22,7 @@ import {
   SIGMA,
 } from '#engine/fluids/index.ts'
 import { NOTE_BIT, type NoteCode } from '#engine/notes.ts'
+import { inTransition } from './multipliers.ts'
 import type { PointSolver } from './point-solver.ts'
 import { DROP, SHEAR } from './point-state.ts'
 
@@ -120,7 +121,7 @@ export function notesMask(point: PointSolver): number {
     let fastest = 0
     for (let j = 0; j < s.passes; j++) {
       const re = march.passReynolds[j]
-      if (re > 2300 && re < 4000) transition = true
+      if (inTransition(re)) transition = true
       if (march.tubeSide !== 0 && re < 1e4) beyond = true
       const v = march.passVelocity[j]
       if (v < slowest) slowest = v
@@ -145,6 +146,7 @@ export function notesMask(point: PointSolver): number {
   if (Number.isNaN(point.tubeMass)) mask += BIT.noTubeMass
   mask += BIT.economicsAssumed
   if (point.autoTubes) mask += BIT.tubesPerRowChosen
+  if (point.corrections.length > 0) mask += BIT.corrected
   if (point.fluidId === 'water' && march.inletPressure < VACUUM) mask += BIT.vacuumSteamWithoutGas
   if (point.fluidId === 'r717' && s.outsideFouling === 0) mask += BIT.ammoniaWithoutFouling
   const card = point.fluidId === null ? undefined : findFluid(point.fluidId)

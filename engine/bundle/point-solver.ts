@@ -20,6 +20,7 @@ import type { Result } from '#engine/result.ts'
 import { describe } from './describe.ts'
 import { KEY_RESULT_INDEX, OUTCOME_INDEX } from './key-results.ts'
 import { BundleMarch } from './march.ts'
+import { MULTIPLIER_IDS, type Multipliers, unitMultipliers } from './multipliers.ts'
 import { notesMask } from './notes-mask.ts'
 import { DROP, FILM, INUNDATION, SHEAR, TUBE_SIDE } from './point-state.ts'
 
@@ -38,7 +39,9 @@ export class PointSolver {
   methods!: Methods
   economics!: Case['economics']
   autoTubes = false
+  corrections: NonNullable<Case['corrections']> = []
   outcome = 0
+  private readonly corrected = unitMultipliers()
   private recovery = 0
   private readonly water = new Float64Array(COOLANT_LENGTH)
 
@@ -83,6 +86,21 @@ export class PointSolver {
     for (const choice of Object.keys(kase.methods) as (keyof Methods)[]) this.applyMethod(choice)
     this.economics = { ...kase.economics }
     this.applyEconomics()
+
+    this.corrections = kase.corrections ?? []
+    for (const id of MULTIPLIER_IDS) this.corrected[id] = 1
+    for (const { group, factor } of this.corrections) this.corrected[group] *= factor
+    this.setMultipliers(null)
+  }
+
+  /**
+   * Takes factors on the parts of the calculation, over and above the case's own corrections; null takes them away.
+   * They stay for every point until the next `load`.
+   */
+  setMultipliers(given: Readonly<Multipliers> | null): void {
+    const { factors } = this.march
+    for (const id of MULTIPLIER_IDS)
+      factors[id] = given === null ? this.corrected[id] : this.corrected[id] * given[id]
   }
 
   private byPressure = false
@@ -99,6 +117,9 @@ export class PointSolver {
     for (const choice of Object.keys(this.methods) as (keyof Methods)[]) this.applyMethod(choice)
     this.economics = { ...other.economics }
     this.applyEconomics()
+    this.corrections = other.corrections
+    Object.assign(this.corrected, other.corrected)
+    Object.assign(this.march.factors, other.march.factors)
   }
 
   /** Changes one input of the loaded case; `value` in SI or an id. Unknown paths throw RangeError. */

@@ -88,6 +88,7 @@ import {
   saturationTemperature,
 } from '#engine/fluids/index.ts'
 import { OUTCOME_INDEX } from './key-results.ts'
+import { unitMultipliers } from './multipliers.ts'
 import { MAX_PASSES, MAX_ROWS, PointState } from './point-state.ts'
 
 const OUTCOME = OUTCOME_INDEX as Readonly<Record<string, number>>
@@ -129,6 +130,8 @@ export class RowMarch {
   tubeSide = 0
   colebrookFriction = false
   twoPhase = true
+  /** Corrections and sampled factors together. */
+  readonly factors = unitMultipliers()
 
   // --- what does not change within a point
   staggered = true
@@ -258,9 +261,11 @@ export class RowMarch {
     this.eps = voidFraction(layout, pitchRatio)
     this.fmin = minimumAreaFraction(layout, pitchRatio)
     this.exponent = condensateFlowExponent(this.staggered)
+    const { foulingOutside, foulingInside, wall } = this.factors
+    const outside = s.outsideFouling * foulingOutside
     this.fixedResistance = cooled
-      ? s.outsideFouling + wallResistance(Do, Di, s.conductivity) + (Do / Di) * s.insideFouling
-      : s.outsideFouling
+      ? outside + wallResistance(Do, Di, s.conductivity * wall) + (Do / Di) * s.insideFouling * foulingInside
+      : outside
     const tubesPerRow = Number.isNaN(s.tubesPerRow) ? this.chosenTubesPerRow() : s.tubesPerRow
     if (!s.circular && !(tubesPerRow >= 1)) return OUTCOME.inputInvalid
     const pitch = pitchRatio * Do
@@ -439,7 +444,7 @@ export class RowMarch {
             : dittusBoelter(re, pr, perLength)
       this.passVelocity[j] = v
       this.passReynolds[j] = re
-      this.passCoefficient[j] = (nusselt * k) / Di
+      this.passCoefficient[j] = (this.factors.tubeSide * nusselt * k) / Di
     }
   }
 
@@ -490,6 +495,9 @@ export class RowMarch {
     const flowLaw = this.inundation === CONDENSATE_FLOW
     const shearConstant = this.shear === BUTTERWORTH ? 0.416 : 0.64
     const gravityConstant = this.shear === BUTTERWORTH ? 9.47 : 1.69
+    const filmFactor = this.factors.film
+    const shearFactor = this.factors.shear
+    const rowFactor = this.factors.inundation
     let remaining = this.inletVapour
     let pressure = this.inletPressure
     let gathered = 0
@@ -541,7 +549,7 @@ export class RowMarch {
           if (written && (flowLaw || this.inundation === NO_INUNDATION)) {
             const latent = hfg + ROHSENOW_COEFFICIENT * cp * x
             const drive = filmDrive(Do, rho, rhoV, mu, k, latent)
-            const kD = k / Do
+            const kD = ((r > 0 ? filmFactor * rowFactor : filmFactor) * k) / Do
             const re = (rho * film * Do) / mu
             const flooded = flowLaw && arriving > 0
             for (let i = 0; i < 60; i++) {
@@ -553,6 +561,12 @@ export class RowMarch {
                 const root = Math.sqrt(y * y + gravity)
                 q1 = shearConstant * kD * Math.sqrt(x * (y + root))
                 e = 0.5 + 0.25 * ((2 * y * (root + y) + gravity) / (root * (y + root)))
+                if (shearFactor !== 1) {
+                  const still = (1 - shearFactor) * shearConstant * kD * Math.sqrt(x * Math.sqrt(gravity))
+                  const flowing = shearFactor * q1
+                  q1 = flowing + still
+                  e = (e * flowing + 0.75 * still) / q1
+                }
               } else {
                 q1 = NUSSELT_TUBE_CONSTANT * kD * Math.sqrt(Math.sqrt(drive * x * x * x))
                 e = 0.75
@@ -736,9 +750,9 @@ export class RowMarch {
       const rhoL = this.rowDensity[r]
       const slow = liquidFlux / (rhoL * this.fmin)
       const re = (rhoL * slow * Do) / this.rowViscosity[r]
-      loss = ishihara(loss, rowPressureDrop(this.lossOf(re), rhoL, slow))
+      loss = this.factors.twoPhase * ishihara(loss, rowPressureDrop(this.lossOf(re), rhoL, slow))
     }
-    this.rowLoss[r] = loss
+    this.rowLoss[r] = this.factors.vapourDrop * loss
     this.rowLossVapour[r] = vapourFlux
     this.rowLossLiquid[r] = liquidFlux
   }
@@ -766,29 +780,35 @@ export class RowMarch {
     const chen = this.film === 1
     const latent = this.plainLatent || chen ? hfg : hfg + ROHSENOW_COEFFICIENT * cp * x
     const drive = filmDrive(Do, rho, rhoV, mu, k, latent)
-    const kD = k / Do
+    const kD = (this.factors.film * k) / Do
     let q: number
     if (this.shear === NO_SHEAR || !(velocity > 0)) q = nusseltTubeFlux(kD, drive, x)
     else {
-      const re = (rho * velocity * Do) / mu
-      if (this.shear === BUTTERWORTH) q = butterworthFlux(kD, re, drive, x)
-      else if (this.shear === SHEKRILADZE) q = shekriladzeGomelauriFlux(kD, re, drive, x)
-      else if (this.shear === ROSE) q = roseFlux(kD, re, drive, x)
-      else
-        q = fujiiUeharaKurataFlux(
-          kD,
-          re,
-          drive,
-          x,
-          suctionGroupPerKelvin(hfg, k, rho, mu, rhoV, this.rowVapourViscosity[row]),
-          this.staggered,
-        )
+      q = this.shearedFlux(kD, (rho * velocity * Do) / mu, drive, x, row)
+      const factor = this.factors.shear
+      if (factor !== 1) q = factor * q + (1 - factor) * this.shearedFlux(kD, 0, drive, x, row)
     }
     return chen ? q * chenTubeFactor((cp * x) / hfg, (k * x) / (mu * hfg)) : q
   }
 
+  private shearedFlux(kD: number, re: number, drive: number, x: number, row: number): number {
+    if (this.shear === BUTTERWORTH) return butterworthFlux(kD, re, drive, x)
+    if (this.shear === SHEKRILADZE) return shekriladzeGomelauriFlux(kD, re, drive, x)
+    if (this.shear === ROSE) return roseFlux(kD, re, drive, x)
+    const suction = suctionGroupPerKelvin(
+      this.rowLatent[row],
+      this.rowConductivity[row],
+      this.rowDensity[row],
+      this.rowViscosity[row],
+      this.rowVapourDensity[row],
+      this.rowVapourViscosity[row],
+    )
+    return fujiiUeharaKurataFlux(kD, re, drive, x, suction, this.staggered)
+  }
+
   /** Flux of row `row` from the single tube's, under the condensate that arrives (as the flux that would make it). */
-  private rowLaw(q1: number, arriving: number, row: number, x: number, dh: number): number {
+  private rowLaw(single: number, arriving: number, row: number, x: number, dh: number): number {
+    const q1 = row > 0 ? this.factors.inundation * single : single
     switch (this.inundation) {
       case CONDENSATE_FLOW:
         return inundatedFlux(q1, arriving, this.exponent)

@@ -68,15 +68,16 @@ export const PASS_HEADS = 1.5
 /** Velocity heads lost in each return between two passes. */
 export const RETURN_HEADS = 0.5
 
-/** Pressure drop of one pass, (f L/Di + 1.5) ρ v²/2, Pa. */
+/** Pressure drop of one pass, (f L/Di + heads) ρ v²/2, Pa; heads 1.5 unless given. */
 export function passPressureDrop(
   frictionFactor: number,
   length: number,
   insideDiameter: number,
   density: number,
   velocity: number,
+  heads = PASS_HEADS,
 ): number {
-  return (((frictionFactor * length) / insideDiameter + PASS_HEADS) * density * velocity * velocity) / 2
+  return (((frictionFactor * length) / insideDiameter + heads) * density * velocity * velocity) / 2
 }
 
 /** Pressure drop of one return between passes, 0.5 ρ v²/2, Pa. */
