@@ -11,17 +11,8 @@ import { getPath, type Study, withPath } from '#engine/sweep/study.ts'
 import { formatQuantity } from '#engine/units.ts'
 import { bestOnLine, type LineResult, type Trial } from './line.ts'
 import { nelderMead } from './nelder-mead.ts'
+import { CONTINUOUS } from './space.ts'
 
-/** Variables that may take any value between the swept ones; sizes sold in steps are not among them. */
-const CONTINUOUS = [
-  'drive.velocity',
-  'drive.massFlow',
-  'drive.outletTemperature',
-  'drive.wallSubcooling',
-  'bundle.length',
-  'bundle.pitchRatio',
-  'saturationTemperature',
-]
 /** Rounds over all variables; a round that gains less than this ends it. */
 const ROUNDS = 6
 const GAIN = 1e-9
@@ -164,7 +155,11 @@ export function refineBest(study: Study, best: Case): Refinement {
 /** The swept continuous variables that the case carries, with the ends of what was swept. */
 function continuousRanges(study: Study, best: Case): ContinuousRange[] {
   return planSweep(study).variables.flatMap((variable) => {
-    if (!CONTINUOUS.includes(variable.path) || typeof getPath(best, variable.path) !== 'number') return []
+    if (
+      !(CONTINUOUS as readonly string[]).includes(variable.path) ||
+      typeof getPath(best, variable.path) !== 'number'
+    )
+      return []
     const values = variable.values as readonly number[]
     const low = values.reduce((a, b) => Math.min(a, b))
     const high = values.reduce((a, b) => Math.max(a, b))

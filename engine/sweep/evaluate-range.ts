@@ -67,7 +67,7 @@ export function evaluateRange(
   return count
 }
 
-function setSwept(solver: PointSolver, path: string, value: SweptValue): void {
+export function setSwept(solver: PointSolver, path: string, value: SweptValue): void {
   if (path !== CATALOGUE_PATH) {
     solver.set(path as SweepPath, value)
     return
