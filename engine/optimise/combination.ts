@@ -12,8 +12,11 @@ export interface Range {
 /** A combination ready to be tried. */
 export interface Opened {
   trial(x: readonly number[]): Trial | null
-  /** Set when the objective falls as the first axis rises: the sign of each limit along it. */
-  falling: readonly Sign[] | null
+  /**
+   * Set when the objective falls as the first axis rises, or `reversed` as it sinks: how the excess over each limit goes
+   * as the axis rises.
+   */
+  falling: { signs: readonly Sign[]; reversed?: boolean } | null
 }
 
 export type Found =
@@ -51,10 +54,18 @@ export function bestOfCombination(
   ): { x: number; trial: Trial } | 'above' | null => {
     const at = (x: number) => trial([x, ...rest])
     if (falling !== null) {
-      const answer = bestOnFalling({ ...first, trial: at, signs: falling, ceiling: top })
+      const { signs, reversed } = falling
+      const turned = (x: number) => (reversed ? within(first, 1 / x) : x)
+      const answer = bestOnFalling({
+        low: reversed ? 1 / first.high : first.low,
+        high: reversed ? 1 / first.low : first.high,
+        trial: (x) => at(turned(x)),
+        signs: reversed ? signs.map((sign) => (sign === null ? null : ((-sign || 0) as Sign))) : signs,
+        ceiling: top,
+      })
       if (answer.kind === 'above') return 'above'
       if (answer.kind !== 'unknown')
-        return answer.trial === null ? null : { x: answer.x, trial: answer.trial }
+        return answer.trial === null ? null : { x: turned(answer.x), trial: answer.trial }
     }
     const answer = bestOnLine({ ...first, trial: at, looks: effort.looks })
     return answer === null ? null : { x: answer.x, trial: answer }
@@ -77,6 +88,10 @@ export function bestOfCombination(
     ? { status: 'infeasible', x: [] }
     : found([best.x, ...rest], best.trial)
 }
+
+/** 1/(1/x) may miss the end of a range by the last bit. */
+const within = ({ low, high }: Range, x: number): number =>
+  x <= low * (1 + 1e-15) ? low : x >= high * (1 - 1e-15) ? high : x
 
 function alongOther(
   inner: (rest: readonly number[]) => Trial | null,

@@ -172,7 +172,7 @@ export function inputsOf(
 export const bindingLimits = (
   { constraints }: StudyProblem,
   { binding }: Pick<Candidate, 'binding'>,
-): LimitId[] => [...new Set(binding.map((k) => constraints[k].id))]
+): LimitId[] => [...new Set(binding.map((k) => constraints[k].id).filter((id): id is LimitId => id !== null))]
 
 function ratedAgain(kase: Case, result: Result): number | null {
   if (kase.duty === undefined || result.tubeLength === null || kase.drive.kind !== 'coolant') return null

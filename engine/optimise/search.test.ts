@@ -38,7 +38,7 @@ function problemOf<T>(
           evaluations++
           return trial(of[k], v)
         },
-        falling,
+        falling: falling && { signs: falling },
       }
     },
     bound: (k) => (falling === null ? 0 : trial(of[k], fastest).objective),

@@ -13,18 +13,25 @@ import type { Trial } from './line.ts'
 import type { Problem, Spent } from './search.ts'
 import { combinationValues, isSizing, type Space, spaceOf } from './space.ts'
 
-/** One side of a limit. */
+export type Side = 'min' | 'max'
+
+/** One side of a limit; `id` is null for a bound on a result that no limit of a study speaks of. */
 export interface Constraint {
-  id: LimitId
-  side: 'min' | 'max'
+  id: LimitId | null
+  side: Side
   bound: number
   column: number
 }
 
-/** What is made least: a key result, or less of it where `most` is asked for. */
-export interface Goal {
-  column: number
-  most?: boolean
+/** What is made least (or most) in the place of the study's objective; 'worst': the greatest excess over any limit. */
+export type Goal = { column: number; most?: boolean } | 'worst'
+
+export interface ProblemOptions {
+  goal?: Goal
+  /** One side of a limit left out. */
+  lifted?: { id: LimitId; side: Side }
+  /** Bounds beside the study's limits. */
+  more?: readonly Constraint[]
 }
 
 const FLOW_AXES = ['drive.velocity', 'drive.massFlow']
@@ -57,13 +64,11 @@ const HOPELESS = [
 const NOT_REACHED = OUTCOME_INDEX.dutyNotReached
 const WALL_NOT_HELD = OUTCOME_INDEX.noVelocityHoldsWall
 
-export function constraintsOf(study: Study, lifted?: LimitId): Constraint[] {
+export function constraintsOf(study: Study): Constraint[] {
   return LIMITS.flatMap(({ id, result }) => {
-    const limit = study.limits[id]
-    if (!limit || id === lifted) return []
     const column = keyResultColumn(result)
     return (['min', 'max'] as const).flatMap((side) => {
-      const bound = limit[side]
+      const bound = study.limits[id]?.[side]
       return bound === undefined ? [] : [{ id, side, bound, column }]
     })
   })
@@ -73,19 +78,24 @@ export class StudyProblem implements Problem {
   readonly study: Study
   readonly space: Space
   readonly constraints: readonly Constraint[]
-  private readonly goal: Goal
+  private readonly goal: Exclude<Goal, 'worst'>
+  private readonly worst: boolean
   private readonly solver = new PointSolver()
   private readonly key = new Float64Array(KEY_RESULTS.length)
   private readonly cost: Spent = { evaluations: 0, rowMarches: 0 }
   private readonly sizing: boolean
   private readonly ownObjective: boolean
 
-  constructor(study: Study, more: { goal?: Goal; lifted?: LimitId; space?: Space } = {}) {
+  constructor(study: Study, { goal, lifted, more = [] }: ProblemOptions = {}) {
     this.study = study
-    this.space = more.space ?? spaceOf(study)
-    this.constraints = constraintsOf(study, more.lifted)
-    this.goal = more.goal ?? { column: objectiveColumn(study.objective) }
-    this.ownObjective = more.goal === undefined
+    this.space = spaceOf(study)
+    this.constraints = [
+      ...constraintsOf(study).filter(({ id, side }) => !(id === lifted?.id && side === lifted.side)),
+      ...more,
+    ]
+    this.worst = goal === 'worst'
+    this.goal = goal === undefined || goal === 'worst' ? { column: objectiveColumn(study.objective) } : goal
+    this.ownObjective = goal === undefined
     this.sizing = isSizing(study)
   }
 
@@ -119,7 +129,7 @@ export class StudyProblem implements Problem {
         for (let j = 0; j < axes.length; j++) this.solver.set(axes[j].path, x[j])
         return this.look()
       },
-      falling: this.falls() ? this.signs() : null,
+      falling: this.falling(),
     }
   }
 
@@ -129,13 +139,18 @@ export class StudyProblem implements Problem {
     return this.key.slice()
   }
 
+  /** The study's own objective at a place, whatever is made least here. */
+  objectiveAt(combination: number, x: readonly number[]): number {
+    return this.keyResultsAt(combination, x)[objectiveColumn(this.study.objective)]
+  }
+
   /**
    * The objective where every axis stands most favourably and no limit counts but those that cannot be met even so. Area
    * falls as the coolant flow, the subcooling and the saturation temperature rise, and rises with fouling. How a pitch
    * works is not known beforehand: the tightest has the fastest vapour, and its pressure drop is left out.
    */
   bound(combination: number): number | null {
-    if (!this.ownObjective) return Number.MIN_SAFE_INTEGER
+    if (!this.ownObjective) return this.boundOfGoal(combination)
     const { objective } = this.study
     if (!this.sizing || objective === 'pumpingPower') return 0
     this.load(combination)
@@ -166,7 +181,7 @@ export class StudyProblem implements Problem {
       if (least && key[column] > bound * (1 + 1e-9)) return null
       if (
         alone &&
-        (RESPONSE[id] === 0 || (axes.length === 0 && outcome === 0)) &&
+        ((id !== null && RESPONSE[id] === 0) || (axes.length === 0 && outcome === 0)) &&
         this.excess(column, side, bound) > 1e-9
       )
         return null
@@ -192,23 +207,45 @@ export class StudyProblem implements Problem {
     return this.solver.methods.inundation !== 'chen' && !this.solver.autoTubes
   }
 
-  private falls(): boolean {
-    const { objective } = this.study
-    return (
-      this.ownObjective &&
-      this.sizing &&
-      (objective === 'outsideArea' || objective === 'tubeMass') &&
-      this.movesFlow() &&
-      this.monotone()
-    )
+  /** Along the first axis, where it moves the flow and the duty is given. */
+  private falling(): Opened['falling'] {
+    if (this.worst || !this.sizing || !this.movesFlow() || !this.monotone()) return null
+    const way = this.goalResponse()
+    return way === null ? null : { signs: this.signs(), reversed: way > 0 }
+  }
+
+  /** How what is made least goes as the first axis rises. */
+  private goalResponse(): Sign {
+    if (this.ownObjective) return ['outsideArea', 'tubeMass'].includes(this.study.objective) ? -1 : null
+    const { column, most } = this.goal
+    const limit = LIMITS.find(({ result }) => keyResultColumn(result) === column)
+    const response = limit ? this.response(limit.id) : null
+    return response === null || !most ? response : ((-response || 0) as Sign)
+  }
+
+  private response(id: LimitId): Sign {
+    if (id === 'meanWallSubcooling' && this.space.axes[0].path === SUBCOOLING_AXIS) return 1
+    return RESPONSE[id] ?? null
   }
 
   private signs(): Sign[] {
-    const bySubcooling = this.space.axes[0].path === SUBCOOLING_AXIS
     return this.constraints.map(({ id, side }) => {
-      const response = id === 'meanWallSubcooling' && bySubcooling ? 1 : (RESPONSE[id] ?? null)
+      const response = id === null ? null : this.response(id)
       return response === null || side === 'max' ? response : ((-response || 0) as Sign)
     })
+  }
+
+  /** The goal where a single axis stands most favourably; without a bound where that is not known. */
+  private boundOfGoal(combination: number): number {
+    this.load(combination)
+    const [axis] = this.space.axes
+    const falling = this.space.axes.length === 1 ? this.falling() : null
+    if (falling === null) return Number.MIN_SAFE_INTEGER
+    this.solver.set(axis.path, falling.reversed ? axis.low : axis.high)
+    this.solve()
+    const value = this.key[this.goal.column]
+    if (!Number.isFinite(value)) return Number.MIN_SAFE_INTEGER
+    return this.goal.most ? -value : value
   }
 
   private solve(): number {
@@ -226,6 +263,7 @@ export class StudyProblem implements Problem {
     const excess = this.constraints.map(({ side, bound, column }) => this.excess(column, side, bound))
     // A wall that no coolant holds is a limit not met, even where no limit speaks of the coolant.
     if (outcome !== 0) excess.push(Number.POSITIVE_INFINITY)
+    if (this.worst) return { objective: Math.max(...excess), excess: [] }
     return { objective: goal.most ? -key[goal.column] : key[goal.column], excess }
   }
 
