@@ -66,11 +66,18 @@ const LEADERS = 3
 
 const place = (state: SearchState, k: number): number => (state.among === null ? k : state.among[k])
 
-export function beginSearch(combinations: number, among: number[] | null = null): SearchState {
-  return {
+/** `bounds`: of all combinations, from a search already made. */
+export function beginSearch(
+  combinations: number,
+  among: number[] | null = null,
+  bounds?: readonly (number | null)[],
+): SearchState {
+  const known = bounds?.length === combinations
+  const taken = !known ? [] : among === null ? [...bounds] : among.map((k) => bounds[k])
+  const state: SearchState = {
     stage: (among?.length ?? combinations) === 0 ? 'done' : 'bounds',
     among,
-    bounds: [],
+    bounds: taken,
     order: [],
     next: 0,
     waves: 0,
@@ -81,6 +88,21 @@ export function beginSearch(combinations: number, among: number[] | null = null)
     leaders: [],
     trace: [],
     spent: { evaluations: 0, rowMarches: 0 },
+  }
+  return known && state.stage === 'bounds' ? ordered(state) : state
+}
+
+/** Goes on from the bounds to the combinations, the least bound first. */
+function ordered(state: SearchState): SearchState {
+  const bound = (k: number) => state.bounds[k] as number
+  const order = Array.from(state.bounds, (_, k) => k).filter((k) => state.bounds[k] !== null)
+  order.sort((a, b) => bound(a) - bound(b) || a - b)
+  return {
+    ...state,
+    order,
+    infeasible: state.bounds.length - order.length,
+    next: 0,
+    stage: order.length === 0 ? 'done' : 'solve',
   }
 }
 
@@ -163,14 +185,7 @@ export function advance(problem: Problem, before: SearchState, results: readonly
         state.bounds.push(...bounds)
         state.next = task.first + task.count
       }
-    if (state.next < total) return state
-    const bound = (k: number) => state.bounds[k] as number
-    state.order = Array.from({ length: total }, (_, k) => k).filter((k) => state.bounds[k] !== null)
-    state.order.sort((a, b) => bound(a) - bound(b) || a - b)
-    state.infeasible = total - state.order.length
-    state.next = 0
-    state.stage = state.order.length === 0 ? 'done' : 'solve'
-    return state
+    return state.next < total ? state : ordered(state)
   }
   const fresh = inOrder.flatMap(({ task, found }) => {
     if (task.kind === 'bounds' || !found) return []
