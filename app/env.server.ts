@@ -42,6 +42,10 @@ export const env = {
   get MAIL_FROM(): string {
     return settings().MAIL_FROM
   },
+  /** The local mail catcher's folder; undefined where a mail server is given. */
+  get MAIL_CATCHER_FOLDER(): string | undefined {
+    return settings().MAIL_CATCHER_FOLDER
+  },
   /** Origin people open, without a trailing slash. */
   get BASE_URL(): string {
     return required('BASE_URL')

@@ -15,6 +15,8 @@ export default [
     route('projects', 'routes/projects/list.tsx'),
     route('projects/:projectId', 'routes/projects/project.tsx'),
     route('projects/:projectId/compare', 'routes/projects/compare.tsx'),
+    route('projects/:projectId/records/:recordId', 'routes/projects/record.tsx'),
+    route('projects/:projectId/history', 'routes/projects/history.tsx'),
 
     route('studies/:studyId', 'routes/studies/layout.tsx', [
       index('routes/studies/stage.ts'),
@@ -29,7 +31,17 @@ export default [
     route('library/fluids/:fluidId', 'routes/library/fluid.tsx'),
     route('library/methods/:methodId', 'routes/library/method.tsx'),
     route('library/validation', 'routes/library/validation.tsx'),
+
+    route('account', 'routes/account/account.tsx'),
+    route('notices', 'routes/account/notices.tsx'),
+    route('caught-mail', 'routes/account/caught-mail.tsx'),
+
+    layout('routes/admin/layout.tsx', [
+      route('admin/people', 'routes/admin/people.tsx'),
+      route('admin/audit', 'routes/admin/audit.tsx'),
+    ]),
   ]),
+  route('mail/stop/:token', 'routes/account/stop-mail.tsx'),
 
   // Resource routes: JSON and files, no page.
   route('studies/:studyId/preview', 'routes/studies/preview.ts'),
@@ -39,6 +51,9 @@ export default [
   route('runs/:runId/plot', 'routes/runs/plot.ts'),
   route('runs/:runId/workbook.xlsx', 'routes/runs/workbook.ts'),
   route('runs/:runId/points.csv', 'routes/runs/points-csv.ts'),
+  route('projects/:projectId/compare.csv', 'routes/projects/compare-csv.ts'),
+  route('studies/:studyId/views', 'routes/studies/views.ts'),
+  route('admin/audit.csv', 'routes/admin/audit-csv.ts'),
   route('api/v1/evaluate', 'routes/api/evaluate.ts'),
   route('api/v1/studies/check', 'routes/api/check-study.ts'),
 

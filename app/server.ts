@@ -7,6 +7,7 @@ import { pool } from '#app/db.server.ts'
 import { env, requireSettings } from '#app/env.server.ts'
 import { addressContext } from '#app/http/context.ts'
 import { FIXED_HEADERS } from '#app/http/security-headers.ts'
+import { sendDueMail } from '#app/modules/mail/outbox.server.ts'
 
 requireSettings('web')
 
@@ -49,8 +50,19 @@ const server = app.listen(env.PORT, env.HOST, (error?: Error) => {
 // Keep-alive connections that a proxy in front holds must outlive its own timeout.
 server.keepAliveTimeout = 65_000
 
+/** E-mail goes out within so long of what it tells of. */
+const MAIL_MS = 3000
+let sending = false
+const mail = setInterval(async () => {
+  if (sending) return
+  sending = true
+  await sendDueMail().catch((error) => console.warn(`E-mail could not be sent: ${error.message}`))
+  sending = false
+}, MAIL_MS)
+
 for (const signal of ['SIGTERM', 'SIGINT'] as const)
   process.once(signal, () => {
+    clearInterval(mail)
     server.close(async () => {
       await pool.end()
       process.exit(0)

@@ -21,6 +21,7 @@ const readProject: Rule = { can: 'study.read', scope: 'project' }
 const readStudy: Rule = { can: 'study.read', scope: 'study' }
 const editStudy: Rule = { can: 'study.edit', scope: 'study' }
 const runStudy: Rule = { can: 'study.run', scope: 'study' }
+const administer: Rule = { can: 'admin' }
 const readRun: Rule = { can: 'study.read', scope: 'run' }
 
 export const rules: Record<string, UrlRules> = {
@@ -34,13 +35,21 @@ export const rules: Record<string, UrlRules> = {
 
   '/projects': { loader: signedIn, action: { can: 'project.manage' } },
   '/projects/:projectId': { loader: readProject, action: { can: 'study.edit', scope: 'project' } },
-  '/projects/:projectId/compare': { loader: readProject },
+  // Whoever may read may also save comparisons and views, and comment; decisions are checked act by act.
+  '/projects/:projectId/compare': { loader: readProject, action: readProject },
+  '/projects/:projectId/compare.csv': { loader: readProject, resource: true },
+  '/projects/:projectId/records/:recordId': {
+    loader: readProject,
+    action: { can: 'study.accept', scope: 'project' },
+  },
+  '/projects/:projectId/history': { loader: readProject },
 
   '/studies/:studyId': { loader: readStudy },
   '/studies/:studyId/define': { loader: readStudy, action: editStudy },
   '/studies/:studyId/run': { loader: readStudy, action: runStudy },
   '/studies/:studyId/explore': { loader: readStudy },
-  '/studies/:studyId/decide': { loader: readStudy },
+  '/studies/:studyId/decide': { loader: readStudy, action: readStudy },
+  '/studies/:studyId/views': { action: readStudy, resource: true },
   '/studies/:studyId/points/:point': { loader: readStudy },
   '/studies/:studyId/preview': { action: editStudy, resource: true },
   '/studies/:studyId/study.json': { loader: readStudy, resource: true },
@@ -55,6 +64,16 @@ export const rules: Record<string, UrlRules> = {
   '/library/fluids/:fluidId': { loader: signedIn },
   '/library/methods/:methodId': { loader: signedIn },
   '/library/validation': { loader: signedIn },
+
+  '/account': { loader: signedIn, action: signedIn },
+  '/notices': { loader: signedIn, action: signedIn },
+  '/caught-mail': { loader: signedIn },
+  // The link in an e-mail carries its own right, for one kind of e-mail of one person.
+  '/mail/stop/:token': { loader: 'anyone', action: 'anyone' },
+
+  '/admin/people': { loader: administer, action: administer },
+  '/admin/audit': { loader: administer },
+  '/admin/audit.csv': { loader: administer, resource: true },
 
   '/api/v1/evaluate': { action: signedIn, resource: true },
   '/api/v1/studies/check': { action: signedIn, resource: true },

@@ -3,16 +3,29 @@ import { useEffect, useRef } from 'react'
 import { Outlet, useLocation } from 'react-router'
 import { ErrorPage, explain } from '#app/components/shell/error-page.tsx'
 import { Header } from '#app/components/shell/header.tsx'
+import { env } from '#app/env.server.ts'
 import { viewerContext } from '#app/http/context.ts'
+import { can } from '#app/http/permissions.ts'
+import { unreadNotices } from '#app/modules/notices/notices.server.ts'
 import type { Route } from './+types/shell'
 
 export const meta: Route.MetaFunction = ({ error }) => [
   { title: error ? `${explain(error).title} · Rowfall` : 'Rowfall' },
 ]
 
-export function loader({ context }: Route.LoaderArgs) {
-  const { name, email, role, theme } = context.get(viewerContext)
-  return { person: { name, email, role, theme } }
+export async function loader({ context }: Route.LoaderArgs) {
+  const { personId, name, email, role, theme } = context.get(viewerContext)
+  return {
+    person: {
+      name,
+      email,
+      role,
+      theme,
+      administers: can(role, 'admin'),
+      unread: await unreadNotices(personId),
+      caughtMail: env.MAIL_CATCHER_FOLDER !== undefined,
+    },
+  }
 }
 
 /** After moving to another page the reader starts at its headline, as after a full load. */

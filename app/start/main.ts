@@ -159,9 +159,14 @@ async function main(): Promise<void> {
   }
   if (!settings.SMTP_URL) {
     const { startMailCatcher } = await import('./mail-catcher.ts')
-    const catcher = await startMailCatcher({ port: await firstFreePort(2525), folder: join(data, 'mail') })
+    const folder = join(data, 'mail')
+    const catcher = await startMailCatcher({ port: await firstFreePort(2525), folder })
     endings.push({ what: 'Mail catcher', end: catcher.stop })
-    Object.assign(env, { SMTP_URL: catcher.url, MAIL_FROM: settings.MAIL_FROM })
+    Object.assign(env, {
+      SMTP_URL: catcher.url,
+      MAIL_FROM: settings.MAIL_FROM,
+      MAIL_CATCHER_FOLDER: folder,
+    })
   }
 
   if (settings.LOCAL_DEMO) {

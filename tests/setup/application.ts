@@ -55,6 +55,7 @@ export default async function setup(project: TestProject) {
     ROLE_GROUPS: DEMO_ROLE_GROUPS,
     SMTP_URL: mail.url,
     MAIL_FROM: 'Rowfall <rowfall@example.com>',
+    MAIL_CATCHER_FOLDER: join(folder, 'mail'),
     // vitest's own settings are not the application's.
     VITEST: '',
     NODE_OPTIONS: '',

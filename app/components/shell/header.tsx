@@ -10,7 +10,17 @@ import { Mark } from './mark.tsx'
 
 export type Theme = 'system' | 'light' | 'dark'
 
-export type HeaderPerson = { name: string; email: string; role: string; theme: Theme }
+export type HeaderPerson = {
+  name: string
+  email: string
+  role: string
+  theme: Theme
+  administers: boolean
+  /** Notices not read yet. */
+  unread: number
+  /** A local catcher takes the e-mail. */
+  caughtMail: boolean
+}
 
 export function Header({ person }: { person: HeaderPerson }) {
   const crumbs = useCrumbs()
@@ -49,7 +59,20 @@ export function Header({ person }: { person: HeaderPerson }) {
           >
             Library
           </NavLink>
+          {person.administers ? (
+            <NavLink
+              to="/admin/people"
+              className="rounded-md px-2 py-1 hover:text-verdigris-ink aria-[current]:text-verdigris-ink max-lg:hidden"
+            >
+              Administration
+            </NavLink>
+          ) : null}
         </nav>
+        {person.unread > 0 ? (
+          <Link to="/notices" className="link font-semibold max-sm:hidden">
+            {person.unread === 1 ? '1 new notice' : `${person.unread} new notices`}
+          </Link>
+        ) : null}
         <UnitsSwitch />
         <PersonMenu person={person} />
       </div>
@@ -120,13 +143,29 @@ function PersonMenu({ person }: { person: HeaderPerson }) {
             <Tag tone="sound">{role}</Tag>
           </p>
         </div>
-        <div className="grid border-y border-line py-2 sm:hidden">
-          <Link to="/projects" className="menu-item" data-closes>
+        <div className="grid border-y border-line py-2">
+          <Link to="/projects" className="menu-item sm:hidden" data-closes>
             Projects
           </Link>
-          <Link to="/library" className="menu-item" data-closes>
+          <Link to="/library" className="menu-item sm:hidden" data-closes>
             Library
           </Link>
+          <Link to="/notices" className="menu-item" data-closes>
+            Notices{person.unread > 0 ? ` (${person.unread} new)` : ''}
+          </Link>
+          <Link to="/account" className="menu-item" data-closes>
+            Your account
+          </Link>
+          {person.administers ? (
+            <Link to="/admin/people" className="menu-item" data-closes>
+              Administration
+            </Link>
+          ) : null}
+          {person.caughtMail ? (
+            <Link to="/caught-mail" className="menu-item" data-closes>
+              Caught e-mail
+            </Link>
+          ) : null}
         </div>
         <div>
           <p className="mb-1 text-note font-semibold">Theme</p>

@@ -53,6 +53,11 @@ export async function personOfIdentity(
   return made
 }
 
+export async function getPerson(personId: string): Promise<Person> {
+  const [found] = await db.select().from(person).where(eq(person.id, personId))
+  return found
+}
+
 export type Preferences = {
   units?: Units
   theme?: Theme

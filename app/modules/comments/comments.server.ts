@@ -139,6 +139,6 @@ async function subjectOf(tx: Pick<typeof db, 'select'>, subject: Subject, projec
   const href =
     'studyId' in subject
       ? `/studies/${subject.studyId}/decide`
-      : `/projects/${projectId}/comparisons/${subject.comparisonId}`
+      : `/projects/${projectId}/compare?saved=${subject.comparisonId}`
   return { name: found.name, href }
 }

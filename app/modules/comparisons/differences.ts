@@ -16,6 +16,10 @@ export function comparedRows(points: readonly EntryGroup[][]): ComparedRow[] {
   })
 }
 
+/** The drive's fields stand in one group, whichever of the two drives a study has. */
+export const drivesAsOne = (groups: EntryGroup[]): EntryGroup[] =>
+  groups.map((group) => (/ given$/.test(group.title) ? { ...group, title: 'Drive' } : group))
+
 function sameValue(a: Entry | null, b: Entry | null): boolean {
   if (a === null || b === null) return a === b
   if ('text' in a || 'text' in b) return 'text' in a && 'text' in b && a.text === b.text

@@ -1,32 +1,47 @@
 // Up to six studies side by side: their candidates, the inputs in which they differ, limits and fronts.
 import type { ReactNode } from 'react'
-import { Form, Link } from 'react-router'
+import { data, Form, Link, redirect } from 'react-router'
 import { BundleThumbnail } from '#app/components/bundle-drawing/bundle-drawing.tsx'
 import { bundleGeometry } from '#app/components/bundle-drawing/layout.ts'
 import { LineChart } from '#app/components/charts/line-chart.tsx'
 import { Given } from '#app/components/sheet/entries.tsx'
 import { LimitBounds } from '#app/components/sheet/limit-notes.tsx'
 import { Said } from '#app/components/sheet/said.tsx'
+import { Comments } from '#app/components/study/comments.tsx'
 import { PointsDone, RunStateTag } from '#app/components/study/run-state.tsx'
-import { Button } from '#app/components/ui/button.tsx'
+import { Button, DownloadLink } from '#app/components/ui/button.tsx'
+import { TextField } from '#app/components/ui/field.tsx'
 import { MarginNote } from '#app/components/ui/margin-note.tsx'
 import { Digits, Quantity, useUnits } from '#app/components/ui/number.tsx'
 import { EmptyState, PageHead, PlainPage, Scroll, Sheet } from '#app/components/ui/page.tsx'
 import { Tag } from '#app/components/ui/tag.tsx'
-import { projectContext } from '#app/http/context.ts'
+import { useFaultFocus } from '#app/components/ui/use-fault-focus.ts'
+import { When } from '#app/components/ui/when.tsx'
+import { readForm } from '#app/http/body.ts'
+import { projectContext, viewerContext } from '#app/http/context.ts'
+import { AppError, failureOf } from '#app/http/errors.ts'
+import { addComment, listComments, withdrawComment } from '#app/modules/comments/comments.server.ts'
 import { chosenOf } from '#app/modules/comparisons/chosen.ts'
 import {
   comparedStudies,
   MOST_COMPARED,
   type RunCandidate,
 } from '#app/modules/comparisons/comparison.server.ts'
-import { type ComparedRow, comparedRows } from '#app/modules/comparisons/differences.ts'
+import { type ComparedRow, comparedRows, drivesAsOne } from '#app/modules/comparisons/differences.ts'
+import {
+  deleteComparison,
+  getComparison,
+  listComparisons,
+  saveComparison,
+} from '#app/modules/comparisons/saved.server.ts'
 import { keyResultOf, limitStandings } from '#app/modules/explore/limits.ts'
-import { type Entry, type EntryGroup, sheetInputs, sheetResults } from '#app/modules/explore/sheet.ts'
+import { type Entry, sheetInputs, sheetResults } from '#app/modules/explore/sheet.ts'
+import { listMembers } from '#app/modules/projects/projects.server.ts'
 import { listStudies } from '#app/modules/studies/studies.server.ts'
 import { LIMITS } from '#engine/sweep/limits.ts'
 import { OBJECTIVE_LABELS } from '#engine/sweep/objective.ts'
 import { displayUnit, formatQuantity, toDisplay, type UnitSystem } from '#engine/units.ts'
+import { actingOf } from '../acting.ts'
 import type { Route } from './+types/compare'
 
 export const meta: Route.MetaFunction = () => [{ title: 'Compare studies · Rowfall' }]
@@ -39,12 +54,20 @@ export const handle = {
 }
 
 export async function loader({ params, request, context }: Route.LoaderArgs) {
-  const chosen = new URL(request.url).searchParams.getAll('study')
-  const [compared, listed] = await Promise.all([
-    comparedStudies(params.projectId, chosen),
-    listStudies(params.projectId),
-  ])
+  const search = new URL(request.url).searchParams
   const { projectId, projectName } = context.get(projectContext)
+  const { personId } = context.get(viewerContext)
+  const savedId = search.get('saved')
+  const saved = savedId === null ? null : await getComparison(projectId, savedId)
+  const asked = search.has('study') || saved === null ? search : new URLSearchParams(saved.query)
+  const chosen = asked.getAll('study')
+  const [compared, listed, comparisons, members, comments] = await Promise.all([
+    comparedStudies(projectId, chosen),
+    listStudies(projectId),
+    listComparisons(projectId),
+    listMembers(projectId),
+    saved ? listComments({ comparisonId: saved.id }, projectId) : [],
+  ])
   return {
     project: { id: projectId, name: projectName },
     most: MOST_COMPARED,
@@ -52,13 +75,57 @@ export async function loader({ params, request, context }: Route.LoaderArgs) {
       .filter(({ run }) => run)
       .map(({ id, name }) => ({ id, name, chosen: chosen.includes(id) })),
     compared,
+    comparisons,
+    saved: saved && { id: saved.id, name: saved.name, own: saved.createdBy === personId },
+    query: new URLSearchParams(chosen.map((id) => ['study', id])).toString(),
+    comments,
+    members: members.map(({ id, name }) => ({ id, name })),
+    viewerId: personId,
+  }
+}
+
+export async function action({ request, params, context }: Route.ActionArgs) {
+  const { projectId } = params
+  const acting = actingOf(context)
+  const form = await readForm(request)
+  const text = (name: string) => String(form.get(name) ?? '')
+  const saved = new URL(request.url).searchParams.get('saved')
+  const intent = text('intent')
+  try {
+    switch (intent) {
+      case 'save': {
+        const made = await saveComparison(projectId, text('name'), text('query'), acting)
+        return redirect(`/projects/${projectId}/compare?saved=${made.id}`)
+      }
+      case 'delete': {
+        const found = await getComparison(projectId, text('comparison'))
+        if (found.createdBy !== acting.personId)
+          throw new AppError('forbidden', 'Only who saved a comparison can delete it.')
+        await deleteComparison(projectId, found.id, acting)
+        return redirect(`/projects/${projectId}/compare`)
+      }
+      case 'comment':
+      case 'withdrawComment': {
+        const { id } = await getComparison(projectId, saved ?? '')
+        if (intent === 'comment') await addComment({ comparisonId: id }, projectId, text('body'), acting)
+        else await withdrawComment(text('comment'), projectId, acting)
+        return null
+      }
+      default:
+        throw new AppError('bad-request', 'This page does not know that act; reload it and try again.')
+    }
+  } catch (error) {
+    const failure = failureOf(error)
+    if (failure?.code !== 'invalid' && failure?.code !== 'conflict') throw error
+    return data({ intent, fault: failure.message, typed: text('name').slice(0, 200) }, 400)
   }
 }
 
 type Compared = Extract<Route.ComponentProps['loaderData']['compared'][number], { objective: unknown }>
 
-export default function Compare({ loaderData }: Route.ComponentProps) {
-  const { compared, listed, most } = loaderData
+export default function Compare({ loaderData, actionData }: Route.ComponentProps) {
+  const { compared, listed, most, saved, comparisons, project, query } = loaderData
+  const refused = actionData && 'fault' in actionData ? actionData : null
   const units = useUnits()
   const studies = compared.filter((study): study is Compared => study.run !== null)
   const without = compared.filter((study) => study.run === null)
@@ -78,11 +145,21 @@ export default function Compare({ loaderData }: Route.ComponentProps) {
             <Choice listed={listed} />
           </Sheet>
         )}
+        <SavedComparisons comparisons={comparisons} projectId={project.id} />
       </PlainPage>
     )
   return (
     <PlainPage>
-      <PageHead title={<Said>{headline(studies, units)}</Said>} reason={reasonOf(studies)} />
+      <PageHead
+        over={saved?.name}
+        title={<Said>{headline(studies, units)}</Said>}
+        reason={reasonOf(studies)}
+        acts={
+          <DownloadLink href={`/projects/${project.id}/compare.csv?${query}`} download>
+            As CSV
+          </DownloadLink>
+        }
+      />
       {without.map(({ id, name }) => (
         <MarginNote key={id} tone="attention" title={`${name} has no points yet.`}>
           Run it to set it beside the others.
@@ -90,6 +167,15 @@ export default function Compare({ loaderData }: Route.ComponentProps) {
       ))}
       <SideBySide studies={studies} />
       <Fronts studies={studies} />
+      {saved ? (
+        <Comments
+          comments={loaderData.comments}
+          members={loaderData.members}
+          viewerId={loaderData.viewerId}
+        />
+      ) : null}
+      <Keeping saved={saved} query={query} refused={refused} />
+      <SavedComparisons comparisons={comparisons} projectId={project.id} />
       <details className="screen-only">
         <summary className="list-inside font-semibold text-verdigris-ink">Choose other studies</summary>
         <Sheet className="mt-3">
@@ -97,6 +183,72 @@ export default function Compare({ loaderData }: Route.ComponentProps) {
         </Sheet>
       </details>
     </PlainPage>
+  )
+}
+
+type Data = Route.ComponentProps['loaderData']
+
+/** Gives the comparison a name, under which every member finds it and can comment; or takes it away again. */
+function Keeping({
+  saved,
+  query,
+  refused,
+}: Pick<Data, 'saved' | 'query'> & { refused: { fault: string; typed: string } | null }) {
+  const form = useFaultFocus(refused)
+  if (saved)
+    return saved.own ? (
+      <Form method="post" className="screen-only">
+        <input type="hidden" name="comparison" value={saved.id} />
+        <Button type="submit" name="intent" value="delete" small>
+          Delete “{saved.name}” and its comments
+        </Button>
+      </Form>
+    ) : null
+  return (
+    <Sheet title="Save this comparison" className="screen-only max-w-3xl">
+      <Form method="post" ref={form} className="flex flex-wrap items-start gap-3">
+        <input type="hidden" name="query" value={query} />
+        <TextField
+          label="Name"
+          name="name"
+          required
+          maxLength={120}
+          className="grow basis-60"
+          defaultValue={refused?.typed}
+          fault={refused?.fault}
+          hint="Members of the project find it by this name, and can comment on it."
+        />
+        <Button type="submit" name="intent" value="save" className="mt-6">
+          Save
+        </Button>
+      </Form>
+    </Sheet>
+  )
+}
+
+function SavedComparisons({
+  comparisons,
+  projectId,
+}: {
+  comparisons: Data['comparisons']
+  projectId: string
+}) {
+  if (comparisons.length === 0) return null
+  return (
+    <Sheet title="Saved comparisons" className="screen-only max-w-3xl">
+      <ul className="grid gap-1">
+        {comparisons.map(({ id, name, createdBy, createdAt }) => (
+          <li key={id}>
+            <Link to={`/projects/${projectId}/compare?saved=${id}`} className="link font-semibold">
+              {name}
+            </Link>{' '}
+            <span className="text-note text-soft">
+              {createdBy}, <When at={createdAt} />
+            </span>
+          </li>
+        ))}
+      </ul>
+    </Sheet>
   )
 }
 
@@ -165,15 +317,11 @@ function reasonOf(studies: Compared[]): string {
     : 'All have the same duty; their limits differ.'
 }
 
-/** The drive's fields stand in one group, whichever of the two drives a study has. */
-const oneDrive = (groups: EntryGroup[]): EntryGroup[] =>
-  groups.map((group) => (/ given$/.test(group.title) ? { ...group, title: 'Drive' } : group))
-
 function SideBySide({ studies }: { studies: Compared[] }) {
   const units = useUnits()
   const points = studies.map(chosenOf)
   const inputs = comparedRows(
-    points.map((point) => (point ? oneDrive(sheetInputs(point.case, point.names, units)) : [])),
+    points.map((point) => (point ? drivesAsOne(sheetInputs(point.case, point.names, units)) : [])),
   )
   const results = comparedRows(points.map((point) => (point ? sheetResults(point.case, point.result) : [])))
   const differing = inputs.filter(({ same }) => !same)

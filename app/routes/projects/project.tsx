@@ -3,9 +3,10 @@ import { useEffect } from 'react'
 import { Form, Link, useFetcher, useNavigation, useSubmit } from 'react-router'
 import { ObjectiveValue } from '#app/components/study/objective-value.tsx'
 import { PointsDone, RunStateTag } from '#app/components/study/run-state.tsx'
-import { Button, StatusButton } from '#app/components/ui/button.tsx'
+import { Button, LinkButton, StatusButton } from '#app/components/ui/button.tsx'
 import { Disclosure } from '#app/components/ui/disclosure.tsx'
 import { TextField } from '#app/components/ui/field.tsx'
+import { Quantity } from '#app/components/ui/number.tsx'
 import { plural } from '#app/components/ui/number-format.ts'
 import { EmptyState, PageHead, PlainPage, Sheet } from '#app/components/ui/page.tsx'
 import { Tag } from '#app/components/ui/tag.tsx'
@@ -16,6 +17,8 @@ import { readForm } from '#app/http/body.ts'
 import { viewerContext } from '#app/http/context.ts'
 import { can } from '#app/http/permissions.ts'
 import { getProject, listMembers } from '#app/modules/projects/projects.server.ts'
+import { baselineOf, listRecords } from '#app/modules/reviews/records.server.ts'
+import { openReviews } from '#app/modules/reviews/reviews.server.ts'
 import { runStandings } from '#app/modules/runs/standing.server.ts'
 import { listStudies } from '#app/modules/studies/studies.server.ts'
 import { actingOf } from '../acting.ts'
@@ -43,6 +46,11 @@ export async function loader({ params, request, context }: Route.LoaderArgs) {
     listMembers(params.projectId),
     listStudies(params.projectId, { search, archived }),
   ])
+  const [records, baseline, reviews] = await Promise.all([
+    listRecords(params.projectId),
+    baselineOf(params.projectId),
+    openReviews(params.projectId),
+  ])
   const standings = await runStandings(studies.flatMap(({ run }) => run?.id ?? []))
   return {
     project: {
@@ -63,6 +71,12 @@ export async function loader({ params, request, context }: Route.LoaderArgs) {
       changedAt: changedAt.toISOString(),
       run: run && { state: run.state, points: run.points, ...standings.get(run.id) },
     })),
+    records: records.map(({ acceptedAt, ...record }) => ({
+      ...record,
+      acceptedAt: acceptedAt.toISOString(),
+      isBaseline: record.id === baseline?.id,
+    })),
+    reviews,
     search,
     archived,
     examples,
@@ -104,13 +118,19 @@ export default function Project({ loaderData, actionData }: Route.ComponentProps
         }
         reason={project.description || null}
         acts={
-          studies.filter(({ run }) => run).length > 1 ? (
-            <Button type="submit" form={COMPARE_FORM}>
-              Compare the chosen
-            </Button>
-          ) : null
+          <>
+            {studies.filter(({ run }) => run).length > 1 ? (
+              <Button type="submit" form={COMPARE_FORM}>
+                Compare the chosen
+              </Button>
+            ) : null}
+            <LinkButton to={`/projects/${project.id}/history`} look="quiet">
+              History
+            </LinkButton>
+          </>
         }
       />
+      <OpenReviews reviews={loaderData.reviews} />
       {nothing ? (
         <EmptyState title={mayEdit ? 'Begin with an example' : 'Studies will stand here'}>
           {mayEdit
@@ -121,6 +141,7 @@ export default function Project({ loaderData, actionData }: Route.ComponentProps
         <StudyList {...{ studies, search, archived, mayEdit, refused }} projectId={project.id} />
       )}
       {mayEdit && !archived ? <NewStudy examples={examples} refused={refused} open={nothing} /> : null}
+      <Records records={loaderData.records} projectId={project.id} />
       <Members {...{ members, mayManage, refused }} viewerId={loaderData.viewerId} />
     </PlainPage>
   )
@@ -130,6 +151,53 @@ function finishedText(finished: number, all: number): string {
   if (finished === 0) return ', none finished yet'
   if (finished === all) return all === 1 ? ', finished' : ', all finished'
   return `, ${finished} finished`
+}
+
+function OpenReviews({ reviews }: Pick<Data, 'reviews'>) {
+  if (reviews.length === 0) return null
+  return (
+    <ul className="grid gap-2" aria-label="Open reviews">
+      {reviews.map((review) => (
+        <li key={review.id} className="flex flex-wrap items-baseline gap-2">
+          <Tag tone="attention">review asked</Tag>
+          <span>
+            {review.askedByName} puts{' '}
+            <Link to={`/studies/${review.studyId}/decide`} className="link font-semibold">
+              {review.studyName}
+            </Link>{' '}
+            forward, <When at={review.askedAt} />.
+          </span>
+        </li>
+      ))}
+    </ul>
+  )
+}
+
+/** What was accepted, and which of it later studies are measured against. */
+function Records({ records, projectId }: Pick<Data, 'records'> & { projectId: string }) {
+  if (records.length === 0) return null
+  return (
+    <Sheet title={`${records.length} accepted ${plural(records.length, 'record')}`}>
+      <ul className="divide-y divide-line">
+        {records.map((record) => (
+          <li key={record.id} className="flex flex-wrap items-baseline gap-x-3 gap-y-1 py-2">
+            <Link to={`/projects/${projectId}/records/${record.id}`} className="link font-semibold">
+              Record {record.number}: {record.studyName}
+            </Link>
+            {record.area === null ? null : (
+              <span className="font-semibold">
+                <Quantity value={record.area} dimension="area" digits={4} />
+              </span>
+            )}
+            {record.isBaseline ? <Tag tone="sound">baseline</Tag> : null}
+            <span className="text-note text-soft">
+              accepted by {record.acceptedBy}, <When at={record.acceptedAt} />
+            </span>
+          </li>
+        ))}
+      </ul>
+    </Sheet>
+  )
 }
 
 function useToldAndUndo(answer: Route.ComponentProps['actionData']) {

@@ -1,23 +1,42 @@
-// Decide: the candidate of the latest run, what speaks for caution, other studies to set beside it, and what to hand on.
-import { Form, Link } from 'react-router'
+// Decide: the candidate of the latest run, what speaks for caution, its review, other studies to set beside it, and
+// what to hand on.
+import { data, Form, Link, redirect } from 'react-router'
 import { BundleDrawing } from '#app/components/bundle-drawing/bundle-drawing.tsx'
 import { bundleGeometry } from '#app/components/bundle-drawing/layout.ts'
 import { LimitNotes } from '#app/components/sheet/limit-notes.tsx'
 import { Said } from '#app/components/sheet/said.tsx'
+import { Comments } from '#app/components/study/comments.tsx'
 import { Button, DownloadLink, LinkButton } from '#app/components/ui/button.tsx'
 import { MarginNote, NoteList } from '#app/components/ui/margin-note.tsx'
 import { Digits, Quantity, useUnits } from '#app/components/ui/number.tsx'
 import { EmptyState, MarginPage, PageHead, PlainPage, Scroll, Sheet } from '#app/components/ui/page.tsx'
-import { projectContext } from '#app/http/context.ts'
+import { readForm } from '#app/http/body.ts'
+import { projectContext, viewerContext } from '#app/http/context.ts'
+import { AppError, failureOf } from '#app/http/errors.ts'
+import { can, type Permission } from '#app/http/permissions.ts'
+import { addComment, listComments, withdrawComment } from '#app/modules/comments/comments.server.ts'
 import { chosenOf } from '#app/modules/comparisons/chosen.ts'
 import { candidateOf, MOST_COMPARED, type RunCandidate } from '#app/modules/comparisons/comparison.server.ts'
 import { describeCase } from '#app/modules/explore/case-words.ts'
 import { keyResultOf, limitStandings } from '#app/modules/explore/limits.ts'
+import { listMembers } from '#app/modules/projects/projects.server.ts'
+import { baselineOf } from '#app/modules/reviews/records.server.ts'
+import {
+  acceptReview,
+  askReview,
+  readPoint,
+  returnReview,
+  reviewsOfStudy,
+  withdrawReview,
+} from '#app/modules/reviews/reviews.server.ts'
 import { listStudies } from '#app/modules/studies/studies.server.ts'
 import { NOTE_LABELS } from '#engine/notes.ts'
 import { OBJECTIVE_LABELS } from '#engine/sweep/objective.ts'
 import { formatQuantity } from '#engine/units.ts'
+import { actingOf } from '../acting.ts'
 import type { Route } from './+types/decide'
+import { AgainstBaseline } from './decide/against-baseline.tsx'
+import { ReviewSheet } from './decide/review-sheet.tsx'
 import { PointFigures } from './explore/figures.tsx'
 import { SafetyNote } from './explore/point-margin.tsx'
 
@@ -25,10 +44,34 @@ export const meta: Route.MetaFunction = () => [{ title: 'Decide · Rowfall' }]
 
 export async function loader({ params, context }: Route.LoaderArgs) {
   const { projectId } = context.get(projectContext)
-  const [candidate, studies] = await Promise.all([candidateOf(params.studyId), listStudies(projectId)])
+  const viewer = context.get(viewerContext)
+  const [candidate, studies, reviews, comments, members, baseline] = await Promise.all([
+    candidateOf(params.studyId),
+    listStudies(projectId),
+    reviewsOfStudy(params.studyId),
+    listComments({ studyId: params.studyId }, projectId),
+    listMembers(projectId),
+    baselineOf(projectId),
+  ])
   return {
     projectId,
     candidate,
+    reviews,
+    comments,
+    members: members.map(({ id, name }) => ({ id, name })),
+    viewer: {
+      id: viewer.personId,
+      mayAsk: can(viewer.role, 'study.edit'),
+      mayDecide: can(viewer.role, 'study.accept'),
+    },
+    baseline: baseline && {
+      id: baseline.id,
+      number: baseline.number,
+      studyName: baseline.studyName,
+      own: baseline.studyId === params.studyId,
+      result: baseline.content.result,
+      objective: baseline.content.objective,
+    },
     most: MOST_COMPARED,
     others: studies
       .filter(({ id, run }) => run && id !== params.studyId)
@@ -36,7 +79,58 @@ export async function loader({ params, context }: Route.LoaderArgs) {
   }
 }
 
-export default function Decide({ loaderData, params }: Route.ComponentProps) {
+export async function action({ request, params, context }: Route.ActionArgs) {
+  const { studyId } = params
+  const { projectId } = context.get(projectContext)
+  const { role } = context.get(viewerContext)
+  const acting = actingOf(context)
+  const form = await readForm(request)
+  const text = (name: string) => String(form.get(name) ?? '')
+  const require = (permission: Permission) => {
+    if (!can(role, permission))
+      throw new AppError('forbidden', `Your role, ${role}, does not include this; ask a lead of the project.`)
+  }
+  const intent = text('intent')
+  try {
+    switch (intent) {
+      case 'ask':
+        require('study.edit')
+        await askReview(
+          studyId,
+          { runId: text('run'), point: readPoint(text('point')), note: text('note') },
+          acting,
+        )
+        return null
+      case 'withdraw':
+        require('study.edit')
+        await withdrawReview(studyId, acting)
+        return null
+      case 'return':
+        require('study.accept')
+        await returnReview(studyId, text('reason'), acting)
+        return null
+      case 'accept':
+        require('study.accept')
+        return redirect(
+          `/projects/${projectId}/records/${await acceptReview(studyId, text('reason'), acting)}`,
+        )
+      case 'comment':
+        await addComment({ studyId }, projectId, text('body'), acting)
+        return null
+      case 'withdrawComment':
+        await withdrawComment(text('comment'), projectId, acting)
+        return null
+      default:
+        throw new AppError('bad-request', 'This page does not know that act; reload it and try again.')
+    }
+  } catch (error) {
+    const failure = failureOf(error)
+    if (failure?.code !== 'invalid' && failure?.code !== 'conflict') throw error
+    return data({ intent, fault: failure.message, typed: text('reason') || text('note') }, 400)
+  }
+}
+
+export default function Decide({ loaderData, actionData, params }: Route.ComponentProps) {
   const { candidate } = loaderData
   return candidate.run === null ? (
     <PlainPage>
@@ -54,22 +148,31 @@ export default function Decide({ loaderData, params }: Route.ComponentProps) {
       </EmptyState>
     </PlainPage>
   ) : (
-    <DecideOnRun {...loaderData} candidate={candidate as RunCandidate} />
+    <DecideOnRun
+      {...loaderData}
+      candidate={candidate as RunCandidate}
+      refused={actionData && 'fault' in actionData ? actionData : null}
+    />
   )
 }
 
-type Others = Route.ComponentProps['loaderData']['others']
+type Data = Route.ComponentProps['loaderData']
+type Others = Data['others']
 
 function DecideOnRun({
   candidate,
   others,
   projectId,
   most,
-}: {
+  reviews,
+  comments,
+  members,
+  viewer,
+  baseline,
+  refused,
+}: Omit<Data, 'candidate'> & {
   candidate: RunCandidate
-  others: Others
-  projectId: string
-  most: number
+  refused: { intent: string; fault: string; typed: string } | null
 }) {
   const units = useUnits()
   const { best, refined, run, limits, objective } = candidate
@@ -192,6 +295,30 @@ function DecideOnRun({
           </Scroll>
         </Sheet>
       ) : null}
+      {chosen && baseline ? (
+        <AgainstBaseline baseline={baseline} projectId={projectId} result={chosen.result} />
+      ) : null}
+      <ReviewSheet
+        reviews={reviews}
+        viewer={viewer}
+        projectId={projectId}
+        refused={refused}
+        ready={
+          run.state === 'done'
+            ? {
+                runId: run.id,
+                points: [
+                  ...(refined ? [{ value: 'refined', label: 'the refined point' }] : []),
+                  ...(best
+                    ? [{ value: String(best.point), label: `point ${best.point}, best of the sweep` }]
+                    : []),
+                ],
+                chosen: String(chosen?.point ?? ''),
+              }
+            : null
+        }
+      />
+      <Comments comments={comments} members={members} viewerId={viewer.id} />
       <Beside {...{ candidate, others, projectId, most }} />
       <Sheet title="Hand on">
         <p className="mb-3 max-w-[70ch] text-soft">
