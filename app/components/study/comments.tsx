@@ -49,7 +49,7 @@ export function Comments({
               id={`comment-${comment.id}`}
               className="max-w-[75ch] target:bg-verdigris-wash"
             >
-              <p className="text-note text-soft">
+              <div className="text-note text-soft">
                 <span className="font-semibold text-ink">{comment.name}</span> <When at={comment.writtenAt} />
                 {comment.pieces !== null && comment.writtenBy === viewerId ? (
                   <fetcher.Form method="post" className="ms-2 inline">
@@ -59,7 +59,7 @@ export function Comments({
                     </button>
                   </fetcher.Form>
                 ) : null}
-              </p>
+              </div>
               {comment.pieces === null ? (
                 <p className="text-soft italic">withdrawn</p>
               ) : (
