@@ -4,7 +4,6 @@ import {
   check,
   customType,
   index,
-  integer,
   jsonb,
   pgTable,
   text,
@@ -22,6 +21,8 @@ export type AnalysisKind = (typeof ANALYSIS_KINDS)[number]
 export const ANALYSIS_STATES = ['queued', 'running', 'done', 'cancelled', 'failed'] as const
 export type AnalysisState = (typeof ANALYSIS_STATES)[number]
 
+export type AnalysisProgress = { stage: string; done: number; of: number }
+
 export const analysis = pgTable(
   'analysis',
   {
@@ -38,7 +39,9 @@ export const analysis = pgTable(
     request: jsonb('request').$type<Record<string, unknown>>().notNull().default({}),
     engineVersion: text('engine_version').notNull(),
     state: text('state', { enum: ANALYSIS_STATES }).notNull().default('queued'),
-    parts: integer('parts').notNull(),
+    // Where it stands, for people, and from where a worker goes on that takes it over.
+    progress: jsonb('progress').$type<AnalysisProgress>(),
+    checkpoint: jsonb('checkpoint').$type<Record<string, unknown>>(),
     result: jsonb('result').$type<Record<string, unknown>>(),
     fault: text('fault'),
     requestedBy: uuid('requested_by').references(() => person.id),
@@ -50,20 +53,6 @@ export const analysis = pgTable(
     index('analysis_study').on(t.studyId, t.askedAt),
     check('analysis_state', sql`${t.state} in ('queued', 'running', 'done', 'cancelled', 'failed')`),
   ],
-)
-
-/** One part of an analysis, done once whoever does it; a resumed analysis goes on from what stands here. */
-export const analysisPart = pgTable(
-  'analysis_part',
-  {
-    analysisId: uuid('analysis_id')
-      .notNull()
-      .references(() => analysis.id, { onDelete: 'cascade' }),
-    part: integer('part').notNull(),
-    result: jsonb('result').$type<Record<string, unknown>>().notNull(),
-    storedAt: moment('stored_at').notNull().defaultNow(),
-  },
-  (t) => [uniqueIndex('analysis_part_once').on(t.analysisId, t.part)],
 )
 
 const bytea = customType<{ data: Buffer }>({ dataType: () => 'bytea' })
