@@ -5,7 +5,7 @@ import { evaluateRange } from '#engine/sweep/evaluate-range.ts'
 import { objectiveColumn } from '#engine/sweep/objective.ts'
 import { latinHypercubeShare, planSweep, type SweepPlan } from '#engine/sweep/plan.ts'
 import type { Optimiser } from './optimise.ts'
-import type { SearchState, Spent } from './search.ts'
+import { POLISHED, type SearchState, type Spent } from './search.ts'
 import type { StudyProblem } from './study-problem.ts'
 
 /** What is better by less than this leaves the optimum standing. */
@@ -67,7 +67,8 @@ export function sweepLeast(plan: SweepPlan): Swept {
 /** Checks what a finished search found. `swept`: what the study's run found, if it has one. */
 export function certify(optimiser: Optimiser, state: SearchState, swept?: Swept): Certificate {
   const { problem, space, study } = optimiser
-  const [best] = state.leaders
+  const leaders = state.leaders.slice(0, POLISHED)
+  const [best] = leaders
   if (!best) throw new RangeError('the search found nothing that a certificate could speak of')
   const before = problem.spent()
   const checks: GridCheck[] = []
@@ -77,11 +78,10 @@ export function certify(optimiser: Optimiser, state: SearchState, swept?: Swept)
   const variables = space.axes.map(({ label }) => label.toLowerCase()).join(' and ')
   if (space.axes.length > 0) {
     const whole = places(space.axes, STEPS)
-    const what =
-      state.leaders.length > 1 ? `the best ${state.leaders.length} combinations` : 'the best combination'
+    const what = leaders.length > 1 ? `the best ${leaders.length} combinations` : 'the best combination'
     judged(
       `${variables} over the whole range, ${whole.how}, in ${what}`,
-      sum(state.leaders.map(({ combination }) => leastOf(problem, combination, whole.points))),
+      sum(leaders.map(({ combination }) => leastOf(problem, combination, whole.points))),
     )
     const near = places(
       space.axes.map(({ low, high }, j) => {

@@ -47,6 +47,10 @@ export function bestOfCombination(
 ): Found {
   if (axes.length === 0) return found([], trial([]))
   const [first, ...others] = axes
+  if (falling !== null && others.length === 1 && ceiling !== undefined) {
+    const lower = lowerOf(trial, first, others[0], falling.reversed === true)
+    if (lower > ceiling) return { status: 'above', lower }
+  }
 
   const alongFirst = (
     rest: readonly number[],
@@ -87,6 +91,27 @@ export function bestOfCombination(
   return best === null || best === 'above'
     ? { status: 'infeasible', x: [] }
     : found([best.x, ...rest], best.trial)
+}
+
+/** Looks along the second axis before a combination is searched. */
+const BOUND_LOOKS = 5
+
+/**
+ * What nothing of a combination is under, from a few looks along the second axis, the first where the objective is least
+ * and no limit counts: less twice what neighbouring looks differ by, for what may lie between them.
+ */
+function lowerOf(trial: Opened['trial'], first: Range, second: Range, reversed: boolean): number {
+  const x = reversed ? first.low : first.high
+  const values = Array.from({ length: BOUND_LOOKS }, (_, k) => {
+    const share = k / (BOUND_LOOKS - 1)
+    const y =
+      share === 0 ? second.low : share === 1 ? second.high : second.low * (second.high / second.low) ** share
+    return trial([x, y])?.objective ?? Number.NaN
+  })
+  let lower = Number.POSITIVE_INFINITY
+  for (let k = 1; k < BOUND_LOOKS; k++)
+    lower = Math.min(lower, Math.min(values[k - 1], values[k]) - 2 * Math.abs(values[k] - values[k - 1]))
+  return Number.isNaN(lower) ? Number.NEGATIVE_INFINITY : lower
 }
 
 /** 1/(1/x) may miss the end of a range by the last bit. */

@@ -128,6 +128,9 @@ function neighbours(points: readonly number[], s: number): number[] {
   return [points[k - 1], points[k + 1]].filter((p) => p !== undefined)
 }
 
+/** Share of the way to the next point that is tried beside a point at the end of what is feasible. */
+const END_STEP = 1e-3
+
 /** Golden section between the neighbours of s. */
 function around(
   points: readonly number[],
@@ -139,6 +142,9 @@ function around(
   if (near.length === 0) return s
   let a = Math.min(s, ...near)
   let b = Math.max(s, ...near)
+  // At the end of what is feasible, with the objective worse right beside it: there is nothing further in.
+  const open = near.filter((p) => Number.isFinite(value(p)))
+  if (open.length === 1 && value(s + END_STEP * (open[0] - s)) > value(s)) return s
   const ratio = (Math.sqrt(5) - 1) / 2
   let c = b - ratio * (b - a)
   let d = a + ratio * (b - a)

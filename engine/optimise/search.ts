@@ -62,7 +62,9 @@ export interface SearchState {
 const BOUNDS_A_TASK = 200
 /** Tasks handed out together; the first waves are small, so that the later ones know what to beat. */
 const WAVE = 32
-const LEADERS = 3
+/** Kept for what is decided among the best few, and of them looked at more closely. */
+const LEADERS = 8
+export const POLISHED = 3
 
 const place = (state: SearchState, k: number): number => (state.among === null ? k : state.among[k])
 
@@ -123,7 +125,7 @@ export function tasksOf(problem: Problem, state: SearchState): Task[] {
       .map((k) => ({ kind: 'solve', combination: place(state, k), ceiling }))
   }
   if (state.stage === 'polish')
-    return state.leaders.map(({ combination }) => ({ kind: 'polish', combination }))
+    return state.leaders.slice(0, POLISHED).map(({ combination }) => ({ kind: 'polish', combination }))
   return []
 }
 

@@ -85,6 +85,8 @@ export class StudyProblem implements Problem {
   private readonly cost: Spent = { evaluations: 0, rowMarches: 0 }
   private readonly sizing: boolean
   private readonly ownObjective: boolean
+  /** Without the coolant where a given subcooling has its area without one. */
+  private readonly bareCase: Case
 
   constructor(study: Study, { goal, lifted, more = [] }: ProblemOptions = {}) {
     this.study = study
@@ -97,6 +99,14 @@ export class StudyProblem implements Problem {
     this.goal = goal === undefined || goal === 'worst' ? { column: objectiveColumn(study.objective) } : goal
     this.ownObjective = goal === undefined
     this.sizing = isSizing(study)
+    const { drive } = study.case
+    const coolantVaries = [...this.space.discrete, ...this.space.axes].some(({ path }) =>
+      path.startsWith('drive.coolant'),
+    )
+    this.bareCase =
+      drive.kind === 'wallSubcooling' && !coolantVaries && study.objective !== 'yearlyCost'
+        ? { ...study.case, drive: { kind: drive.kind, wallSubcooling: drive.wallSubcooling } }
+        : study.case
   }
 
   get axes() {
@@ -153,7 +163,7 @@ export class StudyProblem implements Problem {
     if (!this.ownObjective) return this.boundOfGoal(combination)
     const { objective } = this.study
     if (!this.sizing || objective === 'pumpingPower') return 0
-    this.load(combination)
+    this.load(combination, this.bareCase)
     const { solver } = this
     const { axes } = this.space
     const cooled = this.study.case.drive.kind === 'coolant'
@@ -177,6 +187,7 @@ export class StudyProblem implements Problem {
       return outcome === NOT_REACHED && (axes.length === 0 || this.movesFlow()) ? null : 0
     }
     for (const { id, side, bound, column } of this.constraints) {
+      if (this.bareCase !== this.study.case && LIMITS.find((limit) => limit.id === id)?.needsCoolant) continue
       const least = side === 'max' && (id === 'length' || id === 'bundleWidth' || id === 'bundleHeight')
       if (least && key[column] > bound * (1 + 1e-9)) return null
       if (
@@ -191,8 +202,8 @@ export class StudyProblem implements Problem {
     return key[KEY_RESULT_INDEX.outsideArea] * tubePrice * capitalRecoveryFactor(interest, years)
   }
 
-  private load(combination: number): void {
-    this.solver.load(this.study.case)
+  private load(combination: number, kase = this.study.case): void {
+    this.solver.load(kase)
     const values: readonly SweptValue[] = combinationValues(this.space, combination)
     for (let j = 0; j < values.length; j++) setSwept(this.solver, this.space.discrete[j].path, values[j])
   }

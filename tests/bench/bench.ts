@@ -9,7 +9,7 @@ const SECTIONS = {
   pages: async () => (await import('./runs.ts')).benchPages(),
   transport: async () => ({ browserDecodeMs: null }),
   progressRoute: async () => (await import('./progress-route.ts')).benchProgressRoute(),
-  optimiser: async () => ({ rowMarches: null, exhaustiveRowMarches: null, gap: null }),
+  optimiser: async () => (await import('./optimiser.ts')).benchOptimiser(),
   workbook: async () => (await import('./workbook.ts')).benchWorkbook(),
 } satisfies Record<string, () => Promise<unknown>>
 
