@@ -120,6 +120,38 @@ describe('study', () => {
     )
   })
 
+  it('finds the optimum with its certificate, or which limit would have to give way', async () => {
+    const sized = (most: string) => ({
+      name: 'Sized',
+      case: {
+        ...rated,
+        duty: '30 kW',
+        drive: { kind: 'coolant', coolant: 'water', inletTemperature: '29 degC', velocity: 2 },
+        tube: { outsideDiameter: '3/4 in', wallThickness: '1.245 mm', material: 'copper' },
+        bundle: { ...bundle, length: undefined },
+      },
+      sweep: {
+        variables: [
+          { path: 'bundle.rows', values: [4, 6] },
+          { path: 'drive.velocity', from: 1, to: 3, count: 3 },
+        ],
+      },
+      limits: { coolantPressureDrop: { max: most } },
+    })
+    const run = async (most: string) => {
+      const file = join(folder, `sized-${most.replaceAll(' ', '-')}.json`)
+      writeFileSync(file, JSON.stringify(sized(most)))
+      const { code, out } = await command('study', [file, '--optimise', '--workers', '1'])
+      expect(code).toBe(0)
+      return JSON.parse(out)
+    }
+    const [found, none] = await Promise.all([run('10 kPa'), run('10 Pa')])
+    expect(found.optimum.objective).toBeLessThanOrEqual(found.best.results.outsideArea)
+    expect(found.optimum).toMatchObject({ binding: ['coolantPressureDrop'], certificate: { holds: true } })
+    expect(none).toMatchObject({ best: null, optimum: null })
+    expect(none.infeasible.relaxations[0]).toMatchObject({ id: 'coolantPressureDrop', from: 10 })
+  })
+
   it.each([
     [
       'an empty sweep',

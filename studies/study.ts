@@ -18,7 +18,10 @@ import { writeWorkbook } from '#app/modules/exports/workbook.ts'
 import { KEY_RESULT_INDEX, KEY_RESULTS, OUTCOMES } from '#engine/bundle/key-results.ts'
 import { faultLine } from '#engine/case.ts'
 import { evaluate } from '#engine/evaluate.ts'
-import { refineBest } from '#engine/optimise/refine.ts'
+import { certify, type Swept } from '#engine/optimise/certificate.ts'
+import { explainInfeasible } from '#engine/optimise/feasibility.ts'
+import { createOptimiser, type Optimiser } from '#engine/optimise/optimise.ts'
+import { runSearch } from '#engine/optimise/search.ts'
 import { objectiveColumn } from '#engine/sweep/objective.ts'
 import { planSweep, pointCase, pointInputs, type SweepPlan } from '#engine/sweep/plan.ts'
 import { parseStudy } from '#engine/sweep/study.ts'
@@ -136,6 +139,22 @@ function summarise(plan: SweepPlan, whole: Float64Array) {
   return { best: best < 0 ? null : best, feasible, outcomes }
 }
 
+/** The optimum between and beside the swept points, with its certificate; or what would have to give way. */
+function findOptimum(plan: SweepPlan, swept: Swept) {
+  const { study } = plan
+  let optimiser: Optimiser
+  try {
+    optimiser = createOptimiser(study)
+  } catch (error) {
+    throw new Refusal(`--optimise: ${(error as Error).message}`)
+  }
+  const state = runSearch(optimiser.problem, optimiser.begin())
+  const optimum = optimiser.optimum(state)
+  if (optimum === null) return { optimum, summary: { optimum: null, infeasible: explainInfeasible(study) } }
+  const { result: _, ...found } = optimum
+  return { optimum, summary: { optimum: { ...found, certificate: certify(optimiser, state, swept) } } }
+}
+
 async function writeOut(file: string, report: StudyReport, summary: unknown): Promise<void> {
   // Under another name until it is whole: an interruption never leaves half a file in the place of a good one.
   const fresh = `${file}.part`
@@ -182,21 +201,21 @@ async function main(): Promise<number> {
   const { whole, done } = await evaluateAll(plan, options.workers, interruption.signal)
   const { best, feasible, outcomes } = summarise(plan, whole)
   const reported: ReportedPoint[] = []
-  let refined: ReturnType<typeof refineBest> | null = null
   if (best !== null) {
     const found = pointCase(plan, best)
     reported.push({ label: 'Best point', point: best, case: found, result: evaluate(found) })
-    if (options.optimise) {
-      refined = refineBest(plan.study, found)
-      if (refined.improved)
-        reported.push({
-          label: 'Refined point',
-          point: null,
-          case: refined.case,
-          result: refined.result,
-          statement: refined.statement,
+  }
+  const optimised =
+    options.optimise && !interruption.signal.aborted
+      ? findOptimum(plan, {
+          points: done,
+          feasible,
+          least: best === null ? null : whole[objectiveColumn(plan.study.objective) * plan.points + best],
         })
-    }
+      : null
+  if (optimised?.optimum) {
+    const { case: found, result, statement } = optimised.optimum
+    reported.push({ label: 'Optimum', point: null, case: found, result, statement })
   }
   const summary = {
     name: plan.study.name,
@@ -223,17 +242,7 @@ async function main(): Promise<number> {
             ),
             limitsNotMet: limitsNotMet(whole[KEY_RESULT_INDEX.limitsNotMet * plan.points + best]),
           },
-    ...(refined
-      ? {
-          refined: {
-            improved: refined.improved,
-            objective: refined.objective,
-            binding: refined.binding,
-            statement: refined.statement,
-            case: refined.case,
-          },
-        }
-      : {}),
+    ...optimised?.summary,
   }
   if (options.out && !interruption.signal.aborted)
     await writeOut(
