@@ -4,6 +4,9 @@ import { COLUMNS, evaluateRange } from '#engine/sweep/evaluate-range.ts'
 import { planSweep, type SweepPlan } from '#engine/sweep/plan.ts'
 import type { Study } from '#engine/sweep/study.ts'
 
+/** Parts of analyses are computed by the same threads. */
+export { computePart } from '#app/modules/analyses/tasks.ts'
+
 export type Slice = {
   /** Names the study to the thread, which keeps the plans of the last few. */
   key: string

@@ -1,6 +1,7 @@
 // The threads that evaluate points: one a core, fed with slices of a chunk.
 import { availableParallelism } from 'node:os'
 import { Piscina } from 'piscina'
+import type { Part, PartAsked, Parts } from '#app/modules/analyses/tasks.ts'
 import { slicePointsFor } from '#app/modules/runs/chunks.ts'
 import { COLUMNS } from '#engine/sweep/evaluate-range.ts'
 import type { Study } from '#engine/sweep/study.ts'
@@ -69,6 +70,11 @@ export class EnginePool {
     const settled = await Promise.allSettled(slices)
     for (const slice of settled) if (slice.status === 'rejected') throw slice.reason
     return evaluated === count ? { table, seconds } : null
+  }
+
+  /** Has a part of an analysis computed by one thread. */
+  part(asked: PartAsked): Promise<Parts[Part]['answer']> {
+    return this.#piscina.run(asked, { name: 'computePart' })
   }
 
   async close(): Promise<void> {

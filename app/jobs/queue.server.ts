@@ -6,10 +6,12 @@ import { ENGINE_VERSION } from '#engine/version.ts'
 
 export type ChunkJob = { runId: string; chunk: number }
 export type FinishJob = { runId: string }
+export type AnalysisJob = { analysisId: string }
 
 /** A worker fetches only from the queues of its own engine: a run of another engine version is never taken. */
 export const chunkQueue = (engineVersion: string) => `run-chunk-${engineVersion}`
 export const finishQueue = (engineVersion: string) => `run-finish-${engineVersion}`
+export const analysisQueue = (engineVersion: string) => `analysis-${engineVersion}`
 
 /** PostgreSQL tells listeners on this channel that something was queued. */
 export const WAKE_CHANNEL = 'rowfall_work'
@@ -45,7 +47,7 @@ async function open(): Promise<PgBoss> {
   boss.on('error', (error) => console.warn(`Queue: ${error.message}`))
   await boss.start()
   const options = { retryLimit: LOST_WORKERS_MAX, retryDelay: 0, expireInSeconds: LEASE_SECONDS }
-  for (const name of [chunkQueue(ENGINE_VERSION), finishQueue(ENGINE_VERSION)])
+  for (const name of [chunkQueue(ENGINE_VERSION), finishQueue(ENGINE_VERSION), analysisQueue(ENGINE_VERSION)])
     await boss.createQueue(name, { name, ...options })
   return boss
 }
@@ -88,6 +90,26 @@ export async function enqueueFinish(
   const data: FinishJob = { runId: run.id }
   await (await queue()).insert([{ name: finishQueue(run.engineVersion), data }], { db: within(tx) })
   await wake(tx)
+}
+
+export async function enqueueAnalysis(
+  tx: Pick<Queryable, 'execute'>,
+  analysis: { id: string; engineVersion: string },
+): Promise<void> {
+  const data: AnalysisJob = { analysisId: analysis.id }
+  await (await queue()).insert([{ name: analysisQueue(analysis.engineVersion), data }], { db: within(tx) })
+  await wake(tx)
+}
+
+/** Takes an analysis out of the queue, whether it waits or is held: who holds it finds its lease gone. */
+export async function withdrawAnalysis(
+  tx: Pick<Queryable, 'execute'>,
+  analysis: { id: string; engineVersion: string },
+): Promise<void> {
+  await tx.execute(sql`
+    delete from pgboss.job
+    where name = ${analysisQueue(analysis.engineVersion)} and state in ('created', 'retry', 'active')
+      and data->>'analysisId' = ${analysis.id}`)
 }
 
 /** Takes what is waiting of a run out of the queue; what a worker holds stays with it. */
@@ -154,6 +176,14 @@ export async function hopelessRuns(): Promise<string[]> {
     select distinct data->>'runId' as run_id from pgboss.job
     where name in (${chunkQueue(ENGINE_VERSION)}, ${finishQueue(ENGINE_VERSION)}) and state = 'failed'`)
   return rows.map((row) => row.run_id)
+}
+
+/** The same for analyses. */
+export async function hopelessAnalyses(): Promise<string[]> {
+  const { rows } = await db.execute<{ id: string }>(sql`
+    select distinct data->>'analysisId' as id from pgboss.job
+    where name = ${analysisQueue(ENGINE_VERSION)} and state = 'failed'`)
+  return rows.map((row) => row.id)
 }
 
 async function wake(tx: Pick<Queryable, 'execute'>): Promise<void> {

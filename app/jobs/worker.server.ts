@@ -6,14 +6,18 @@ import { dropOldPoints } from '#app/modules/runs/retention.server.ts'
 import { failRun } from '#app/modules/runs/runs.server.ts'
 import { run, worker } from '#drizzle/schema/index.ts'
 import { ENGINE_VERSION } from '#engine/version.ts'
+import { type AnalysisUnit, failAnalysis, failOrphans, handleAnalysis } from './analysis.server.ts'
 import { handleChunk, handleFinish, type WorkUnit } from './handlers.server.ts'
 import { EnginePool, stopFlag } from './pool.server.ts'
 import {
+  type AnalysisJob,
+  analysisQueue,
   type ChunkJob,
   chunkQueue,
   dropJob,
   type FinishJob,
   finishQueue,
+  hopelessAnalyses,
   hopelessRuns,
   queue,
   releaseJob,
@@ -32,7 +36,14 @@ const OLD_ENGINE_SECONDS = 60
 /** Times a job's own error is met before the run is given up. */
 const ATTEMPTS = 3
 
-type Held = WorkUnit & { since: string }
+type Held = (WorkUnit | AnalysisUnit) & { since: string }
+
+/** What a job is about, for the log, the list of workers and the fault that people read. */
+function about(held: Held): { id: string; chunk: number | null; what: string } {
+  if ('analysisId' in held) return { id: held.analysisId, chunk: null, what: 'the analysis' }
+  const { runId, chunk } = held
+  return { id: runId, chunk, what: chunk === null ? 'the end of the run' : `chunk ${chunk}` }
+}
 
 export type WorkerOptions = { threads?: number; log?: (line: string) => void }
 
@@ -85,20 +96,33 @@ export class JobWorker {
 
   async #take(): Promise<void> {
     const boss = await queue()
-    for (const name of [finishQueue(ENGINE_VERSION), chunkQueue(ENGINE_VERSION)]) {
-      const batchSize = this.#capacity - this.#held.size
-      if (batchSize <= 0) return
-      const jobs = await boss.fetch<ChunkJob | FinishJob>(name, { batchSize, includeMetadata: true })
+    const queues = [finishQueue, analysisQueue, chunkQueue].map((of) => of(ENGINE_VERSION))
+    for (const name of queues) {
+      // An analysis spreads over all threads by itself; a second one beside it would only delay both.
+      const room = this.#capacity - this.#held.size
+      const batchSize =
+        name === analysisQueue(ENGINE_VERSION) ? Math.min(room, this.#analyses > 0 ? 0 : 1) : room
+      if (batchSize <= 0) continue
+      const jobs = await boss.fetch<ChunkJob | FinishJob | AnalysisJob>(name, {
+        batchSize,
+        includeMetadata: true,
+      })
       for (const { id, retryCount, data } of jobs) {
-        const held: Held = {
+        const common = {
           lease: { queue: name, id, retryCount },
-          runId: data.runId,
-          chunk: 'chunk' in data ? data.chunk : null,
           stop: stopFlag(),
-          workerId: this.id,
           pool: this.pool,
           since: new Date().toISOString(),
         }
+        const held: Held =
+          'analysisId' in data
+            ? { ...common, analysisId: data.analysisId }
+            : {
+                ...common,
+                runId: data.runId,
+                chunk: 'chunk' in data ? data.chunk : null,
+                workerId: this.id,
+              }
         this.#held.set(id, held)
         void this.#process(held).finally(() => {
           this.#held.delete(id)
@@ -108,14 +132,18 @@ export class JobWorker {
     }
   }
 
+  get #analyses(): number {
+    return [...this.#held.values()].filter((held) => 'analysisId' in held).length
+  }
+
   async #process(held: Held): Promise<void> {
-    const what = held.chunk === null ? 'the end of the run' : `chunk ${held.chunk}`
+    const { id, what } = about(held)
     try {
       const stored = await this.#untilAnswered(held)
       // Refused because the run has ended: its job must not come back. Refused because the lease was lost: not ours.
       if (!stored) await dropJob(held.lease)
     } catch (error) {
-      this.#log(`Run ${held.runId}, ${what}: ${(error as Error).stack}`)
+      this.#log(`${id}, ${what}: ${(error as Error).stack}`)
       await this.#giveBack(held, what, error as Error).catch((again) => this.#say('give a job back', again))
     }
   }
@@ -124,9 +152,10 @@ export class JobWorker {
   async #untilAnswered(held: Held): Promise<boolean> {
     for (let wait = 100; ; wait = Math.min(2 * wait, 2000)) {
       try {
+        if ('analysisId' in held) return await handleAnalysis(held)
         return await (held.chunk === null
           ? handleFinish(held)
-          : handleChunk(held as Held & { chunk: number }))
+          : handleChunk(held as WorkUnit & { chunk: number }))
       } catch (error) {
         if (!isTransient(error) || Atomics.load(held.stop, 0) !== 0) throw error
         this.#say('use the database', error)
@@ -138,7 +167,8 @@ export class JobWorker {
   async #giveBack(held: Held, what: string, error: Error): Promise<void> {
     if (isTransient(error)) return
     if (held.lease.retryCount + 1 < ATTEMPTS) return releaseJob(held.lease)
-    await failRun(held.runId, `The engine failed at ${what}: ${error.message}`)
+    const fault = `The engine failed at ${what}: ${error.message}`
+    await ('analysisId' in held ? failAnalysis(held.analysisId, fault) : failRun(held.runId, fault))
     await dropJob(held.lease)
   }
 
@@ -149,7 +179,10 @@ export class JobWorker {
       .update(worker)
       .set({
         seenAt: sql`now()`,
-        holding: held.map(({ lease, runId, chunk, since }) => ({ job: lease.queue, runId, chunk, since })),
+        holding: held.map((each) => {
+          const { id, chunk } = about(each)
+          return { job: each.lease.queue, runId: id, chunk, since: each.since }
+        }),
       })
       .where(eq(worker.id, this.id))
       .returning({ drainRequestedAt: worker.drainRequestedAt })
@@ -157,9 +190,10 @@ export class JobWorker {
     else if (self.drainRequestedAt) this.drain()
     if (held.length > 0) {
       const own = await renewJobs(held.map(({ lease }) => lease))
-      const ended = await endedAmong(held.map(({ runId }) => runId))
-      for (const { lease, runId, stop } of held)
-        if (!own.has(lease.id) || ended.has(runId)) Atomics.store(stop, 0, 1)
+      const ended = await endedAmong(held.flatMap((each) => ('runId' in each ? each.runId : [])))
+      for (const each of held)
+        if (!own.has(each.lease.id) || ('runId' in each && ended.has(each.runId)))
+          Atomics.store(each.stop, 0, 1)
     }
     await (await queue()).expire()
   }
@@ -190,6 +224,9 @@ export class JobWorker {
         runId,
         'A part of this run ended every worker that took it; the log of a worker may say why.',
       )
+    await failOrphans()
+    for (const id of await hopelessAnalyses())
+      await failAnalysis(id, 'It ended every worker that took it; the log of a worker may say why.')
     for (const { id, engineVersion } of await orphansOfOldEngines())
       await failRun(
         id,

@@ -1,15 +1,6 @@
 // Work beyond a sweep, done by workers: optima, fronts and uncertainty bands; and measured data.
 import { sql } from 'drizzle-orm'
-import {
-  check,
-  customType,
-  index,
-  jsonb,
-  pgTable,
-  text,
-  uniqueIndex,
-  uuid,
-} from 'drizzle-orm/pg-core'
+import { check, customType, index, jsonb, pgTable, text, uniqueIndex, uuid } from 'drizzle-orm/pg-core'
 import { id, moment } from './columns.ts'
 import { person } from './person.ts'
 import { project } from './project.ts'

@@ -117,6 +117,8 @@ export const pointResult = pgTable(
     engineVersion: text('engine_version').notNull(),
     case: jsonb('case').$type<Record<string, unknown>>().notNull(),
     result: jsonb('result').$type<Record<string, unknown>>().notNull(),
+    // How sure it is: the band of its area or duty under the published scatter of its methods.
+    band: jsonb('band').$type<Record<string, unknown>>(),
     storedAt: moment('stored_at').notNull().defaultNow(),
   },
   (t) => [primaryKey({ columns: [t.runId, t.kind, t.point] })],

@@ -1,6 +1,8 @@
 // Acts of the audit trail in words. An act without words of its own stands as it is stored.
 
 const WORDS: Record<string, string> = {
+  'analysis.ask': 'asked for an analysis',
+  'analysis.cancel': 'cancelled an analysis',
   'comment.add': 'wrote a comment',
   'comment.withdraw': 'withdrew a comment',
   'comparison.delete': 'deleted a comparison',

@@ -152,6 +152,7 @@ function refinedSheet(runId: string, plan: SweepPlan, refined: Refined): PointVi
     storedEngineVersion: refined.engineVersion,
     engineVersion: refined.engineVersion,
     recorded: true,
+    band: refined.band,
     differences: [],
     inputs: plan.variables.map(({ path }) => {
       const value = getPath(refined.case, path)

@@ -2,6 +2,7 @@
 import type { Case } from '#engine/case.ts'
 import type { Result } from '#engine/result.ts'
 import type { SweptValue } from '#engine/sweep/study.ts'
+import type { Band } from '#engine/uncertainty/bands.ts'
 
 export type Range = { min?: number; max?: number }
 
@@ -91,6 +92,8 @@ export type PointSheet = {
   engineVersion: string
   /** True where `result` is the stored record, false where it was computed just now. */
   recorded: boolean
+  /** How sure the area or duty is, where it was found out when the run ended. */
+  band: Band | null
   /** Key results that the running engine finds otherwise; empty when the versions are the same. */
   differences: KeyResultDifference[]
 }

@@ -13,6 +13,7 @@ import type { Result } from '#engine/result.ts'
 import { COLUMNS, evaluateRange } from '#engine/sweep/evaluate-range.ts'
 import { LIMITS } from '#engine/sweep/limits.ts'
 import { pointCase, pointInputs, pointValue, type SweepPlan } from '#engine/sweep/plan.ts'
+import type { Band } from '#engine/uncertainty/bands.ts'
 import { ENGINE_VERSION } from '#engine/version.ts'
 import { columnOf, computedColumn, type StoredPoints, storedPoints, valuesAt } from './column-cache.server.ts'
 import { paretoFront as frontOf } from './front.ts'
@@ -352,6 +353,7 @@ export async function pointSheet(runId: string, point: number): Promise<PointShe
     storedEngineVersion: run.engineVersion,
     engineVersion: ENGINE_VERSION,
     recorded: record !== undefined,
+    band: (record?.band as unknown as Band | null | undefined) ?? null,
     differences: stored && run.engineVersion !== ENGINE_VERSION ? differences(stored, now) : [],
   }
 }
@@ -364,7 +366,13 @@ function differences(stored: Float64Array, now: Float64Array): KeyResultDifferen
   )
 }
 
-export type RefinedBest = { case: Case; result: Result; engineVersion: string; [how: string]: unknown }
+export type RefinedBest = {
+  case: Case
+  result: Result
+  band: Band | null
+  engineVersion: string
+  [how: string]: unknown
+}
 
 /** The best point refined in between the swept values, as recorded when the run ended; null when there is none. */
 export async function refinedBest(runId: string): Promise<RefinedBest | null> {
@@ -379,6 +387,7 @@ export async function refinedBest(runId: string): Promise<RefinedBest | null> {
     ...run.refined,
     case: record.case as unknown as Case,
     result: record.result as unknown as Result,
+    band: record.band as unknown as Band | null,
     engineVersion: record.engineVersion,
   }
 }

@@ -13,6 +13,7 @@ import { refineBest } from '#engine/optimise/refine.ts'
 import type { Result } from '#engine/result.ts'
 import { objectiveColumn } from '#engine/sweep/objective.ts'
 import { pointCase } from '#engine/sweep/plan.ts'
+import { bandOf } from '#engine/uncertainty/bands.ts'
 import { ENGINE_VERSION } from '#engine/version.ts'
 import { chunkRange, summarise } from './chunks.ts'
 import { planOfRevision } from './run-plan.server.ts'
@@ -114,6 +115,7 @@ export async function finishRun(lease: Lease, of: Run): Promise<boolean> {
     engineVersion: ENGINE_VERSION,
     case: bundle as unknown as Record<string, unknown>,
     result: result as unknown as Record<string, unknown>,
+    band: bandOf(bundle, plan.study.uncertainty) as unknown as Record<string, unknown> | null,
   })
   const records: ReturnType<typeof record>[] = []
   let refined: Record<string, unknown> | null = null

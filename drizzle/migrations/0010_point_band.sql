@@ -1,0 +1,1 @@
+ALTER TABLE "point_result" ADD COLUMN "band" jsonb;
