@@ -30,6 +30,8 @@ const LAST_CHANGE = 1e-7
 const QUICK_SWEEPS = 40
 /** Sweeps that one trial of the bracketed search may take. */
 const TRIAL_SWEEPS = 200
+/** Rounds that a point's first guess takes. */
+const GUESSES = 4
 /** Sweeps after which what swings from one to the next is damped. */
 const SWINGING = 12
 /** Trial lengths stay below this; a duty that needs more is out of reach [m]. */
@@ -110,10 +112,21 @@ export class BundleMarch extends RowMarch {
     this.coolantSide()
     const area = this.tubes * Math.PI * s.outsideDiameter * this.length
     const capacity = this.flow * this.passSpecificHeat[0]
-    const guess =
-      -Math.expm1((-this.guessedCoefficient() * area) / capacity) * capacity * (this.Ts - s.inletTemperature)
+    const reach = this.Ts - s.inletTemperature
+    let guess = 0
+    for (let n = 0; n < GUESSES; n++) {
+      if (n === 2) {
+        this.spreadRise(guess / capacity, true)
+        this.coolantSide()
+      }
+      const inner = this.innerConductance()
+      const h = this.meanRowCoefficient(this.rowX[0], guess / this.inlet[H_FG])
+      const units = (inner * h * area) / ((inner + h) * capacity)
+      guess = -Math.expm1(-units) * capacity * reach
+      this.rowX[0] = guess / (h * area)
+    }
     this.inletVapour = guess / this.inlet[H_FG]
-    this.spreadRise(guess / capacity)
+    this.spreadRise(guess / capacity, true)
     if (!this.quickVapour(true)) {
       const outcome = this.bracket(BY_VAPOUR, Number.NaN, true)
       if (outcome !== 0) return outcome
@@ -145,7 +158,11 @@ export class BundleMarch extends RowMarch {
       } else this.sweep(false)
       const mismatch = Math.log(this.condensate / this.inletVapour)
       if (!Number.isFinite(mismatch)) return false
-      if (Math.abs(mismatch) < CLOSE && this.stands(change, close)) return true
+      // What is missing of the vapour moves the rows by the share that their condensate follows it.
+      if (Math.abs(mismatch) * Math.max(0.2, Math.abs(1 + slope)) < CLOSE && this.stands(change, close)) {
+        this.inletVapour = this.condensate
+        return true
+      }
       const log = Math.log(this.inletVapour)
       // What the rows are still settling by must not be taken for the vapour's doing.
       if (this.moved < 0.3 * Math.abs(log - lastLog)) {
@@ -176,7 +193,7 @@ export class BundleMarch extends RowMarch {
     const outlet = byOutlet ? s.outletTemperature : Number.NaN
     this.length = this.guessLength()
     this.start(true)
-    this.spreadRise(s.duty / (this.flow * this.water[COOLANT_CP]))
+    this.spreadRise(s.duty / (this.flow * this.water[COOLANT_CP]), true)
     if (!this.quickLength(s.duty, outlet) || !this.ratesTo(s.duty)) {
       const outcome = this.bracket(BY_LENGTH, s.duty, true, outlet)
       if (outcome !== 0) return outcome
@@ -194,20 +211,30 @@ export class BundleMarch extends RowMarch {
     const reach = this.Ts - s.inletTemperature
     const capacity = this.flow * this.passSpecificHeat[0]
     const effectiveness = Math.min(0.999, s.duty / (capacity * reach))
-    const area = (-Math.log1p(-effectiveness) * capacity) / this.guessedCoefficient()
-    return Math.min(LONGEST, Math.max(1e-3, area / (this.tubes * Math.PI * s.outsideDiameter)))
+    const units = -Math.log1p(-effectiveness)
+    const difference = (reach * effectiveness) / units
+    const perMetre = this.tubes * Math.PI * s.outsideDiameter
+    for (let n = 0; n < GUESSES; n++) {
+      if (n === 2) {
+        this.spreadRise(s.duty / capacity, true)
+        this.coolantSide()
+      }
+      const inner = this.innerConductance()
+      const h = this.meanRowCoefficient(this.rowX[0], s.duty / this.inlet[H_FG])
+      const U = (inner * h) / (inner + h)
+      this.rowX[0] = (U * difference) / h
+      this.length = Math.min(LONGEST, Math.max(1e-3, (units * capacity) / (U * perMetre)))
+    }
+    return this.length
   }
 
   /**
-   * Brings the duty to `total` by length, a secant step in its logarithm after every sweep. The coolant is taken to carry
+   * Brings the duty to `total` by length, a Newton step in its logarithm after every sweep. The coolant is taken to carry
    * `total` all along; with an `outlet` temperature the flow follows.
    */
   private quickLength(total: number, outlet: number): boolean {
     const close = CLOSE * (this.Ts - this.s.inletTemperature)
     this.inletVapour = total / this.inlet[H_FG]
-    let slope = Number.NaN
-    let lastLog = Number.NaN
-    let lastShort = Number.NaN
     for (let n = 0; n < QUICK_SWEEPS; n++) {
       this.sweeps++
       this.heed = heedAt(n)
@@ -219,16 +246,7 @@ export class BundleMarch extends RowMarch {
       const short = Math.log(total / this.duty)
       if (Math.abs(short) < CLOSE && Math.abs(off) < CLOSE && this.stands(change, close)) return true
       this.inletVapour = (total * this.condensate) / this.duty
-      const log = Math.log(this.length)
-      if (Number.isNaN(slope)) slope = this.lengthElasticity()
-      // What the rows are still settling by must not be taken for the length's doing.
-      if (this.moved < 0.7 * Math.abs(log - lastLog)) {
-        const seen = -(short - lastShort) / (log - lastLog)
-        if (seen > 0.1 && seen < 4) slope = seen
-      }
-      lastLog = log
-      lastShort = short
-      this.length *= Math.exp(Math.max(-1, Math.min(1, short / slope)))
+      this.length *= Math.exp(Math.max(-1, Math.min(1, short / this.lengthElasticity())))
       if (!(this.length < LONGEST)) return false
     }
     return false
@@ -405,8 +423,10 @@ export class BundleMarch extends RowMarch {
     return this.water[COOLANT_CP]
   }
 
+  /** Closes a point that was brought to its balance; the outcome that refuses it, or 0. */
   private refusal(): number {
     const { s } = this
+    this.closePressure()
     if (this.exhausted) return OUTCOME.vapourPressureExhausted
     if (this.fastestOverSonic > TOO_FAST) return OUTCOME.vapourTooFast
     if (!Number.isFinite(this.duty)) return OUTCOME.notSolved
@@ -545,7 +565,6 @@ export class BundleMarch extends RowMarch {
     this.rowSpecificHeat,
     this.rowViscosity,
     this.rowConductivity,
-    this.rowTension,
   ]
   private readonly keptRows = this.lentRows.map(() => new Float64Array(MAX_ROWS))
   private readonly kept = new Float64Array(6)

@@ -52,14 +52,15 @@ import {
   wallViscosityFactor,
 } from '#engine/correlations/tube-side.ts'
 import {
+  fillGaddisRow,
   gaddisEndLoss,
-  gaddisInlineRow,
   gaddisLaminar,
-  gaddisStaggeredRow,
   gaddisTurbulent,
   ishihara,
   jakob,
   rowPressureDrop,
+  XI,
+  XI_POWER,
   zukauskas,
 } from '#engine/correlations/vapour-drop.ts'
 import {
@@ -69,23 +70,31 @@ import {
   COOLANT_MU,
   COOLANT_RHO,
   type CoolantModel,
-  CP_L,
   CP_V,
+  FILM_LINE,
   fillCoolant,
-  fillFilm,
+  fillFilmLine,
   fillVapour,
+  fillVapourLine,
   H_FG,
-  K_L,
-  MU_L,
+  LINE_CP_L,
+  LINE_H_FG,
+  LINE_K_L,
+  LINE_MU_L,
+  LINE_MU_V,
+  LINE_P,
+  LINE_REFERENCE,
+  LINE_RHO_L,
+  LINE_RHO_V,
+  LINE_T,
   MU_V,
   outsideRange,
   P,
-  RHO_L,
   RHO_V,
   SATURATION_LENGTH,
-  SIGMA,
-  saturationSlope,
   saturationTemperature,
+  surfaceTension,
+  VAPOUR_LINE,
 } from '#engine/fluids/index.ts'
 import { OUTCOME_INDEX } from './key-results.ts'
 import { unitMultipliers } from './multipliers.ts'
@@ -95,16 +104,21 @@ const OUTCOME = OUTCOME_INDEX as Readonly<Record<string, number>>
 
 /** Vapour pressure is held above this share of the inlet's inside trials. */
 const PRESSURE_FLOOR = 0.2
-/** Film and coolant properties are taken again when their temperature has moved by more [K]. */
+/** Coolant properties, and film properties where a law switches on them, are taken again when their temperature has moved by more [K]. */
 const SAME_TEMPERATURE = 2e-8
-/** Saturation is taken again when the pressure has moved by more, relative; less follows the saturation line's slope. */
-const SAME_PRESSURE = 2e-8
-/** A row's pressure loss is taken again when its flows have moved by more, relative; less follows a power. */
-const SAME_FLOW = 1e-7
-/** Power of the mass velocity that a row's loss goes by, near enough for such small moves. */
-const LOSS_POWER = 1.8
-/** Below this relative move a power is followed by its series, to 1e-13. */
-const SMALL_MOVE = 1e-3
+/** Film properties follow straight lines as far as this [K]: their curvature leaves 1e-11 of a flux. */
+const FILM_WINDOW = 1e-3
+/** As far in the first sweep, which only has to come near [K]. */
+const FIRST_WINDOW = 2
+/** The vapour's state follows parabolas in ln p as far as this, to 1e-11. */
+const VAPOUR_WINDOW = 3e-4
+/** A row's pressure loss follows powers of its flows as far as this, relative, to 2e-10 … */
+const LOSS_WINDOW = 5e-5
+/** … or to this share of what the rows still move by, but never further than that. */
+const LOSS_SHARE = 0.005
+const WIDEST_LOSS_WINDOW = 0.5
+/** Below this relative move a power is followed by its series, to 1e-12. */
+const SMALL_MOVE = 0.03
 /** A wall's Newton steps stop below this share of the driving difference; the sweeps take it further. */
 const STEP = 1e-4
 
@@ -142,6 +156,8 @@ export class RowMarch {
   fixedResistance = 0
   boreArea = 0
   exponent = 0
+  /** Mean coefficient of the rows over a dry one's, for guesses. */
+  private meanRowFactor = 1
   private eps = 0
   private fmin = 0
   private a = 0
@@ -149,6 +165,7 @@ export class RowMarch {
   private lossLaminar = 0
   private lossTurbulent = 0
   private lossEnd = 0
+  private readonly loss = new Float64Array(2)
   inletPressure = Number.NaN
   Ts = 0
 
@@ -168,24 +185,29 @@ export class RowMarch {
   readonly rowArriving = new Float64Array(MAX_ROWS)
   readonly rowCoolant = new Float64Array(MAX_ROWS)
   readonly rowVelocity = new Float64Array(MAX_ROWS)
-  /** Film properties of each row and the temperature they were taken at. */
-  readonly rowFilmTemperature = new Float64Array(MAX_ROWS)
+  /** Film properties of each row at its reference temperature. */
   readonly rowDensity = new Float64Array(MAX_ROWS)
   readonly rowSpecificHeat = new Float64Array(MAX_ROWS)
   readonly rowViscosity = new Float64Array(MAX_ROWS)
   readonly rowConductivity = new Float64Array(MAX_ROWS)
-  readonly rowTension = new Float64Array(MAX_ROWS)
   private readonly rowColumnLine = new Float64Array(MAX_ROWS)
   private readonly rowSheetLine = new Float64Array(MAX_ROWS)
-  /** Saturation at `rowPressure` and its slope with pressure [K/Pa]. */
-  private readonly rowSaturation = new Float64Array(MAX_ROWS)
-  private readonly rowSlope = new Float64Array(MAX_ROWS)
+  /** Lines that rows follow their film and vapour properties by, one made by each row, and where a row's stands. */
+  private readonly filmLines = new Float64Array(MAX_ROWS * FILM_LINE)
+  private readonly rowFilmLine = new Int32Array(MAX_ROWS)
+  private readonly vapourLines = new Float64Array(MAX_ROWS * VAPOUR_LINE)
+  private readonly rowVapourLine = new Int32Array(MAX_ROWS)
   /** Share of its own condensate in a row's leaving flow, and its power `exponent`, where last taken. */
   private readonly rowOwn = new Float64Array(MAX_ROWS)
   private readonly rowPower = new Float64Array(MAX_ROWS)
+  /** Each row's pressure loss where last taken, the flows and density there inverted, and its powers of them. */
   private readonly rowLoss = new Float64Array(MAX_ROWS)
-  private readonly rowLossVapour = new Float64Array(MAX_ROWS)
-  private readonly rowLossLiquid = new Float64Array(MAX_ROWS)
+  private readonly rowLossPerVapour = new Float64Array(MAX_ROWS)
+  private readonly rowLossPerLiquid = new Float64Array(MAX_ROWS)
+  private readonly rowLossPerDensity = new Float64Array(MAX_ROWS)
+  private readonly rowLossByVapour = new Float64Array(MAX_ROWS)
+  private readonly rowLossByLiquid = new Float64Array(MAX_ROWS)
+  private readonly rowLossByDensity = new Float64Array(MAX_ROWS)
   /** Where along the row's coolant rise the wall is solved: share κ of the rise below the inlet difference. */
   private readonly rowShare = new Float64Array(MAX_ROWS)
 
@@ -200,6 +222,9 @@ export class RowMarch {
   readonly passCoefficient = new Float64Array(MAX_PASSES)
   readonly passDensity = new Float64Array(MAX_PASSES)
   readonly passSpecificHeat = new Float64Array(MAX_PASSES)
+  /** Resistance inside the film [m² K/W], and the coolant's rise per flux [m² K/W], of the sweep at hand. */
+  private readonly passInner = new Float64Array(MAX_PASSES)
+  private readonly passRise = new Float64Array(MAX_PASSES)
   private readonly passViscosity = new Float64Array(MAX_PASSES)
   private readonly passConductivity = new Float64Array(MAX_PASSES)
   private readonly passWallFactor = new Float64Array(MAX_PASSES)
@@ -209,8 +234,6 @@ export class RowMarch {
   private readonly passMeanAt = new Float64Array(MAX_PASSES)
 
   protected readonly inlet = new Float64Array(SATURATION_LENGTH)
-  private readonly vapour = new Float64Array(SATURATION_LENGTH)
-  private readonly liquid = new Float64Array(SATURATION_LENGTH)
   protected readonly water = new Float64Array(COOLANT_LENGTH)
 
   // --- what the last sweep found
@@ -261,6 +284,9 @@ export class RowMarch {
     this.eps = voidFraction(layout, pitchRatio)
     this.fmin = minimumAreaFraction(layout, pitchRatio)
     this.exponent = condensateFlowExponent(this.staggered)
+    const law = this.inundation === NO_INUNDATION ? 0 : this.exponent
+    this.meanRowFactor =
+      rows > 1 ? this.factors.inundation * Math.min(1, rows ** -law * (1 - law) ** (law - 1)) : 1
     const { foulingOutside, foulingInside, wall } = this.factors
     const outside = s.outsideFouling * foulingOutside
     this.fixedResistance = cooled
@@ -340,20 +366,20 @@ export class RowMarch {
     this.first = true
     this.heed = 1
     this.rowX[0] = cooled ? 0.35 * (this.Ts - s.inletTemperature) : s.wallSubcooling
-    const slope = s.fluid.fixed ? 0 : 1 / saturationSlope(s.fluid, this.Ts)
+    fillVapourLine(s.fluid, this.Ts, this.vapourLines, 0)
     for (let r = 0; r < s.rows; r++) {
       this.rowFlux[r] = 0
       this.rowShare[r] = 0.5
       this.rowTs[r] = this.Ts
-      this.rowSaturation[r] = this.Ts
-      this.rowSlope[r] = slope
       this.rowPressure[r] = this.inletPressure
       this.rowLatent[r] = this.inlet[H_FG]
       this.rowVapourDensity[r] = this.inlet[RHO_V]
       this.rowVapourViscosity[r] = this.inlet[MU_V]
-      this.rowFilmTemperature[r] = Number.NaN
+      this.rowVapourLine[r] = 0
+      this.rowFilmLine[r] = r * FILM_LINE
+      this.filmLines[r * FILM_LINE + LINE_REFERENCE] = Number.NaN
       this.rowOwn[r] = Number.NaN
-      this.rowLossVapour[r] = Number.NaN
+      this.rowLossPerVapour[r] = Number.NaN
     }
     for (let j = 0; j < s.passes; j++) {
       this.passIn[j] = s.inletTemperature
@@ -364,14 +390,21 @@ export class RowMarch {
     }
   }
 
-  /** Guesses the passes' temperatures from the rise of the whole coolant. */
-  protected spreadRise(rise: number): void {
+  /** Guesses the passes' temperatures from the rise of the whole coolant; their walls too, once coefficients are known. */
+  protected spreadRise(rise: number, known = false): void {
     const { passes, inletTemperature } = this.s
     const most = Math.min(rise, 0.98 * (this.Ts - inletTemperature))
     for (let j = 0; j < passes; j++) {
       this.passIn[j] = inletTemperature + (most * j) / passes
-      this.passMean[j] = inletTemperature + (most * (j + 0.5)) / passes
-      this.passWall[j] = this.passMean[j]
+      const mean = inletTemperature + (most * (j + 0.5)) / passes
+      this.passMean[j] = mean
+      this.passWall[j] = mean
+      if (known) {
+        const conductance =
+          Math.PI * this.insideDiameter * this.length * this.passTubes[j] * this.passCoefficient[j]
+        const excess = (most * this.flow * this.passSpecificHeat[j]) / (passes * conductance)
+        this.passWall[j] = Math.min(mean + excess, 0.5 * (mean + this.Ts))
+      }
     }
   }
 
@@ -457,6 +490,19 @@ export class RowMarch {
     const perMetre = Math.PI * Do
     const flowArea = L * this.flowWidth()
     const { weight, eps, exponent, first, heed } = this
+    const filmWindow = first ? FIRST_WINDOW : FILM_WINDOW
+    const lossWindow = Math.max(
+      LOSS_WINDOW,
+      Math.min(
+        WIDEST_LOSS_WINDOW,
+        Math.sqrt((LOSS_SHARE * this.moved * this.inletPressure) / this.vapourDrop),
+      ),
+    )
+    const b2 = (exponent - 1) / 2
+    const b3 = (exponent - 2) / 3
+    const b4 = (exponent - 3) / 4
+    const b5 = (exponent - 4) / 5
+    const b6 = (exponent - 5) / 6
     const {
       rowTubes,
       rowPass,
@@ -472,22 +518,8 @@ export class RowMarch {
       rowCoolant,
       rowVelocity,
     } = this
-    const {
-      rowFilmTemperature,
-      rowDensity,
-      rowSpecificHeat,
-      rowViscosity,
-      rowConductivity,
-      rowLoss,
-      rowLossVapour,
-      rowLossLiquid,
-      rowShare,
-      rowSaturation,
-      rowSlope,
-      rowOwn,
-      rowPower,
-    } = this
-    const { passIn, passTubes, passHeat, passCoefficient, passSpecificHeat } = this
+    const { rowDensity, rowSpecificHeat, rowViscosity, rowConductivity, rowShare, rowOwn, rowPower } = this
+    const { passIn, passHeat, passInner, passRise } = this
     const dropping = this.drop !== NO_DROP && this.inlet[RHO_V] > 0
     const sheared = this.shear !== NO_SHEAR && this.inlet[RHO_V] > 0
     // The common laws are written out below; the others go through `singleFlux` and `rowLaw`.
@@ -505,14 +537,15 @@ export class RowMarch {
     let lowest = Number.POSITIVE_INFINITY
     let most = 0
     this.clamped = false
-    if (cooled) for (let j = 0; j < s.passes; j++) passHeat[j] = 0
+    if (cooled)
+      for (let j = 0; j < s.passes; j++) {
+        passHeat[j] = 0
+        passInner[j] = this.fixedResistance + Do / (this.insideDiameter * this.passCoefficient[j])
+        passRise[j] = (perMetre * L * this.passTubes[j]) / (this.flow * this.passSpecificHeat[j])
+      }
 
     for (let r = 0; r < rows; r++) {
-      if (dropping && !fluid.fixed && pressure !== rowPressure[r]) {
-        const off = pressure - rowPressure[r]
-        if (Math.abs(off) > SAME_PRESSURE * pressure) this.takeVapour(r, pressure)
-        else rowTs[r] = rowSaturation[r] + off * rowSlope[r]
-      }
+      if (dropping && !fluid.fixed && pressure !== rowPressure[r]) this.takeVapour(r, pressure)
       const Ts = rowTs[r]
       const rhoV = rowVapourDensity[r]
       const hfg = rowLatent[r]
@@ -525,7 +558,7 @@ export class RowMarch {
       const velocity = rhoV > 0 ? middle / (rhoV * flowArea * eps) : 0
       let x = rowX[r]
       const reference = Ts - x + weight * x
-      if (!(Math.abs(reference - rowFilmTemperature[r]) < SAME_TEMPERATURE)) this.takeFilm(r, reference)
+      this.takeFilm(r, reference, filmWindow)
       const rho = rowDensity[r]
       const mu = rowViscosity[r]
       const k = rowConductivity[r]
@@ -537,9 +570,9 @@ export class RowMarch {
       let q = 0
       if (cooled) {
         const j = rowPass[r]
-        const inner = this.fixedResistance + Do / (this.insideDiameter * passCoefficient[j])
+        const inner = passInner[j]
+        const g = passRise[j]
         const T = Ts - passIn[j]
-        const g = (perMetre * L * passTubes[j]) / (this.flow * passSpecificHeat[j])
         if (T > 0) {
           const U = 1 / (inner + rowShare[r] * g)
           let low = 0
@@ -560,7 +593,7 @@ export class RowMarch {
                 const gravity = gravityConstant * drive * x
                 const root = Math.sqrt(y * y + gravity)
                 q1 = shearConstant * kD * Math.sqrt(x * (y + root))
-                e = 0.5 + 0.25 * ((2 * y * (root + y) + gravity) / (root * (y + root)))
+                e = 0.75 + (0.25 * y) / root
                 if (shearFactor !== 1) {
                   const still = (1 - shearFactor) * shearConstant * kD * Math.sqrt(x * Math.sqrt(gravity))
                   const flowing = shearFactor * q1
@@ -583,7 +616,8 @@ export class RowMarch {
                 if (d < SMALL_MOVE && d > -SMALL_MOVE)
                   power =
                     rowPower[r] *
-                    (1 + exponent * d * (1 + (exponent - 1) * d * (1 / 2 + ((exponent - 2) / 6) * d)))
+                    (1 +
+                      exponent * d * (1 + b2 * d * (1 + b3 * d * (1 + b4 * d * (1 + b5 * d * (1 + b6 * d))))))
                 else {
                   power = Math.exp(exponent * Math.log(own))
                   rowOwn[r] = own
@@ -630,10 +664,12 @@ export class RowMarch {
           q = U * (T - x)
           dh = hfg + FILM_SUBCOOLING * cp * x
           const star = inner * q + x
-          const w = x / star
-          const p = 1 / (1 - w + w / e)
+          // Power of the difference to the coolant that the flux goes by: 1/(1 − w + w/e) with w = x/star.
+          const under = e * (star - x) + x
+          const p = (e * star) / under
           const rise = q * g
-          const u = rise / (2 * T - rise)
+          const both = 2 * T - rise
+          const u = rise / both
           if (u > 0 && u < 0.16) {
             // `riseShare` as a series about the arithmetic mean, to 1e-11.
             const v = u * u
@@ -651,9 +687,9 @@ export class RowMarch {
                       v *
                       (1 / 42) *
                       (1 + (p + 6) * (p + 7) * v * (1 / 72) * (1 + (p + 8) * (p + 9) * v * (1 / 110)))))
-            const y = (-z * (1 - z * (1 / 2 - z * (1 / 3 - z / 4)))) / p
-            const lowered = -y * (1 + y * (1 / 2 + y * (1 / 6 + y * (1 / 24 + y / 120))))
-            rowShare[r] = 0.5 + lowered / (2 * u)
+            const y = -z * (1 - z * (1 / 2 - z * (1 / 3 - z * (1 / 4)))) * (under / (e * star))
+            const lowered = -y * (1 + y * (1 / 2 + y * (1 / 6 + y * (1 / 24 + y * (1 / 120)))))
+            rowShare[r] = 0.5 + lowered * (both / (rise + rise))
           } else rowShare[r] = riseShare(T, rise, star, p)
           passHeat[j] += q * perMetre * L * tubes
           rowCoolant[r] = Ts - star
@@ -682,16 +718,7 @@ export class RowMarch {
       const wall = Ts - x
       if (wall < lowest) lowest = wall
       if (dropping) {
-        const vapourFlux = middle / flowArea
-        const liquidFlux = (gathered + 0.5 * made) / flowArea
-        const more = vapourFlux / rowLossVapour[r] - 1
-        const wetter = liquidFlux / rowLossLiquid[r] - 1
-        if (more < SAME_FLOW && more > -SAME_FLOW && wetter < SAME_FLOW && wetter > -SAME_FLOW)
-          pressure -= rowLoss[r] * (1 + LOSS_POWER * more)
-        else {
-          this.takeLoss(r, vapourFlux, liquidFlux)
-          pressure -= rowLoss[r]
-        }
+        pressure -= this.rowPressureLoss(r, middle / flowArea, (gathered + 0.5 * made) / flowArea, lossWindow)
         if (pressure < PRESSURE_FLOOR * this.inletPressure) {
           pressure = PRESSURE_FLOOR * this.inletPressure
           this.clamped = true
@@ -709,60 +736,146 @@ export class RowMarch {
     this.moved = (most * this.tubes * perMetre * L) / duty
   }
 
+  /** The vapour's state in row `r` at a pressure, by the line it followed before, that of the row above, or a new one. */
   private takeVapour(r: number, pressure: number): void {
-    const { fluid } = this.s
-    const { vapour } = this
-    const Ts = pressure === this.inletPressure ? this.Ts : saturationTemperature(fluid, pressure)
+    const lines = this.vapourLines
+    let at = this.rowVapourLine[r]
+    let off = pressure / lines[at + LINE_P] - 1
+    if (!(off < VAPOUR_WINDOW && off > -VAPOUR_WINDOW)) {
+      if (r > 0) at = this.rowVapourLine[r - 1]
+      off = pressure / lines[at + LINE_P] - 1
+      if (!(off < VAPOUR_WINDOW && off > -VAPOUR_WINDOW)) {
+        at = r * VAPOUR_LINE
+        fillVapourLine(this.s.fluid, saturationTemperature(this.s.fluid, pressure), lines, at)
+        off = pressure / lines[at + LINE_P] - 1
+      }
+      this.rowVapourLine[r] = at
+    }
+    const d = off * (1 - off * (1 / 2 - off * (1 / 3)))
+    const density = d * (lines[at + LINE_RHO_V + 1] + d * lines[at + LINE_RHO_V + 2])
     this.rowPressure[r] = pressure
-    this.rowTs[r] = Ts
-    this.rowSaturation[r] = Ts
-    fillVapour(fluid, Ts, vapour)
-    this.rowSlope[r] = 1 / saturationSlope(fluid, Ts)
-    this.rowLatent[r] = vapour[H_FG]
-    this.rowVapourDensity[r] = vapour[RHO_V]
-    this.rowVapourViscosity[r] = vapour[MU_V]
-    this.rowLossVapour[r] = Number.NaN
+    this.rowTs[r] = lines[at + LINE_T] + d * (lines[at + LINE_T + 1] + d * lines[at + LINE_T + 2])
+    this.rowVapourDensity[r] =
+      lines[at + LINE_RHO_V] * (1 + density * (1 + density * (1 / 2 + density * (1 / 6))))
+    this.rowLatent[r] =
+      lines[at + LINE_H_FG] + d * (lines[at + LINE_H_FG + 1] + d * lines[at + LINE_H_FG + 2])
+    this.rowVapourViscosity[r] =
+      lines[at + LINE_MU_V] + d * (lines[at + LINE_MU_V + 1] + d * lines[at + LINE_MU_V + 2])
   }
 
-  private takeFilm(r: number, reference: number): void {
-    const { liquid } = this
-    fillFilm(this.s.fluid, reference, liquid)
-    this.rowFilmTemperature[r] = reference
-    this.rowDensity[r] = liquid[RHO_L]
-    this.rowSpecificHeat[r] = liquid[CP_L]
-    this.rowViscosity[r] = liquid[MU_L]
-    this.rowConductivity[r] = liquid[K_L]
-    this.rowTension[r] = liquid[SIGMA]
+  /** Film properties of row `r`, by the line it followed before, that of the row above, or a new one. */
+  private takeFilm(r: number, reference: number, window: number): void {
+    const lines = this.filmLines
+    let at = this.rowFilmLine[r]
+    let off = reference - lines[at + LINE_REFERENCE]
+    if (!(off < window && off > -window)) {
+      if (r > 0) at = this.rowFilmLine[r - 1]
+      off = reference - lines[at + LINE_REFERENCE]
+      if (!(off < window && off > -window)) {
+        at = r * FILM_LINE
+        fillFilmLine(this.s.fluid, reference, lines, at)
+        off = 0
+      }
+      this.rowFilmLine[r] = at
+    }
+    this.rowDensity[r] = lines[at + LINE_RHO_L] + off * lines[at + LINE_RHO_L + 1]
+    this.rowSpecificHeat[r] = lines[at + LINE_CP_L] + off * lines[at + LINE_CP_L + 1]
+    this.rowViscosity[r] = lines[at + LINE_MU_L] + off * lines[at + LINE_MU_L + 1]
+    this.rowConductivity[r] = lines[at + LINE_K_L] + off * lines[at + LINE_K_L + 1]
     if (this.inundation === DRAINAGE_MODE) {
-      const ga = galileo(liquid[RHO_L], liquid[SIGMA], liquid[MU_L])
+      const tension = surfaceTension(this.s.fluid, reference)
+      const ga = galileo(this.rowDensity[r], tension, this.rowViscosity[r])
       this.rowColumnLine[r] = columnToColumnSheet(ga)
       this.rowSheetLine[r] = columnSheetToSheet(ga)
     }
   }
 
   /** Pressure loss of a row from its mean vapour flow and what drains through it, kg/s per m² of frontal area. */
-  private takeLoss(r: number, vapourFlux: number, liquidFlux: number): void {
+  private rowPressureLoss(r: number, vapourFlux: number, liquidFlux: number, window: number): number {
     const Do = this.s.outsideDiameter
     const rhoV = this.rowVapourDensity[r]
+    const more = vapourFlux * this.rowLossPerVapour[r] - 1
+    const wetter = liquidFlux * this.rowLossPerLiquid[r] - 1
+    const denser = rhoV * this.rowLossPerDensity[r] - 1
+    if (Math.max(Math.abs(more), Math.abs(wetter), Math.abs(denser)) < window) {
+      const a = this.rowLossByVapour[r] * more
+      const b = this.rowLossByLiquid[r] * wetter
+      const c = -this.rowLossByDensity[r] * denser
+      const sum = a + b + c
+      return this.rowLoss[r] * (1 + sum + 0.5 * (sum * sum - a * more - b * wetter - c * denser))
+    }
     const throat = vapourFlux / (rhoV * this.fmin)
-    let loss = rowPressureDrop(this.lossOf((rhoV * throat * Do) / this.rowVapourViscosity[r]), rhoV, throat)
+    this.takeLossOf((rhoV * throat * Do) / this.rowVapourViscosity[r])
+    let loss = rowPressureDrop(this.loss[XI], rhoV, throat)
+    let byVapour = 2 + this.loss[XI_POWER]
+    let byLiquid = 0
+    let byDensity = 1
     if (this.twoPhase) {
       const rhoL = this.rowDensity[r]
       const slow = liquidFlux / (rhoL * this.fmin)
-      const re = (rhoL * slow * Do) / this.rowViscosity[r]
-      loss = this.factors.twoPhase * ishihara(loss, rowPressureDrop(this.lossOf(re), rhoL, slow))
+      this.takeLossOf((rhoL * slow * Do) / this.rowViscosity[r])
+      const wet = rowPressureDrop(this.loss[XI], rhoL, slow)
+      const both = ishihara(loss, wet)
+      const shared = 0.5 * (both - loss - wet)
+      byDensity = (loss + shared) / both
+      byVapour *= byDensity
+      byLiquid = ((2 + this.loss[XI_POWER]) * (wet + shared)) / both
+      loss = this.factors.twoPhase * both
     }
-    this.rowLoss[r] = this.factors.vapourDrop * loss
-    this.rowLossVapour[r] = vapourFlux
-    this.rowLossLiquid[r] = liquidFlux
+    loss *= this.factors.vapourDrop
+    this.rowLoss[r] = loss
+    this.rowLossPerVapour[r] = 1 / vapourFlux
+    this.rowLossPerLiquid[r] = 1 / liquidFlux
+    this.rowLossPerDensity[r] = 1 / rhoV
+    this.rowLossByDensity[r] = byDensity
+    this.rowLossByVapour[r] = byVapour
+    this.rowLossByLiquid[r] = byLiquid
+    return loss
   }
 
-  private lossOf(re: number): number {
-    if (!(re > 0)) return 0
-    if (this.drop === 0)
-      return this.staggered
-        ? gaddisStaggeredRow(re, this.lossLaminar, this.lossTurbulent, this.lossEnd)
-        : gaddisInlineRow(re, this.lossLaminar, this.lossTurbulent, this.lossEnd, (0.1 * this.b) / this.a)
+  /** The rows' pressure losses taken afresh at what they came to: a sweep may have followed them from further off. */
+  protected closePressure(): void {
+    if (this.drop === NO_DROP || !(this.inlet[RHO_V] > 0)) return
+    const flowArea = this.length * this.flowWidth()
+    const floor = PRESSURE_FLOOR * this.inletPressure
+    let pressure = this.inletPressure
+    let remaining = this.inletVapour
+    let gathered = 0
+    for (let r = 0; r < this.s.rows; r++) {
+      const made = this.rowCondensate[r]
+      const middle = Math.max(0, remaining - 0.5 * made)
+      pressure -= this.rowPressureLoss(r, middle / flowArea, (gathered + 0.5 * made) / flowArea, 0)
+      pressure = Math.max(floor, pressure)
+      gathered += made
+      remaining = Math.max(0, remaining - made)
+    }
+    this.vapourDrop = this.inletPressure - pressure
+  }
+
+  /** Loss coefficient of a row and the power of the Reynolds number that it goes by, into `loss`. */
+  private takeLossOf(re: number): void {
+    const { loss, a, b } = this
+    if (!(re > 0)) {
+      loss[XI] = 0
+      loss[XI_POWER] = 0
+    } else if (this.drop === 0)
+      fillGaddisRow(
+        re,
+        this.lossLaminar,
+        this.lossTurbulent,
+        this.lossEnd,
+        this.staggered,
+        (0.1 * b) / a,
+        loss,
+      )
+    else {
+      const xi = this.bankLoss(re)
+      loss[XI] = xi
+      loss[XI_POWER] = (this.bankLoss(1.000001 * re) / xi - 1) * 1e6
+    }
+  }
+
+  private bankLoss(re: number): number {
     return this.drop === 1
       ? zukauskas(re, this.a, this.b, this.staggered)
       : jakob(re, this.a, this.b, this.staggered)
@@ -836,13 +949,13 @@ export class RowMarch {
     return this.singleFlux(this.rowX[row], row, this.shear === NO_SHEAR ? 0 : this.rowVelocity[row])
   }
 
-  /** Overall coefficient of the first row in still vapour, lowered for the rows below: what a point's guesses rest on. */
-  protected guessedCoefficient(): number {
-    const x = 0.35 * (this.Ts - this.s.inletTemperature)
-    this.takeFilm(0, this.Ts - x)
-    const inner =
-      this.fixedResistance + this.s.outsideDiameter / (this.insideDiameter * this.passCoefficient[0])
-    return 1 / (inner + x / (0.7 * this.singleFlux(x, 0, 0)))
+  /** Film coefficient of a row that stands for all, at subcooling `x` with half of the vapour passing: what guesses rest on. */
+  protected meanRowCoefficient(x: number, vapour: number): number {
+    const rhoV = this.inlet[RHO_V]
+    this.takeFilm(0, this.Ts - x + this.weight * x, FIRST_WINDOW)
+    const sheared = this.shear !== NO_SHEAR && rhoV > 0
+    const velocity = sheared ? (0.5 * vapour) / (rhoV * this.length * this.flowWidth() * this.eps) : 0
+    return (this.meanRowFactor * this.singleFlux(x, 0, velocity)) / x
   }
 
   /** Re~ of a row: liquid properties, vapour velocity. */
@@ -872,6 +985,12 @@ export class RowMarch {
     return Number.isFinite(speed) ? speed : Number.POSITIVE_INFINITY
   }
 
+  /** Heat of pass `j` if it started at `T`: one that starts warmer takes up less, in proportion to its driving difference. */
+  private foreseenHeat(j: number, T: number): number {
+    const difference = Math.max(1e-9, this.Ts - this.passIn[j])
+    return this.passHeat[j] * Math.max(0, 1 - (T - this.passIn[j]) / difference)
+  }
+
   /**
    * Carries the heat of a sweep to the passes' inlets, means and wall temperatures; returns the largest change, K.
    * With `total` given, the passes share that heat as they shared the sweep's.
@@ -880,16 +999,28 @@ export class RowMarch {
     const { s } = this
     const coolant = s.coolant as CoolantModel
     const perMetre = Math.PI * this.insideDiameter * this.length
-    const scale = total / this.duty
+    let scale = 1
+    // Twice: what a pass takes up moves the start of the next.
+    if (!Number.isNaN(total)) {
+      scale = total / this.duty
+      for (let n = 0; n < 2; n++) {
+        let T = s.inletTemperature
+        let sum = 0
+        for (let j = 0; j < s.passes; j++) {
+          const heat = this.foreseenHeat(j, T)
+          sum += heat
+          T += (scale * heat) / (this.flow * this.passSpecificHeat[j])
+        }
+        scale = total / sum
+      }
+    }
     let T = s.inletTemperature
     let change = 0
     for (let j = 0; j < s.passes; j++) {
       T = this.passIn[j] + this.heed * (T - this.passIn[j])
       const moved = T - this.passIn[j]
       if (Math.abs(moved) > change) change = Math.abs(moved)
-      // A pass that starts warmer takes up less: corrected in proportion to its driving difference.
-      const difference = Math.max(1e-9, this.Ts - this.passIn[j])
-      const heat = this.passHeat[j] * (Number.isNaN(total) ? Math.max(0, 1 - moved / difference) : scale)
+      const heat = scale * this.foreseenHeat(j, T)
       const rise = heat / (this.flow * this.passSpecificHeat[j])
       this.passIn[j] = T
       const mean = T + 0.5 * rise

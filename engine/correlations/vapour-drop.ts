@@ -37,39 +37,44 @@ export function diagonalGoverns(a: number, b: number): boolean {
   return b < 0.5 * Math.sqrt(2 * a + 1)
 }
 
-/**
- * Gaddis and Gnielinski, staggered loss per row from the constants of the bank:
- * xi = f_al/Re + (f_at/Re^0.25 + fn)(1 − exp(−(Re + 200)/1000)).
- */
-export function gaddisStaggeredRow(re: number, laminar: number, turbulent: number, endLoss: number): number {
-  return laminar / re + (turbulent / Math.sqrt(Math.sqrt(re)) + endLoss) * (1 - Math.exp(-(re + 200) / 1000))
-}
+/** Loss coefficient of a row and d ln xi/d ln Re, as `fillGaddisRow` leaves them. */
+export const XI = 0
+export const XI_POWER = 1
 
 /**
- * Gaddis and Gnielinski, in-line loss per row from the constants of the bank; `exponent` is 0.1 b/a:
- * xi = f_al/Re + (f_ati/Re^(0.1 b/a) + fn)(1 − exp(−(Re + 1000)/2000)).
+ * Gaddis and Gnielinski, loss per row from the constants of the bank, and the power of Re that it goes by:
+ * staggered xi = f_al/Re + (f_at/Re^0.25 + fn)(1 − exp(−(Re + 200)/1000)),
+ * in-line xi = f_al/Re + (f_ati/Re^n + fn)(1 − exp(−(Re + 1000)/2000)) with n = 0.1 b/a.
  */
-export function gaddisInlineRow(
+export function fillGaddisRow(
   re: number,
   laminar: number,
   turbulent: number,
   endLoss: number,
-  exponent: number,
-): number {
-  return (
-    laminar / re +
-    (turbulent * Math.exp(-exponent * Math.log(re)) + endLoss) * (1 - Math.exp(-(re + 1000) / 2000))
-  )
+  staggered: boolean,
+  inlineExponent: number,
+  out: Float64Array,
+): void {
+  const beyond = staggered ? (re + 200) / 1000 : (re + 1000) / 2000
+  const missing = beyond < 40 ? Math.exp(-beyond) : 0
+  const exponent = staggered ? 0.25 : inlineExponent
+  const falling = turbulent * (staggered ? 1 / Math.sqrt(Math.sqrt(re)) : Math.exp(-exponent * Math.log(re)))
+  const viscous = laminar / re
+  const xi = viscous + (falling + endLoss) * (1 - missing)
+  const rising = (falling + endLoss) * missing * (re / (staggered ? 1000 : 2000))
+  out[XI] = xi
+  out[XI_POWER] = (rising - exponent * falling * (1 - missing) - viscous) / xi
 }
+
+const row = new Float64Array(2)
 
 /** Gaddis and Gnielinski, loss coefficient of one row on ρ U_max²/2; Re with U_max, `rows` of the whole bank. */
 export function gaddisGnielinski(re: number, a: number, b: number, staggered: boolean, rows: number): number {
   const laminar = gaddisLaminar(a, b, staggered)
   const turbulent = gaddisTurbulent(a, b, staggered)
   const endLoss = gaddisEndLoss(a, b, staggered, rows)
-  return staggered
-    ? gaddisStaggeredRow(re, laminar, turbulent, endLoss)
-    : gaddisInlineRow(re, laminar, turbulent, endLoss, (0.1 * b) / a)
+  fillGaddisRow(re, laminar, turbulent, endLoss, staggered, (0.1 * b) / a, row)
+  return row[XI]
 }
 
 /** Jakob 1938, loss per row: 4 [0.25 + 0.118/(a−1)^1.08] Re^−0.16 staggered, 4 [0.044 + 0.08 b/(a−1)^(0.43+1.13/b)] Re^−0.15 in-line. */

@@ -1,6 +1,7 @@
 /** Saturation properties of the library's fluids, of coolants, of constants and of uploads. */
 export * from './fixed.ts'
 export * from './library.ts'
+export * from './local.ts'
 export {
   COOLANT_CP,
   COOLANT_K,
