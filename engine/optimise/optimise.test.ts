@@ -4,6 +4,7 @@ import { describe, expect, it } from 'vitest'
 import { KEY_RESULT_INDEX, KEY_RESULTS } from '#engine/bundle/key-results.ts'
 import { evaluateRange } from '#engine/sweep/evaluate-range.ts'
 import { planSweep } from '#engine/sweep/plan.ts'
+import { uniform } from '#engine/sweep/random.ts'
 import { parseStudy, type Study } from '#engine/sweep/study.ts'
 import { createOptimiser, optimise } from './optimise.ts'
 import type { SearchState } from './search.ts'
@@ -126,6 +127,35 @@ const PROBLEMS: [string, Study, Record<string, number>][] = [
     }),
     { 'drive.massFlow': 301, saturationTemperature: 21 },
   ],
+  [
+    'velocity, pitch and diameter at once',
+    study('low-pressure-steam-condenser', (raw) => {
+      raw.sweep.variables = [
+        { path: 'bundle.layout', values: ['triangular60'] },
+        { path: 'bundle.rows', values: [14, 18] },
+        { path: 'bundle.pitchRatio', from: 1.25, to: 1.6, count: 2 },
+        { path: 'drive.velocity', from: 1.4, to: 2.6, count: 2 },
+        { path: 'tube.outsideDiameter', from: 0.019, to: 0.03, count: 2 },
+      ]
+      raw.limits.coolantPressureDrop = { max: '10 kPa' }
+      raw.optimise = { variables: [{ path: 'tube.outsideDiameter', from: 0.019, to: 0.03 }] }
+    }),
+    { 'bundle.pitchRatio': 18, 'drive.velocity': 18, 'tube.outsideDiameter': 18 },
+  ],
+  [
+    'tubes chosen from the velocity',
+    study('ammonia-condenser', (raw) => {
+      raw.case.drive.massFlow = 12
+      raw.case.bundle.tubesPerRow = 'auto'
+      raw.sweep.variables = [
+        { path: 'bundle.rows', values: [6, 8] },
+        { path: 'bundle.passes', values: [2, 4] },
+        { path: 'drive.velocity', from: 0.6, to: 2.4, count: 2 },
+      ]
+      raw.limits = { coolantPressureDrop: { max: 20_000 } }
+    }),
+    { 'drive.velocity': 601 },
+  ],
 ]
 
 describe('the optimum of a study', () => {
@@ -143,6 +173,36 @@ describe('the optimum of a study', () => {
     }[of.objective]
     expect((own as number) / optimum.objective).toBeCloseTo(1, 9)
     if (optimum.rerated !== null) expect(Math.abs(optimum.rerated)).toBeLessThan(1e-7)
+  })
+
+  it.each(PROBLEMS)('%s: nothing tried is under its bound', (_, of) => {
+    const { problem } = createOptimiser(of)
+    let tried = 0
+    for (let k = 0; k < problem.combinations; k++) {
+      const bound = problem.bound(k)
+      const { trial } = problem.open(k)
+      for (let i = 0; i < 40; i++) {
+        const x = problem.axes.map(({ low, high }, j) => low * (high / low) ** uniform(9, j, 40 * k + i))
+        const found = trial(x)
+        if (found === null || !found.excess.every((over) => over <= 0)) continue
+        tried++
+        expect(bound).not.toBe(null)
+        expect(found.objective).toBeGreaterThanOrEqual((bound as number) * (1 - 1e-9))
+      }
+    }
+    expect(tried).toBeGreaterThan(0)
+  })
+
+  it('of one value each is that one point, as the sweep has it', () => {
+    const single = study('ammonia-condenser', (raw) => {
+      raw.sweep.variables = [
+        { path: 'bundle.rows', values: [8] },
+        { path: 'drive.velocity', values: [1.5] },
+      ]
+    })
+    const optimum = optimise(single)
+    expect(optimum?.objective).toBe(exhaustive(single))
+    expect(optimum?.searched).toMatchObject({ combinations: 1 })
   })
 
   it('is the same in any order, by other workers and after a stop', () => {

@@ -78,6 +78,7 @@ const LENGTH = KEY_RESULT_INDEX.tubeLength
 const DUTY = KEY_RESULT_INDEX.duty
 const WALL_NOT_HELD = OUTCOMES.findIndex(({ code }) => code === 'noVelocityHoldsWall')
 const QUANTILES = [0.01, 0.05, 0.1, 0.25, 0.5, 0.75, 0.9, 0.95, 0.99]
+const NOTHING = 1e-6
 /** Relative room within which a length counts as enough: what the solver leaves open. */
 const ENOUGH = 1e-8
 
@@ -176,7 +177,8 @@ export function bandOf(kase: Case, options: BandOptions = {}): Band | null {
       ...group,
       elasticity: Number.isFinite(elasticity) ? elasticity : null,
       firstOrder: formula[group.id] ?? null,
-      share: shares[j],
+      // What a factor that moves nothing shares with the result is chance.
+      share: Math.abs(elasticity * group.sigma) > NOTHING ? shares[j] : 0,
       shareFirstOrder: 0,
     }
   })
