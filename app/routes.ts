@@ -24,6 +24,7 @@ export default [
       route('run', 'routes/studies/run.tsx'),
       route('explore', 'routes/studies/explore.tsx'),
       route('decide', 'routes/studies/decide.tsx'),
+      route('optimum', 'routes/studies/optimum.tsx'),
       route('points/:point', 'routes/studies/point.tsx'),
     ]),
 

@@ -49,6 +49,7 @@ export const rules: Record<string, UrlRules> = {
   '/studies/:studyId/run': { loader: readStudy, action: runStudy },
   '/studies/:studyId/explore': { loader: readStudy },
   '/studies/:studyId/decide': { loader: readStudy, action: readStudy },
+  '/studies/:studyId/optimum': { loader: readStudy, action: runStudy },
   '/studies/:studyId/views': { action: readStudy, resource: true },
   '/studies/:studyId/points/:point': { loader: readStudy },
   '/studies/:studyId/preview': { action: editStudy, resource: true },

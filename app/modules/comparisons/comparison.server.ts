@@ -6,6 +6,7 @@ import { aggregates, paretoFront, pointSheet, refinedBest } from '#app/modules/p
 import { planOfRevision } from '#app/modules/runs/run-plan.server.ts'
 import { listRuns } from '#app/modules/runs/runs.server.ts'
 import { getStudy } from '#app/modules/studies/studies.server.ts'
+import type { Band } from '#engine/uncertainty/bands.ts'
 
 export const MOST_COMPARED = 6
 
@@ -22,11 +23,12 @@ export async function candidateOf(studyId: string) {
   const best = run.bestPoint === null ? null : await pointSheet(run.id, run.bestPoint)
   const sheetOf = (
     point: number | 'refined',
-    from: { case: typeof plan.study.case; result: SheetResult },
+    from: { case: typeof plan.study.case; result: SheetResult; band: Band | null },
   ) => ({
     point,
     case: from.case,
     result: from.result,
+    band: from.band,
     names: caseNames(from.case),
   })
   return {

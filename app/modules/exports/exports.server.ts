@@ -24,8 +24,8 @@ async function reportOfRun(runId: string): Promise<{ name: string; report: Study
   ])
   const best: ReportedPoint[] = []
   if (run.bestPoint !== null) {
-    const { case: kase, result } = await pointSheet(runId, run.bestPoint)
-    best.push({ label: 'Best point', point: run.bestPoint, case: kase, result })
+    const { case: kase, result, band } = await pointSheet(runId, run.bestPoint)
+    best.push({ label: 'Best point', point: run.bestPoint, case: kase, result, band })
     const refined = await refinedBest(runId)
     if (refined?.improved === true)
       best.push({
@@ -33,6 +33,7 @@ async function reportOfRun(runId: string): Promise<{ name: string; report: Study
         point: null,
         case: refined.case,
         result: refined.result,
+        band: refined.band,
         statement: typeof refined.statement === 'string' ? refined.statement : undefined,
       })
   }

@@ -6,12 +6,15 @@ import type { Result } from '#engine/result.ts'
 import { LIMITS } from '#engine/sweep/limits.ts'
 import { pointInputs, type SweepPlan } from '#engine/sweep/plan.ts'
 import type { SweptValue } from '#engine/sweep/study.ts'
+import type { Band } from '#engine/uncertainty/bands.ts'
 
 export type ReportedPoint = {
   label: string
   point: number | null
   case: Case
   result: Result
+  /** How sure the area or duty is, where it was found out. */
+  band?: Band | null
   statement?: string
 }
 

@@ -9,6 +9,7 @@ import { findFluid } from '#engine/fluids/index.ts'
 import type { Result } from '#engine/result.ts'
 import { LIMITS } from '#engine/sweep/limits.ts'
 import { OBJECTIVE_LABELS } from '#engine/sweep/objective.ts'
+import type { Band } from '#engine/uncertainty/bands.ts'
 import {
   CAUTIONS,
   type Cell,
@@ -65,11 +66,12 @@ function summary(book: ExcelJS.stream.xlsx.WorkbookWriter, report: StudyReport):
   add(sheet, ['Points', report.points])
   add(sheet, ['Least wanted', OBJECTIVE_LABELS[plan.study.objective]])
   if (best.length === 0) add(sheet, ['Best point', 'No point meets every limit.'])
-  for (const { label, point, result, statement } of best) {
+  for (const { label, point, result, statement, band } of best) {
     add(sheet, [])
     add(sheet, [label, point === null ? '' : `point ${point}`], bold)
     if (statement) add(sheet, ['', statement])
     for (const [name, value] of headline(result)) add(sheet, [name, value])
+    if (band) for (const [name, value] of bandCells(band)) add(sheet, [name, value])
   }
   add(sheet, [])
   add(sheet, ['Cautions'], bold)
@@ -87,6 +89,19 @@ function headline(result: Result): [string, Cell][] {
     ['coolant_pressure_drop_pa', result.coolant?.pressureDrop ?? null],
     ['vapour_pressure_drop_pa', result.vapour.pressureDrop],
     ['tube_count', result.tubeCount],
+  ]
+}
+
+/** Quantiles under the published scatter of the methods. */
+function bandCells(band: Band): [string, Cell][] {
+  const name = band.quantity === 'outsideArea' ? 'outside_area_m2' : 'duty_w'
+  return [
+    [`${name}_p10`, band.p10],
+    [`${name}_p50`, band.p50],
+    [`${name}_p90`, band.p90],
+    ['chance_that_length_meets_duty', band.meets],
+    ['band_samples', band.samples],
+    ['band_seed', band.seed],
   ]
 }
 

@@ -6,6 +6,7 @@ import type { SheetCard } from '#app/modules/explore/method-cards.server.ts'
 import type { Case } from '#engine/case.ts'
 import type { Result } from '#engine/result.ts'
 import type { Objective } from '#engine/sweep/objective.ts'
+import type { Band } from '#engine/uncertainty/bands.ts'
 
 export type Signed = { personId: string; name: string; email: string; at: string }
 
@@ -29,6 +30,8 @@ export type RecordContent = {
   case: Case
   names: CaseNames
   result: Result
+  /** How sure the area was said to be; null where it was not found out. */
+  band: Band | null
   standings: LimitStanding[]
   methods: SheetCard[]
   asked: Signed & { note: string }

@@ -80,6 +80,7 @@ export async function keepRecord(
     case: chosen.case,
     names: caseNames(chosen.case),
     result: chosen.result,
+    band: chosen.band,
     standings: limitStandings(plan.study.limits, (id) => keyResultOf(chosen.result, id)),
     methods: sheetCards(chosen.case, chosen.result),
     asked: { ...(await signedBy(accepted.askedBy, accepted.askedAt)), note: accepted.note },

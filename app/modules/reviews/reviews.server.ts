@@ -70,6 +70,7 @@ export async function askReview(
           engineVersion: chosen.result.engineVersion,
           case: chosen.case as unknown as Record<string, unknown>,
           result: chosen.result as unknown as Record<string, unknown>,
+          band: chosen.band as unknown as Record<string, unknown> | null,
         })
         .onConflictDoNothing()
     await recordAct(tx, acting, {

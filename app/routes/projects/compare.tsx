@@ -4,6 +4,7 @@ import { data, Form, Link, redirect } from 'react-router'
 import { BundleThumbnail } from '#app/components/bundle-drawing/bundle-drawing.tsx'
 import { bundleGeometry } from '#app/components/bundle-drawing/layout.ts'
 import { LineChart } from '#app/components/charts/line-chart.tsx'
+import { BandLine } from '#app/components/sheet/band.tsx'
 import { Given } from '#app/components/sheet/entries.tsx'
 import { LimitBounds } from '#app/components/sheet/limit-notes.tsx'
 import { Said } from '#app/components/sheet/said.tsx'
@@ -397,6 +398,12 @@ function SideBySide({ studies }: { studies: Compared[] }) {
                 </span>
               )
             })}
+          />
+          <Row
+            label="In eight of ten cases"
+            cells={points.map((point, i) =>
+              point?.band ? <BandLine key={studies[i].id} band={point.band} /> : null,
+            )}
           />
           <Row
             label="Candidate"

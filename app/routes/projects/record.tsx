@@ -1,5 +1,6 @@
 // An accepted record: what was accepted, by whom and why, as it was. Printable, and unchanged by anything later.
 import { data, Form, Link } from 'react-router'
+import { BandTable } from '#app/components/sheet/band.tsx'
 import { PrintButton } from '#app/components/sheet/print-button.tsx'
 import { Said } from '#app/components/sheet/said.tsx'
 import { Button } from '#app/components/ui/button.tsx'
@@ -129,6 +130,11 @@ export default function Record({ loaderData, actionData }: Route.ComponentProps)
         cards={content.methods}
         name={name}
       />
+      {content.band ? (
+        <Sheet title="How sure the number was">
+          <BandTable band={content.band} />
+        </Sheet>
+      ) : null}
       <Sheet title="Where it comes from">
         <dl className="grid gap-x-6 gap-y-1 sm:grid-cols-[max-content_minmax(0,1fr)] [&_dd]:[overflow-wrap:anywhere] [&_dt]:text-soft">
           <dt>Study</dt>

@@ -3,6 +3,7 @@
 import { data, Form, Link, redirect } from 'react-router'
 import { BundleDrawing } from '#app/components/bundle-drawing/bundle-drawing.tsx'
 import { bundleGeometry } from '#app/components/bundle-drawing/layout.ts'
+import { BandLine } from '#app/components/sheet/band.tsx'
 import { LimitNotes } from '#app/components/sheet/limit-notes.tsx'
 import { Said } from '#app/components/sheet/said.tsx'
 import { Comments } from '#app/components/study/comments.tsx'
@@ -219,24 +220,34 @@ function DecideOnRun({
         }
         reason={
           chosen ? (
-            refined?.improved ? (
-              <>
-                Refined from point {<Digits>{best?.point ?? 0}</Digits>} under the same limits, with whole
-                tubes.
-              </>
-            ) : (
-              `${OBJECTIVE_LABELS[objective]} is least at this point of the sweep.`
-            )
+            <>
+              {refined?.improved ? (
+                <>
+                  Refined from point {<Digits>{best?.point ?? 0}</Digits>} under the same limits, with whole
+                  tubes.
+                </>
+              ) : (
+                `${OBJECTIVE_LABELS[objective]} is least at this point of the sweep.`
+              )}{' '}
+              {chosen.band ? (
+                <>
+                  Under the methods’ scatter: <BandLine band={chosen.band} />.
+                </>
+              ) : null}
+            </>
           ) : (
             'Explore shows which limits stop the points, and the closest.'
           )
         }
         acts={
-          <LinkButton
-            to={`/studies/${candidate.id}/explore?run=${run.id}${chosen ? `&point=${chosen.point}` : ''}`}
-          >
-            Look at it in Explore
-          </LinkButton>
+          <>
+            <LinkButton
+              to={`/studies/${candidate.id}/explore?run=${run.id}${chosen ? `&point=${chosen.point}` : ''}`}
+            >
+              Look at it in Explore
+            </LinkButton>
+            <LinkButton to={`/studies/${candidate.id}/optimum`}>The optimum, and why</LinkButton>
+          </>
         }
       />
       {chosen ? (

@@ -1,4 +1,5 @@
 // One point’s calculation sheet, printable: its body, and what the present engine finds otherwise.
+import { BandTable } from '#app/components/sheet/band.tsx'
 import { PrintButton } from '#app/components/sheet/print-button.tsx'
 import { Said } from '#app/components/sheet/said.tsx'
 import { LinkButton } from '#app/components/ui/button.tsx'
@@ -75,6 +76,11 @@ function SheetOfPoint({ page, studyId }: { page: SheetPage; studyId: string }) {
         cards={cards}
         name={pointName(sheet.point)}
       />
+      {sheet.band ? (
+        <Sheet title="How sure the number is">
+          <BandTable band={sheet.band} />
+        </Sheet>
+      ) : null}
       <Differences page={page} />
       <p className="text-note text-soft">
         {pointName(sheet.point)} of run {run.id}, revision {run.revision} of “{page.studyName}”, planned{' '}
