@@ -161,6 +161,8 @@ export function parseStudy(input: unknown): ParsedStudy {
       }
     }
     if (conflicts.length === 0) valueFaults(filled.input, read, parsedCase !== null, faults, notes)
+    if (optimise && faults.length === 0)
+      boundFaults(raw.case, filled.input, variables, optimise.variables, faults)
   }
 
   const samples = typeof sweep.samples === 'number' ? sweep.samples : undefined
@@ -681,6 +683,31 @@ function valueFaults(
         )
       }
   })
+}
+
+/** Checks the bounds of `optimise.variables` as if the sweep had them too. */
+function boundFaults(
+  rawCase: Raw,
+  filled: Raw,
+  swept: readonly StudyVariable[],
+  bounded: readonly { path: string; from: number; to: number }[],
+  faults: Fault[],
+): void {
+  const others = swept.filter((variable) => !bounded.some(({ path }) => path === variablePath(variable)))
+  const read: StudyVariable[] = [...others, ...bounded.map((variable) => ({ ...variable, count: 2 }))]
+  const found = conflictFaults(rawCase, read)
+  duplicateFaults(read, found)
+  if (found.length === 0) valueFaults(filled, read, false, found, [])
+  const named = (text: string) =>
+    text.replace(/\bsweep\.variables\.(\d+)/g, (_, k: string) =>
+      Number(k) < others.length
+        ? `sweep.variables.${swept.indexOf(others[Number(k)])}`
+        : `optimise.variables.${Number(k) - others.length}`,
+    )
+  for (const fault of found) {
+    const path = named(fault.path)
+    if (path.startsWith('optimise.')) faults.push({ ...fault, path, problem: named(fault.problem) })
+  }
 }
 
 function readLimits(raw: unknown, faults: Fault[]): Limits {
