@@ -1,11 +1,14 @@
 // What a point costs: the reference workload beside C, and the engine's own named cases.
-import { execFileSync } from 'node:child_process'
+import { execFileSync, spawnSync } from 'node:child_process'
 import { mkdtempSync, rmSync } from 'node:fs'
 import { tmpdir } from 'node:os'
 import { join } from 'node:path'
 import { fileURLToPath } from 'node:url'
+import { KEY_RESULT_INDEX } from '#engine/bundle/key-results.ts'
+import { coolantModel, fluidModel } from '#engine/fluids/index.ts'
+import { findMaterial } from '#engine/materials.ts'
 import { COLUMNS, evaluateRange } from '#engine/sweep/evaluate-range.ts'
-import { planSweep, type SweepPlan } from '#engine/sweep/plan.ts'
+import { planSweep, pointCase, type SweepPlan } from '#engine/sweep/plan.ts'
 import { parseStudy } from '#engine/sweep/study.ts'
 import { heaviestStudy, rateStudy, sizeStudy } from './cases.ts'
 import { compileKernel, KERNEL_RESULTS, kernelInputs } from './kernel.ts'
@@ -16,10 +19,11 @@ const REPEATS = 9
 export function benchEngine() {
   const c = compileReference()
   try {
+    const rateCase = rate(rateStudy())
     return {
       workloadB: workload('B', c),
       workloadF: workload('F', c),
-      rateCase: { ...rate(rateStudy()), ratioToPython: null },
+      rateCase: { ...rateCase, ratioToPython: ratioToPython(rateCase.pointsPerSecondPerCore) },
       sizeCase: rate(sizeStudy()),
       heaviestCase: rate(heaviestStudy()),
     }
@@ -69,6 +73,62 @@ function workload(mode: 'B' | 'F', c: Reference | null) {
 export function planOf(definition: unknown): SweepPlan | null {
   const parsed = parseStudy(definition)
   return parsed.ok ? planSweep(parsed.study) : null
+}
+
+/** Points of the rate case that plain Python is given. */
+const PYTHON_POINTS = 60
+
+/** How many times as long plain Python takes for a point, null without python3; refused when the two disagree by 0.1 %. */
+function ratioToPython(pointsPerSecond: number | null): number | null {
+  const plan = planOf(rateStudy())
+  if (!plan || pointsPerSecond === null) return null
+  const every = Math.floor(plan.points / PYTHON_POINTS)
+  const chosen = Array.from({ length: PYTHON_POINTS }, (_, k) => k * every)
+  const points = chosen.map((i) => {
+    const { saturationTemperature, drive, tube, bundle } = pointCase(plan, i)
+    if (drive.kind !== 'coolant') throw new Error('the rate case is driven by its coolant')
+    return {
+      saturationTemperature,
+      inletTemperature: drive.inletTemperature,
+      velocity: drive.velocity,
+      insideFouling: drive.foulingResistance,
+      outsideFouling: tube.outsideFoulingResistance,
+      outsideDiameter: tube.outsideDiameter,
+      wallThickness: tube.wallThickness,
+      conductivity: findMaterial(tube.material as string)?.conductivity,
+      roughness: tube.roughness,
+      rows: bundle.rows,
+      tubesPerRow: bundle.tubesPerRow,
+      passes: bundle.passes,
+      length: bundle.length,
+      pitchRatio: bundle.pitchRatio,
+    }
+  })
+  const script = fileURLToPath(new URL('./reference/rate_case.py', import.meta.url))
+  const { case: kase } = plan.study
+  const coolant = kase.drive.kind === 'coolant' ? (kase.drive.coolant as string) : ''
+  const input = JSON.stringify({
+    fluid: [...fluidModel(kase.fluid as string).data],
+    coolant: [...coolantModel(coolant).data],
+    points,
+  })
+  const python = spawnSync('python3', [script], { input, encoding: 'utf8', maxBuffer: 1e8 })
+  if (python.error) return null
+  if (python.status !== 0) throw new Error(`the reference in Python failed: ${python.stderr}`)
+  const reply = JSON.parse(python.stdout) as {
+    secondsPerPoint: number
+    results: Record<string, number>[]
+  }
+  const key = new Float64Array(COLUMNS)
+  for (const [k, i] of chosen.entries()) {
+    evaluateRange(plan, i, 1, key)
+    for (const [name, value] of Object.entries(reply.results[k])) {
+      const here = key[KEY_RESULT_INDEX[name]]
+      if (!(Math.abs(value / here - 1) < 1e-3))
+        throw new Error(`point ${i}, ${name}: ${here} here, ${value} in plain Python`)
+    }
+  }
+  return reply.secondsPerPoint * pointsPerSecond
 }
 
 function rate(definition: unknown): { pointsPerSecondPerCore: number | null } {
