@@ -43,8 +43,14 @@ export function BandLine({ band }: { band: ShownBand }) {
 
 const percent = (share: number) => `${Math.round(share * 100)} %`
 
+/** A part that moves the number by less than this says nothing. */
+const COUNTS = 0.005
+
 export function BandTable({ band }: { band: ShownBand }) {
   const dimension = bandDimension(band)
+  const counts = ({ share, elasticity }: ShownBand['groups'][number]) =>
+    share >= COUNTS || Math.abs(elasticity ?? 0) >= COUNTS
+  const idle = band.groups.filter((group) => !counts(group))
   const places: [string, number | null][] = [
     ['10 %', band.p10],
     ['50 %', band.p50],
@@ -92,7 +98,7 @@ export function BandTable({ band }: { band: ShownBand }) {
             </tr>
           </thead>
           <tbody>
-            {band.groups.map((group) => (
+            {band.groups.filter(counts).map((group) => (
               <tr key={group.id}>
                 <th scope="row">
                   {group.label}
@@ -114,6 +120,9 @@ export function BandTable({ band }: { band: ShownBand }) {
         {band.samples} samples of a Latin hypercube (seed {band.seed}); each uncertain part is multiplied by a
         lognormal factor of median 1, the same in every row, and the bundle is sized again. What the methods
         leave out, and gas or vent losses, are not in it.
+        {idle.length > 0
+          ? ` Without effect here: ${idle.map(({ label }) => label.toLowerCase()).join(', ')}.`
+          : ''}
         {band.failures.length > 0
           ? ` Without a result: ${band.failures.map(({ text, count }) => `${count} (${text})`).join(', ')}.`
           : ''}

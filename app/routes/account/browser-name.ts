@@ -3,7 +3,7 @@
 const BROWSERS: [RegExp, string][] = [
   [/\bEdg\//, 'Edge'],
   [/\bFirefox\//, 'Firefox'],
-  [/\bChrom(e|ium)\//, 'Chrome or Chromium'],
+  [/Chrom(e|ium)\//, 'Chrome or Chromium'],
   [/\bVersion\/.*\bSafari\//, 'Safari'],
 ]
 const SYSTEMS: [RegExp, string][] = [

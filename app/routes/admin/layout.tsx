@@ -8,6 +8,9 @@ const PAGES = [
 
 export const handle = { crumbs: () => [{ label: 'Administration', to: '/admin/people' }] }
 
+/** The breadcrumb needs data on both sides. */
+export const loader = () => ({})
+
 export default function AdministrationLayout() {
   return (
     <>

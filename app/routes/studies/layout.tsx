@@ -5,6 +5,7 @@ import { type Stage, Stages } from '#app/components/study/stages.tsx'
 import { Button } from '#app/components/ui/button.tsx'
 import { projectContext, viewerContext } from '#app/http/context.ts'
 import { can } from '#app/http/permissions.ts'
+import { reviewStates } from '#app/modules/reviews/reviews.server.ts'
 import { latestRun } from '#app/modules/runs/runs.server.ts'
 import { runStandings } from '#app/modules/runs/standing.server.ts'
 import { getDraft, getStudy, latestRevision } from '#app/modules/studies/studies.server.ts'
@@ -26,6 +27,7 @@ export async function loader({ params, context }: Route.LoaderArgs) {
     getDraft(params.studyId, viewer.personId),
     latestRun(params.studyId),
   ])
+  const review = (await reviewStates([params.studyId])).get(params.studyId) ?? null
   const standing = run && (await runStandings([run.id])).get(run.id)
   return {
     project: { id: projectId, name: projectName },
@@ -33,6 +35,7 @@ export async function loader({ params, context }: Route.LoaderArgs) {
     revision: revision?.number ?? null,
     hasDraft: draft !== null,
     run: run && { state: run.state, points: run.points, done: standing?.done ?? 0 },
+    review,
     mayEdit: can(viewer.role, 'study.edit'),
   }
 }
@@ -71,7 +74,9 @@ export default function StudyLayout({ loaderData }: Route.ComponentProps) {
   )
 }
 
-function stagesOf({ revision, hasDraft, run }: Route.ComponentProps['loaderData']): Stage[] {
+const REVIEW_WORDS = { asked: 'review asked', accepted: 'accepted', returned: 'returned' }
+
+function stagesOf({ revision, hasDraft, run, review }: Route.ComponentProps['loaderData']): Stage[] {
   const open = run?.state === 'queued' || run?.state === 'running'
   return [
     {
@@ -85,6 +90,10 @@ function stagesOf({ revision, hasDraft, run }: Route.ComponentProps['loaderData'
       detail: !run ? undefined : open ? 'under way' : <PointsDone done={run.done} points={run.points} />,
     },
     { id: 'explore', state: !run || run.done === 0 ? 'none' : open ? 'underway' : 'done' },
-    { id: 'decide', state: 'none' },
+    {
+      id: 'decide',
+      state: review === 'accepted' ? 'done' : review === 'asked' ? 'underway' : 'none',
+      detail: review === null || review === 'withdrawn' ? undefined : REVIEW_WORDS[review],
+    },
   ]
 }
