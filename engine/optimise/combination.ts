@@ -98,7 +98,7 @@ const BOUND_LOOKS = 5
 
 /**
  * What nothing of a combination is under, from a few looks along the second axis, the first where the objective is least
- * and no limit counts: less twice what neighbouring looks differ by, for what may lie between them.
+ * and no limit counts: the least of them, less four times what a parabola through three neighbours could dip between two.
  */
 function lowerOf(trial: Opened['trial'], first: Range, second: Range, reversed: boolean): number {
   const x = reversed ? first.low : first.high
@@ -108,9 +108,10 @@ function lowerOf(trial: Opened['trial'], first: Range, second: Range, reversed: 
       share === 0 ? second.low : share === 1 ? second.high : second.low * (second.high / second.low) ** share
     return trial([x, y])?.objective ?? Number.NaN
   })
-  let lower = Number.POSITIVE_INFINITY
-  for (let k = 1; k < BOUND_LOOKS; k++)
-    lower = Math.min(lower, Math.min(values[k - 1], values[k]) - 2 * Math.abs(values[k] - values[k - 1]))
+  let bend = 0
+  for (let k = 1; k + 1 < BOUND_LOOKS; k++)
+    bend = Math.max(bend, Math.abs(values[k - 1] - 2 * values[k] + values[k + 1]))
+  const lower = Math.min(...values) - 0.5 * bend
   return Number.isNaN(lower) ? Number.NEGATIVE_INFINITY : lower
 }
 

@@ -1,5 +1,6 @@
 import { readFileSync } from 'node:fs'
 import { describe, expect, it } from 'vitest'
+import { evaluate } from '#engine/evaluate.ts'
 import { planSweep } from '#engine/sweep/plan.ts'
 import { uniform } from '#engine/sweep/random.ts'
 import { parseStudy, type Study } from '#engine/sweep/study.ts'
@@ -63,6 +64,11 @@ describe('the front of a study', () => {
     for (let k = 1; k < refined.length; k++) {
       expect(refined[k].x).toBeGreaterThan(refined[k - 1].x)
       expect(refined[k].y).toBeLessThan(refined[k - 1].y)
+    }
+    for (const { case: found, x, y } of refined) {
+      const { outsideArea, coolant } = evaluate(found)
+      expect(outsideArea).toBe(y)
+      expect(coolant?.pressureDrop).toBe(x)
     }
     const coarse = sweptFront(planSweep(of), DEFAULT_FRONT)
     expect(coarse.length).toBeGreaterThan(3)

@@ -1,5 +1,6 @@
 // What two results cost each other: the points of a sweep that nothing beats in both, and optima between them.
 import { KEY_RESULT_INDEX, KEY_RESULTS } from '#engine/bundle/key-results.ts'
+import type { Case } from '#engine/case.ts'
 import { evaluateRange } from '#engine/sweep/evaluate-range.ts'
 import { keyResultColumn, LIMITS } from '#engine/sweep/limits.ts'
 import { OBJECTIVES, type Objective } from '#engine/sweep/objective.ts'
@@ -79,6 +80,8 @@ export function sweptFront(plan: SweepPlan, axes: FrontAxes): SweptFrontPoint[] 
 export interface FrontPoint {
   combination: number
   place: number[]
+  /** The point as a case: what its band, its sheet and a copy are made from. */
+  case: Case
   inputs: OptimumInput[]
   x: number
   y: number
@@ -177,6 +180,7 @@ function pointOf(problem: StudyProblem, best: Candidate, axes: FrontAxes): Front
   return {
     combination: best.combination,
     place: best.x,
+    case: problem.caseAt(best.combination, best.x),
     inputs: inputsOf(problem, best),
     x: key[keyResultColumn(axes.x.result)],
     y: key[keyResultColumn(axes.y.result)],

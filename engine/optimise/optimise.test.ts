@@ -250,6 +250,36 @@ describe('the optimum of a study', () => {
     expect(bounded.discrete.find(({ path }) => path === 'bundle.tubesPerRow')?.values).toHaveLength(7)
   })
 
+  it('takes the same space from a sampled design', () => {
+    const space = spaceOf(
+      study('ammonia-condenser', (raw) => {
+        raw.sweep = {
+          design: 'latinHypercube',
+          samples: 20,
+          variables: [
+            { path: 'bundle.rows', from: 4, to: 16 },
+            { path: 'drive.velocity', from: 1, to: 3, scale: 'geometric' },
+            { path: 'bundle.layout', values: ['triangular30', 'square90'] },
+          ],
+        }
+      }),
+    )
+    expect(space.combinations).toBe(26)
+    expect(space.axes).toMatchObject([{ low: 1, high: 3 }])
+  })
+
+  it('is refused over more combinations than a search takes on', () => {
+    const vast = study('ammonia-condenser', (raw) => {
+      raw.optimise = {
+        variables: [
+          { path: 'bundle.rows', from: 1, to: 400 },
+          { path: 'bundle.tubesPerRow', from: 1, to: 400 },
+        ],
+      }
+    })
+    expect(() => createOptimiser(vast)).toThrow(/combinations of discrete variables; at most 200000/)
+  })
+
   it('does not exist where the limits contradict each other', () => {
     expect(optimise({ ...ammonia, limits: { ...ammonia.limits, length: { max: 0.1 } } })).toBe(null)
   })
