@@ -58,7 +58,7 @@ const ammonia = study('ammonia-condenser', (raw) => {
 })
 
 const PROBLEMS: [string, Study, Record<string, number>][] = [
-  ['an ammonia condenser, velocity', ammonia, { 'drive.velocity': 401 }],
+  ['an ammonia condenser, velocity', ammonia, { 'drive.velocity': 161 }],
   [
     'a chiller condenser, wall subcooling',
     study('chiller-condenser', (raw) => {
@@ -71,7 +71,7 @@ const PROBLEMS: [string, Study, Record<string, number>][] = [
       ]
       raw.limits.length = { max: '9 m' }
     }),
-    { 'drive.wallSubcooling': 401 },
+    { 'drive.wallSubcooling': 161 },
   ],
   [
     'a steam condenser, velocity and pitch',
@@ -83,7 +83,7 @@ const PROBLEMS: [string, Study, Record<string, number>][] = [
         { path: 'drive.velocity', from: 1.4, to: 2.6, count: 7 },
       ]
     }),
-    { 'bundle.pitchRatio': 61, 'drive.velocity': 41 },
+    { 'bundle.pitchRatio': 41, 'drive.velocity': 25 },
   ],
   [
     'yearly cost, velocity',
@@ -96,7 +96,7 @@ const PROBLEMS: [string, Study, Record<string, number>][] = [
         { path: 'drive.velocity', from: 1, to: 2.4, count: 2 },
       ]
     }),
-    { 'drive.velocity': 1001 },
+    { 'drive.velocity': 401 },
   ],
   [
     'a length that gives the duty, and the tube mass',
@@ -111,7 +111,21 @@ const PROBLEMS: [string, Study, Record<string, number>][] = [
       ]
       raw.limits = { duty: { min: '250 kW' }, coolantPressureDrop: { max: '60 kPa' } }
     }),
-    { 'bundle.length': 2001 },
+    { 'bundle.length': 801 },
+  ],
+  [
+    'length and velocity that give the duty',
+    study('ammonia-condenser', (raw) => {
+      const { duty: _, ...open } = raw.case
+      raw.case = open
+      raw.sweep.variables = [
+        { path: 'bundle.rows', values: [6, 8, 12] },
+        { path: 'drive.velocity', from: 1, to: 3, count: 2 },
+        { path: 'bundle.length', from: 1, to: 9, count: 2 },
+      ]
+      raw.limits = { duty: { min: '250 kW' }, coolantPressureDrop: { max: '50 kPa' } }
+    }),
+    { 'bundle.length': 121, 'drive.velocity': 21 },
   ],
   [
     'coolant flow and saturation temperature',
@@ -125,7 +139,7 @@ const PROBLEMS: [string, Study, Record<string, number>][] = [
       ]
       raw.limits = { coolantPressureDrop: { max: 30_000 }, coolantOutletTemperature: { max: 305.15 } }
     }),
-    { 'drive.massFlow': 301, saturationTemperature: 21 },
+    { 'drive.massFlow': 161, saturationTemperature: 9 },
   ],
   [
     'velocity, pitch and diameter at once',
@@ -140,7 +154,7 @@ const PROBLEMS: [string, Study, Record<string, number>][] = [
       raw.limits.coolantPressureDrop = { max: '10 kPa' }
       raw.optimise = { variables: [{ path: 'tube.outsideDiameter', from: 0.019, to: 0.03 }] }
     }),
-    { 'bundle.pitchRatio': 18, 'drive.velocity': 18, 'tube.outsideDiameter': 18 },
+    { 'bundle.pitchRatio': 13, 'drive.velocity': 13, 'tube.outsideDiameter': 13 },
   ],
   [
     'tubes chosen from the velocity',
@@ -154,7 +168,7 @@ const PROBLEMS: [string, Study, Record<string, number>][] = [
       ]
       raw.limits = { coolantPressureDrop: { max: 20_000 } }
     }),
-    { 'drive.velocity': 601 },
+    { 'drive.velocity': 301 },
   ],
 ]
 

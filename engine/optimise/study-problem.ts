@@ -36,6 +36,7 @@ export interface ProblemOptions {
 
 const FLOW_AXES = ['drive.velocity', 'drive.massFlow']
 const SUBCOOLING_AXIS = 'drive.wallSubcooling'
+const LENGTH_AXIS = 'bundle.length'
 
 /**
  * How the result behind a limit goes as the flow or the subcooling rises at a given duty: the bundle gets shorter, so its
@@ -162,10 +163,12 @@ export class StudyProblem implements Problem {
   bound(combination: number): number | null {
     if (!this.ownObjective) return this.boundOfGoal(combination)
     const { objective } = this.study
-    if (!this.sizing || objective === 'pumpingPower') return 0
+    if (objective === 'pumpingPower') return 0
     this.load(combination, this.bareCase)
     const { solver } = this
     const { axes } = this.space
+    const length = axes.find(({ path }) => path === LENGTH_AXIS)
+    const needed = this.study.limits.duty?.min
     const cooled = this.study.case.drive.kind === 'coolant'
     const alone = axes.length === 0 || (axes.length === 1 && this.movesFlow())
     for (const { path, low, high } of axes) {
@@ -176,12 +179,20 @@ export class StudyProblem implements Problem {
       else if (path === 'bundle.pitchRatio' && cooled) {
         solver.set(path, low)
         solver.set('methods.vapourPressureDrop', 'none')
+      } else if (path === LENGTH_AXIS) {
+        // The length that the duty asks for at least.
+        if (needed === undefined) solver.set(path, low)
+        else solver.set('duty', needed)
       } else return 0
     }
     if (axes.length > 0 && !axes.every(({ path }) => path.endsWith('oulingResistance')) && !this.monotone())
       return 0
     const outcome = this.solve()
     const { key } = this
+    if (!this.sizing) {
+      const short = length ? Math.max(1, length.low / key[KEY_RESULT_INDEX.tubeLength]) : 1
+      return outcome === 0 ? short * this.withoutEnergy(objective) : 0
+    }
     if (outcome !== 0 && outcome !== WALL_NOT_HELD) {
       if (alone && HOPELESS.includes(outcome)) return null
       return outcome === NOT_REACHED && (axes.length === 0 || this.movesFlow()) ? null : 0
@@ -197,9 +208,14 @@ export class StudyProblem implements Problem {
       )
         return null
     }
-    if (objective !== 'yearlyCost') return key[this.goal.column]
-    const { tubePrice, interest, years } = solver.economics
-    return key[KEY_RESULT_INDEX.outsideArea] * tubePrice * capitalRecoveryFactor(interest, years)
+    return this.withoutEnergy(objective)
+  }
+
+  /** The objective of the point that stands, of a yearly cost only what the area costs. */
+  private withoutEnergy(objective: Study['objective']): number {
+    if (objective !== 'yearlyCost') return this.key[this.goal.column]
+    const { tubePrice, interest, years } = this.solver.economics
+    return this.key[KEY_RESULT_INDEX.outsideArea] * tubePrice * capitalRecoveryFactor(interest, years)
   }
 
   private load(combination: number, kase = this.study.case): void {
