@@ -79,7 +79,9 @@ export function spaceOf(study: Study): Space {
     if (info.kind === 'whole') discrete.push({ ...info, values: wholes(from, to) })
     else add(info, from, to)
   }
+  const sizing = isSizing(study)
   const rank = (axis: Axis) => {
+    if (axis.path === 'bundle.length' && !sizing) return -1
     const place = (CONTINUOUS as readonly string[]).indexOf(axis.path)
     return place < 0 ? CONTINUOUS.length : place
   }

@@ -5,7 +5,7 @@ import type { Case } from '#engine/case.ts'
 import { capitalRecoveryFactor } from '#engine/correlations/economics.ts'
 import { setSwept } from '#engine/sweep/evaluate-range.ts'
 import { keyResultColumn, LIMITS, type LimitId, limitExcess } from '#engine/sweep/limits.ts'
-import { objectiveColumn } from '#engine/sweep/objective.ts'
+import { type Objective, objectiveColumn } from '#engine/sweep/objective.ts'
 import { type Study, type SweptValue, withSwept } from '#engine/sweep/study.ts'
 import type { Opened } from './combination.ts'
 import type { Sign } from './falling.ts'
@@ -53,6 +53,21 @@ const RESPONSE: Readonly<Partial<Record<LimitId, Sign>>> = {
   bundleHeight: 0,
   duty: 0,
 }
+
+/** The same as the length rises at a given coolant flow. */
+const LENGTH_RESPONSE: Readonly<Partial<Record<LimitId, Sign>>> = {
+  duty: 1,
+  coolantPressureDrop: 1,
+  coolantOutletTemperature: 1,
+  coolantVelocity: 0,
+  coolantMassFlow: 0,
+  length: 1,
+  bundleWidth: 0,
+  bundleHeight: 0,
+}
+
+/** Objectives in proportion to the length. */
+const SIZES: readonly Objective[] = ['outsideArea', 'tubeMass']
 
 /** Outcomes that no value of a coolant flow or a subcooling changes. */
 const HOPELESS = [
@@ -234,16 +249,22 @@ export class StudyProblem implements Problem {
     return this.solver.methods.inundation !== 'chen' && !this.solver.autoTubes
   }
 
-  /** Along the first axis, where it moves the flow and the duty is given. */
+  /** Along the first axis, where it moves the flow and the duty is given, or is the length that the duty follows from. */
   private falling(): Opened['falling'] {
-    if (this.worst || !this.sizing || !this.movesFlow() || !this.monotone()) return null
+    if (this.worst || !this.monotone()) return null
+    if (!this.sizing) {
+      const ownSize = this.ownObjective && SIZES.includes(this.study.objective)
+      if (!ownSize || this.space.axes[0]?.path !== LENGTH_AXIS) return null
+      return { signs: this.signs((id) => LENGTH_RESPONSE[id] ?? null), reversed: true }
+    }
+    if (!this.movesFlow()) return null
     const way = this.goalResponse()
-    return way === null ? null : { signs: this.signs(), reversed: way > 0 }
+    return way === null ? null : { signs: this.signs((id) => this.response(id)), reversed: way > 0 }
   }
 
   /** How what is made least goes as the first axis rises. */
   private goalResponse(): Sign {
-    if (this.ownObjective) return ['outsideArea', 'tubeMass'].includes(this.study.objective) ? -1 : null
+    if (this.ownObjective) return SIZES.includes(this.study.objective) ? -1 : null
     const { column, most } = this.goal
     const limit = LIMITS.find(({ result }) => keyResultColumn(result) === column)
     const response = limit ? this.response(limit.id) : null
@@ -255,9 +276,9 @@ export class StudyProblem implements Problem {
     return RESPONSE[id] ?? null
   }
 
-  private signs(): Sign[] {
+  private signs(responseOf: (id: LimitId) => Sign): Sign[] {
     return this.constraints.map(({ id, side }) => {
-      const response = id === null ? null : this.response(id)
+      const response = id === null ? null : responseOf(id)
       return response === null || side === 'max' ? response : ((-response || 0) as Sign)
     })
   }
