@@ -90,6 +90,23 @@ export const runChunk = pgTable(
   (t) => [primaryKey({ columns: [t.runId, t.chunk] })],
 )
 
+/**
+ * What the stored chunks of a run come to, kept in the transaction that stores each: how far a run is costs one row to
+ * know, however many chunks it has.
+ */
+export const runTally = pgTable('run_tally', {
+  runId: uuid('run_id')
+    .primaryKey()
+    .references(() => run.id, { onDelete: 'cascade' }),
+  points: integer('points').notNull().default(0),
+  meetingLimits: integer('meeting_limits').notNull().default(0),
+  // By the outcome's number; shorter where the last ones did not occur.
+  outcomes: integer('outcomes').array().notNull().default([]),
+  bestPoint: integer('best_point'),
+  bestObjective: doublePrecision('best_objective'),
+  bestResults: float8Array('best_results'),
+})
+
 /** Partitioned by range of planned_on, one month a partition (SQL in the migration): old runs leave by DROP TABLE. */
 export const pointColumn = pgTable(
   'point_column',

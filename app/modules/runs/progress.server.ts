@@ -2,7 +2,7 @@
 import { eq, sql } from 'drizzle-orm'
 import { db } from '#app/db.server.ts'
 import { AppError } from '#app/http/errors.ts'
-import { run, runChunk, worker } from '#drizzle/schema/index.ts'
+import { run, runTally, worker } from '#drizzle/schema/index.ts'
 import { OUTCOMES } from '#engine/bundle/key-results.ts'
 import { pointInputs, type SweepPlan } from '#engine/sweep/plan.ts'
 import { type BestSoFar, isFinal, type PointInput, type RunProgress } from './progress.ts'
@@ -29,58 +29,33 @@ export function runProgress(runId: string): Promise<RunProgress> {
 }
 
 async function readProgress(runId: string): Promise<RunProgress> {
-  const since = sql`now() - make_interval(secs => ${RATE_WINDOW_SECONDS})`
   // One statement, one snapshot: state and sums belong together.
   const [row] = await db
     .select({
       run,
-      done: sql<number>`coalesce(sums.points, 0)::int`,
-      meetingLimits: sql<number>`coalesce(sums.meeting_limits, 0)::int`,
-      recent: sql<number>`coalesce(sums.recent, 0)::int`,
-      recentSeconds: sql<number>`sums.recent_seconds::float8`,
+      done: sql<number>`coalesce(${runTally.points}, 0)`,
+      meetingLimits: sql<number>`coalesce(${runTally.meetingLimits}, 0)`,
       seconds: sql<
         number | null
       >`extract(epoch from coalesce(${run.endedAt}, now()) - ${run.startedAt})::float8`,
-      outcomes: sql<number[] | null>`tally.outcomes`,
-      bestPoint: sql<number | null>`best.best_point`,
-      bestObjective: sql<number | null>`best.best_objective`,
-      bestResults: sql<number[] | null>`best.best_results`,
+      outcomes: runTally.outcomes,
+      bestPoint: runTally.bestPoint,
+      bestObjective: runTally.bestObjective,
+      bestResults: runTally.bestResults,
       served: sql<boolean>`exists (
         select from ${worker} w where w.engine_version = ${run.engineVersion}
           and w.drain_requested_at is null
           and w.seen_at > now() - make_interval(secs => ${WORKER_SILENT_SECONDS}))`,
     })
     .from(run)
-    .leftJoin(
-      sql`lateral (
-        select sum(points) as points, sum(meeting_limits) as meeting_limits,
-          sum(points) filter (where stored_at > ${since}) as recent,
-          extract(epoch from now() - greatest(${since}, ${run.startedAt})) as recent_seconds
-        from ${runChunk} where run_id = ${run.id}) sums`,
-      sql`true`,
-    )
-    .leftJoin(
-      sql`lateral (
-        select array_agg(n order by outcome)::int[] as outcomes from (
-          select outcome, sum(count) as n
-          from ${runChunk}, unnest(outcomes) with ordinality as o(count, outcome)
-          where run_id = ${run.id} group by outcome) t) tally`,
-      sql`true`,
-    )
-    .leftJoin(
-      sql`lateral (
-        select best_point, best_objective, best_results from ${runChunk}
-        where run_id = ${run.id} and best_point is not null
-        order by best_objective, best_point limit 1) best`,
-      sql`true`,
-    )
+    .leftJoin(runTally, eq(runTally.runId, run.id))
     .where(eq(run.id, runId))
   if (!row) throw new AppError('not-found', 'There is no such run.')
 
   const { state, points, fault } = row.run
   const paused = row.run.pausedAt !== null
-  const moving = state === 'running' && !paused && row.recent > 0 && row.recentSeconds > 0
-  const pointsPerSecond = moving ? row.recent / row.recentSeconds : null
+  const pointsPerSecond =
+    state === 'running' && !paused ? rateOf(runId, row.done, row.seconds ?? 0) : forgetRate(runId)
   return {
     runId,
     state,
@@ -106,7 +81,32 @@ async function readProgress(runId: string): Promise<RunProgress> {
   }
 }
 
-function bestSoFar(plan: SweepPlan, point: number, objective: number, results: number[]): BestSoFar {
+/** How far each run was when it was looked at, over the last half minute. */
+const looks = new Map<string, { done: number; seconds: number }[]>()
+/** Looks closer together than this are one: a rate over less says little. */
+const LOOK_SECONDS = 1
+
+/** Points a second over the window, or from the start where this process has not looked before. */
+function rateOf(runId: string, done: number, seconds: number): number | null {
+  const known = (looks.get(runId) ?? []).filter((look) => seconds - look.seconds <= RATE_WINDOW_SECONDS)
+  const first = known[0] ?? { done: 0, seconds: 0 }
+  if (seconds - (known[known.length - 1]?.seconds ?? Number.NEGATIVE_INFINITY) >= LOOK_SECONDS)
+    known.push({ done, seconds })
+  looks.set(runId, known)
+  if (looks.size > 500) looks.delete(looks.keys().next().value as string)
+  const [since, rate] =
+    seconds - first.seconds >= LOOK_SECONDS
+      ? [first, (done - first.done) / (seconds - first.seconds)]
+      : [null, done / seconds]
+  return done > (since?.done ?? 0) && Number.isFinite(rate) ? rate : null
+}
+
+function forgetRate(runId: string): null {
+  looks.delete(runId)
+  return null
+}
+
+function bestSoFar(plan: SweepPlan, point: number, objective: number, results: ArrayLike<number>): BestSoFar {
   return { point, objective, inputs: labelledInputs(plan, point), results: keyResultValues(results) }
 }
 

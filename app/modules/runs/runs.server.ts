@@ -5,7 +5,7 @@ import { AppError } from '#app/http/errors.ts'
 import { enqueueChunks, enqueueFinish, queue, queuedChunks, withdrawChunks } from '#app/jobs/queue.server.ts'
 import { type Acting, recordAct } from '#app/modules/audit/audit.server.ts'
 import { tellRunEnded } from '#app/modules/notices/run-ended.server.ts'
-import { person, type Run, run, runChunk, study, studyRevision } from '#drizzle/schema/index.ts'
+import { person, type Run, run, runChunk, runTally, study, studyRevision } from '#drizzle/schema/index.ts'
 import { ENGINE_VERSION } from '#engine/version.ts'
 import { chunkCount, chunkPointsFor } from './chunks.ts'
 import { measurePointCost, planOfRevision } from './run-plan.server.ts'
@@ -49,6 +49,7 @@ export async function startRun(
         requestedBy: acting.personId,
       })
       .returning()
+    await tx.insert(runTally).values({ runId: planned.id })
     await tx.execute(sql`select ensure_point_column_partition(${planned.plannedOn}::date)`)
     await enqueueChunks(tx, planned, Array(chunkCount(planned)).keys())
     await recordAct(tx, acting, {
@@ -134,13 +135,11 @@ async function missingChunks(tx: Queryable, open: Run): Promise<number[]> {
 
 /** The least objective among stored points that meet every limit; of equals, the lowest point. */
 export async function bestStored(tx: Queryable, runId: string): Promise<number | null> {
-  const [best] = await tx
-    .select({ point: runChunk.bestPoint })
-    .from(runChunk)
-    .where(and(eq(runChunk.runId, runId), sql`${runChunk.bestPoint} is not null`))
-    .orderBy(runChunk.bestObjective, runChunk.bestPoint)
-    .limit(1)
-  return best?.point ?? null
+  const [stored] = await tx
+    .select({ point: runTally.bestPoint })
+    .from(runTally)
+    .where(eq(runTally.runId, runId))
+  return stored?.point ?? null
 }
 
 /** Gives a run up; for people, `fault` says why. */
@@ -204,11 +203,12 @@ export async function listRuns(studyId: string, limit = 50): Promise<RunListing[
       ...getTableColumns(run),
       revision: studyRevision.number,
       requestedByName: person.name,
-      done: sql<number>`(select coalesce(sum(c.points), 0)::int from run_chunk c where c.run_id = ${run.id})`,
+      done: sql<number>`coalesce(${runTally.points}, 0)`,
     })
     .from(run)
     .innerJoin(studyRevision, eq(studyRevision.id, run.revisionId))
     .leftJoin(person, eq(person.id, run.requestedBy))
+    .leftJoin(runTally, eq(runTally.runId, run.id))
     .where(eq(run.studyId, studyId))
     .orderBy(desc(run.plannedAt), desc(run.id))
     .limit(limit)

@@ -1,7 +1,7 @@
 // Where the latest runs of many studies stand, for lists: one question for all of them.
 import { inArray, sql } from 'drizzle-orm'
 import { db } from '#app/db.server.ts'
-import { run, runChunk, studyRevision } from '#drizzle/schema/index.ts'
+import { run, runTally, studyRevision } from '#drizzle/schema/index.ts'
 import type { Objective } from '#engine/sweep/objective.ts'
 
 export type RunStanding = { done: number; objective: Objective; best: number | null }
@@ -12,13 +12,12 @@ export async function runStandings(runIds: readonly string[]): Promise<Map<strin
     .select({
       id: run.id,
       objective: sql<Objective>`coalesce(${studyRevision.definition}->>'objective', 'outsideArea')`,
-      done: sql<number>`coalesce(sum(${runChunk.points}), 0)::int`,
-      best: sql<number | null>`min(${runChunk.bestObjective})`,
+      done: sql<number>`coalesce(${runTally.points}, 0)`,
+      best: runTally.bestObjective,
     })
     .from(run)
     .innerJoin(studyRevision, sql`${studyRevision.id} = ${run.revisionId}`)
-    .leftJoin(runChunk, sql`${runChunk.runId} = ${run.id}`)
+    .leftJoin(runTally, sql`${runTally.runId} = ${run.id}`)
     .where(inArray(run.id, [...runIds]))
-    .groupBy(run.id, studyRevision.id)
   return new Map(rows.map(({ id, ...standing }) => [id, standing]))
 }

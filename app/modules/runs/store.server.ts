@@ -5,7 +5,7 @@ import { db, type Queryable } from '#app/db.server.ts'
 import { enqueueFinish, holdJob, type Lease, queue, within } from '#app/jobs/queue.server.ts'
 import { tellRunEnded } from '#app/modules/notices/run-ended.server.ts'
 import { readColumn } from '#app/modules/points/column-copy.server.ts'
-import { pointColumn, pointResult, type Run, run, runChunk } from '#drizzle/schema/index.ts'
+import { pointColumn, pointResult, type Run, run, runChunk, runTally } from '#drizzle/schema/index.ts'
 import { KEY_RESULTS } from '#engine/bundle/key-results.ts'
 import type { Case } from '#engine/case.ts'
 import { evaluate } from '#engine/evaluate.ts'
@@ -15,7 +15,7 @@ import { objectiveColumn } from '#engine/sweep/objective.ts'
 import { pointCase } from '#engine/sweep/plan.ts'
 import { bandOf } from '#engine/uncertainty/bands.ts'
 import { ENGINE_VERSION } from '#engine/version.ts'
-import { chunkRange, summarise } from './chunks.ts'
+import { type ChunkSummary, chunkRange, summarise } from './chunks.ts'
 import { planOfRevision } from './run-plan.server.ts'
 import { bestStored } from './runs.server.ts'
 
@@ -62,14 +62,14 @@ export async function storeChunk(
           })),
         )
       await boss.complete(lease.queue, lease.id, {}, { db: within(tx) })
-      // Last, because everyone who stores for this run waits here: whoever stores the last chunk sees all others.
       const [open] = await tx
         .select({ id: run.id })
         .from(run)
         .where(and(eq(run.id, of.id), inArray(run.state, ['queued', 'running'])))
-        .for('no key update')
+        .for('share')
       if (!open) throw new Refused()
-      if (stored && (await storedPoints(tx, of.id)) === of.points) await enqueueFinish(tx, of)
+      // Last, because everyone who stores for this run waits here: whoever stores the last chunk sees all others.
+      if (stored && (await tally(tx, of.id, count, summary)) === of.points) await enqueueFinish(tx, of)
       return stored !== undefined
     }),
   )
@@ -84,12 +84,25 @@ async function unlessRefused<T>(work: Promise<T>): Promise<T | false> {
   }
 }
 
-async function storedPoints(tx: Queryable, runId: string): Promise<number> {
-  const [{ points }] = await tx
-    .select({ points: sql<number>`coalesce(sum(${runChunk.points}), 0)::int` })
-    .from(runChunk)
-    .where(eq(runChunk.runId, runId))
-  return points
+/** Adds a chunk to what the run's chunks come to; of equal objectives the lowest point is the best. Points so far. */
+async function tally(tx: Queryable, runId: string, count: number, of: ChunkSummary): Promise<number> {
+  const { outcomes, meetingLimits, bestPoint, bestObjective, bestResults } = of
+  const better = sql`(${bestPoint}::int is not null and (${runTally.bestPoint} is null
+    or (${bestObjective}::float8, ${bestPoint}::int) < (${runTally.bestObjective}, ${runTally.bestPoint})))`
+  const [row] = await tx
+    .update(runTally)
+    .set({
+      points: sql`${runTally.points} + ${count}`,
+      meetingLimits: sql`${runTally.meetingLimits} + ${meetingLimits}`,
+      outcomes: sql`(select array_agg(coalesce(had, 0) + coalesce(now, 0) order by n)
+        from unnest(${runTally.outcomes}, ${sql.param(outcomes)}::int[]) with ordinality as t(had, now, n))`,
+      bestPoint: sql`case when ${better} then ${bestPoint}::int else ${runTally.bestPoint} end`,
+      bestObjective: sql`case when ${better} then ${bestObjective}::float8 else ${runTally.bestObjective} end`,
+      bestResults: sql`case when ${better} then ${sql.param(bestResults, runTally.bestResults)}::float8[] else ${runTally.bestResults} end`,
+    })
+    .where(eq(runTally.runId, runId))
+    .returning({ points: runTally.points })
+  return row.points
 }
 
 /** Marks a run as begun, when its first chunk is taken. */
