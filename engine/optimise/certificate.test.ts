@@ -128,6 +128,21 @@ describe('a study in which nothing meets every limit', () => {
     expect(optimise(relaxed)).not.toBe(null)
   })
 
+  it('says that its objective has no value where nothing can give it one', () => {
+    const of = study('chiller-condenser', (raw) => {
+      raw.objective = 'pumpingPower'
+      raw.limits = { length: { max: '9 m' } }
+      raw.case.drive.coolant = undefined
+      raw.sweep.variables = raw.sweep.variables.slice(2, 3)
+    })
+    expect(optimise(of)).toBe(null)
+    expect(explainInfeasible(of)).toMatchObject({
+      relaxations: [],
+      statement:
+        'Pumping power has no value in this study. What helps: a coolant in the case, or another objective.',
+    })
+  })
+
   it('says what is wrong where nothing can be evaluated at all', () => {
     const of = small({}, (raw) => {
       raw.case.duty = '250 MW'

@@ -100,7 +100,7 @@ const BOUND_LOOKS = 5
  * What nothing of a combination is under, from a few looks along the second axis, the first where the objective is least
  * and no limit counts: the least of them, less four times what a parabola through three neighbours could dip between two.
  */
-function lowerOf(trial: Opened['trial'], first: Range, second: Range, reversed: boolean): number {
+export function lowerOf(trial: Opened['trial'], first: Range, second: Range, reversed: boolean): number {
   const x = reversed ? first.low : first.high
   const values = Array.from({ length: BOUND_LOOKS }, (_, k) => {
     const share = k / (BOUND_LOOKS - 1)

@@ -1,6 +1,7 @@
 // Why nothing meets every limit, and which single limit would have to give way, by how little.
 import { KEY_RESULT_INDEX, OUTCOMES } from '#engine/bundle/key-results.ts'
 import { LIMITS, type Limit, type LimitId, type LimitInfo } from '#engine/sweep/limits.ts'
+import { OBJECTIVE_LABELS } from '#engine/sweep/objective.ts'
 import type { Study } from '#engine/sweep/study.ts'
 import { formatQuantity } from '#engine/units.ts'
 import { beginSearch, type Candidate, runSearch, type SearchState } from './search.ts'
@@ -74,7 +75,8 @@ export function explainInfeasible(study: Study, found?: readonly (Relaxation | n
   const problem = new StudyProblem(study, { goal: 'worst' })
   const best =
     problem.constraints.length === 0 ? null : bestOf(runSearch(problem, beginSearch(problem.combinations)))
-  if (best === null) return { relaxations, together: [], statement: nothingEvaluated(study) }
+  if (best === null || !Number.isFinite(problem.objectiveAt(best.combination, best.x)))
+    return { relaxations, together: [], statement: nothingEvaluated(study) }
   const key = problem.keyResultsAt(best.combination, best.x)
   const together = problem.constraints.flatMap(({ id, side, bound, column }) =>
     id !== null && (side === 'max' ? key[column] > bound : key[column] < bound)
@@ -128,6 +130,10 @@ function nothingEvaluated(study: Study): string {
     counts.set(outcome, (counts.get(outcome) ?? 0) + 1)
   }
   const [[outcome]] = [...counts].sort((a, b) => b[1] - a[1])
+  if (outcome === 0)
+    return `${OBJECTIVE_LABELS[study.objective]} has no value in this study. What helps: ${
+      study.objective === 'tubeMass' ? 'a tube material and a wall thickness' : 'a coolant'
+    } in the case, or another objective.`
   const { text, remedy } = OUTCOMES[outcome]
   return `No combination can be evaluated, most often because ${text}. What helps: ${remedy}.`
 }

@@ -98,11 +98,10 @@ export function frontEnds(study: Study, axes: FrontAxes): FrontEnds | null {
   const bestY = bestOf(study, axes.y, [], axes)
   const bestX = bestOf(study, axes.x, [], axes)
   if (bestY === null || bestX === null) return null
-  return {
-    // Of all with the best y the least x, and the other way round, to within a hair.
-    bestY: bestOf(study, axes.x, [boundOn(axes.y, bestY.y, HAIR)], axes) ?? bestY,
-    bestX: bestOf(study, axes.y, [boundOn(axes.x, bestX.x, HAIR)], axes) ?? bestX,
-  }
+  // Of all with the best y the least x, and the other way round, to within a hair; who is further off is out already.
+  const y = bestOf(study, axes.x, [boundOn(axes.y, bestY.point.y, HAIR)], axes, bestY.among)
+  const x = bestOf(study, axes.y, [boundOn(axes.x, bestX.point.x, HAIR)], axes, bestX.among)
+  return { bestY: (y ?? bestY).point, bestX: (x ?? bestX).point }
 }
 
 /** Room left where a result is held at its own best. */
@@ -121,7 +120,7 @@ export function frontSteps(ends: FrontEnds, count: number): number[] {
 
 /** The best y of everything whose x is no worse than `bound`. */
 export const frontPointAt = (study: Study, axes: FrontAxes, bound: number): FrontPoint | null =>
-  bestOf(study, axes.y, [boundOn(axes.x, bound, 0)], axes)
+  bestOf(study, axes.y, [boundOn(axes.x, bound, 0)], axes)?.point ?? null
 
 /** The refined front at once: both ends and `count` searches between; what another of them beats is left out. */
 export function refinedFront(study: Study, axes: FrontAxes, count: number): FrontPoint[] {
@@ -159,20 +158,25 @@ function boundOn({ result, most }: FrontAxis, value: number, room: number): Cons
   }
 }
 
+/** The best of one result, and the combinations that came near it. */
 function bestOf(
   study: Study,
   axis: FrontAxis,
   more: readonly Constraint[],
   axes: FrontAxes,
-): FrontPoint | null {
+  among: number[] | null = null,
+): { point: FrontPoint; among: number[] } | null {
   const own = !axis.most && (OBJECTIVES as readonly string[]).includes(axis.result)
   const asked: Study = own ? { ...study, objective: axis.result as Objective } : study
   const problem = new StudyProblem(asked, {
     more,
     goal: own ? undefined : { column: keyResultColumn(axis.result), most: axis.most },
   })
-  const [best] = runSearch(problem, beginSearch(problem.combinations)).leaders
-  return best ? pointOf(problem, best, axes) : null
+  const { leaders } = runSearch(problem, beginSearch(problem.combinations, among))
+  const [best] = leaders
+  return best
+    ? { point: pointOf(problem, best, axes), among: leaders.map(({ combination }) => combination) }
+    : null
 }
 
 function pointOf(problem: StudyProblem, best: Candidate, axes: FrontAxes): FrontPoint {

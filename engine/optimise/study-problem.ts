@@ -7,7 +7,7 @@ import { setSwept } from '#engine/sweep/evaluate-range.ts'
 import { keyResultColumn, LIMITS, type LimitId, limitExcess } from '#engine/sweep/limits.ts'
 import { type Objective, objectiveColumn } from '#engine/sweep/objective.ts'
 import { type Study, type SweptValue, withSwept } from '#engine/sweep/study.ts'
-import type { Opened } from './combination.ts'
+import { lowerOf, type Opened } from './combination.ts'
 import type { Sign } from './falling.ts'
 import type { Trial } from './line.ts'
 import type { Problem, Spent } from './search.ts'
@@ -283,17 +283,17 @@ export class StudyProblem implements Problem {
     })
   }
 
-  /** The goal where a single axis stands most favourably; without a bound where that is not known. */
+  /** The goal where the first axis stands most favourably; without a bound where that is not known. */
   private boundOfGoal(combination: number): number {
-    this.load(combination)
-    const [axis] = this.space.axes
-    const falling = this.space.axes.length === 1 ? this.falling() : null
-    if (falling === null) return Number.MIN_SAFE_INTEGER
-    this.solver.set(axis.path, falling.reversed ? axis.low : axis.high)
-    this.solve()
-    const value = this.key[this.goal.column]
-    if (!Number.isFinite(value)) return Number.MIN_SAFE_INTEGER
-    return this.goal.most ? -value : value
+    const { trial, falling } = this.open(combination)
+    const [first, second, third] = this.space.axes
+    if (falling === null || third !== undefined) return Number.MIN_SAFE_INTEGER
+    const reversed = falling.reversed === true
+    const lower =
+      second === undefined
+        ? (trial([reversed ? first.low : first.high])?.objective ?? Number.NaN)
+        : lowerOf(trial, first, second, reversed)
+    return Number.isFinite(lower) ? lower : Number.MIN_SAFE_INTEGER
   }
 
   private solve(): number {
