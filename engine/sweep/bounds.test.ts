@@ -76,3 +76,22 @@ describe('bounds for the optimiser', () => {
     )
   })
 })
+
+describe('sigmas of an uncertainty study', () => {
+  const faultsWith = (sigmas: unknown) => {
+    const raw = JSON.parse(
+      readFileSync(new URL('../../studies/ammonia-condenser.json', import.meta.url), 'utf8'),
+    )
+    const parsed = parseStudy({ ...raw, uncertainty: { sigmas } })
+    return parsed.ok ? [] : parsed.faults.map(({ path, problem, remedy }) => `${path}: ${problem}; ${remedy}`)
+  }
+
+  it('are taken for known groups from 0 to 3, and refused otherwise', () => {
+    expect(faultsWith({ film: 0.1, foulingInside: 0 })).toEqual([])
+    expect(faultsWith({ flim: 0.1 })[0]).toBe(
+      'uncertainty.sigmas.flim: is no group of factors; did you mean "film"?',
+    )
+    expect(faultsWith({ rain: 0.1 })[0]).toMatch(/known groups: film, shear/)
+    expect(faultsWith({ film: -0.1 })[0]).toMatch(/^uncertainty\.sigmas\.film: is -0\.1; at least 0/)
+  })
+})

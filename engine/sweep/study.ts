@@ -1,5 +1,6 @@
 // The study file: its one schema, shared by form, file, API and job, and its reading into a checked study.
 import { z } from 'zod'
+import { MULTIPLIER_IDS } from '#engine/bundle/multipliers.ts'
 import { type Case, caseSchema, type Fault, parseCase } from '#engine/case.ts'
 import { tubeCatalogue } from '#engine/tubes.ts'
 import { parseQuantity } from '#engine/units.ts'
@@ -145,6 +146,7 @@ export function parseStudy(input: unknown): ParsedStudy {
 
   const limits = readLimits(raw.limits, faults)
   const optimise = readOptimise(raw.optimise, faults)
+  sigmaFaults(raw.uncertainty, faults)
 
   let parsedCase: Case | null = null
   if (isObject(raw.case)) {
@@ -683,6 +685,20 @@ function valueFaults(
         )
       }
   })
+}
+
+/** A sigma of a group that is none would silently change nothing. */
+function sigmaFaults(raw: unknown, faults: Fault[]): void {
+  const sigmas = isObject(raw) && isObject(raw.sigmas) ? raw.sigmas : {}
+  for (const id of Object.keys(sigmas)) {
+    if ((MULTIPLIER_IDS as readonly string[]).includes(id)) continue
+    const near = nearest(id, MULTIPLIER_IDS)
+    faults.push({
+      path: `uncertainty.sigmas.${id}`,
+      problem: 'is no group of factors',
+      remedy: near ? `did you mean "${near}"?` : `known groups: ${MULTIPLIER_IDS.join(', ')}`,
+    })
+  }
 }
 
 /** Checks the bounds of `optimise.variables` as if the sweep had them too. */
