@@ -26,8 +26,10 @@ import { CHEN_ROWS, RowMarch } from './row-march.ts'
 const CLOSE = 3e-10
 /** A sweep may change this much if it changes so much less than the one before that `CLOSE` is what remains. */
 const LAST_CHANGE = 1e-7
+/** A sequence that shrinks slower is taken to shrink by this. */
+const SLOWEST_PACE = 0.95
 /** Sweeps after which the quick loop gives way to the bracketed search. */
-const QUICK_SWEEPS = 40
+const QUICK_SWEEPS = 80
 /** Sweeps that one trial of the bracketed search may take. */
 const TRIAL_SWEEPS = 200
 /** Rounds that a point's first guess takes. */
@@ -134,11 +136,16 @@ export class BundleMarch extends RowMarch {
     return this.refusal()
   }
 
-  /** Whether the rows and the coolant (`change` and `close` in K) will move no more, by how fast they come to rest. */
+  /**
+   * Whether the rows and the coolant (`change` and `close` in K) will move no more, by how fast both come to rest: a
+   * sequence that shrinks by `pace` has pace/(1 − pace) of its last step before it.
+   */
   private stands(change: number, close: number): boolean {
     const { moved } = this
-    const pace = Math.min(1, moved / this.movedBefore)
-    return moved < LAST_CHANGE && moved * pace < CLOSE && !(change * pace > close)
+    const coolantPace = change > 0 ? change / this.changedBefore : 0
+    const pace = Math.min(SLOWEST_PACE, Math.max(moved / this.movedBefore, coolantPace))
+    const left = pace / (1 - pace)
+    return moved < LAST_CHANGE && moved * left < CLOSE && !(change * left > close)
   }
 
   /** Brings the inlet vapour to what the rows condense, a secant step in its logarithm after every sweep. */

@@ -29,6 +29,7 @@ import {
   columnSheetToSheet,
   columnToColumnSheet,
   condensateFlowExponent,
+  drainageExponent,
   drainageModeFlux,
   eissenbergRowLocal,
   galileo,
@@ -166,6 +167,7 @@ export class RowMarch {
   private lossTurbulent = 0
   private lossEnd = 0
   private readonly loss = new Float64Array(2)
+  private flowPower = 0
   inletPressure = Number.NaN
   Ts = 0
 
@@ -245,6 +247,9 @@ export class RowMarch {
   /** Largest change of a row's flux against the sweep before, over the mean flux. */
   protected moved = 1
   protected movedBefore = 1
+  /** Largest change of a pass's temperatures, K, at the last sweep and the one before. */
+  private changed = 0
+  protected changedBefore = 0
 
   // --- what the sweeps are made for
   inletVapour = 0
@@ -365,6 +370,7 @@ export class RowMarch {
     const { s } = this
     this.first = true
     this.heed = 1
+    this.changed = Number.POSITIVE_INFINITY
     this.rowX[0] = cooled ? 0.35 * (this.Ts - s.inletTemperature) : s.wallSubcooling
     fillVapourLine(s.fluid, this.Ts, this.vapourLines, 0)
     for (let r = 0; r < s.rows; r++) {
@@ -522,7 +528,7 @@ export class RowMarch {
     const { passIn, passHeat, passInner, passRise } = this
     const dropping = this.drop !== NO_DROP && this.inlet[RHO_V] > 0
     const sheared = this.shear !== NO_SHEAR && this.inlet[RHO_V] > 0
-    // The common laws are written out below; the others go through `singleFlux` and `rowLaw`.
+    // The common laws are written out below; the others go through `lineFlux` and `flowFactor`.
     const written = this.film === 0 && (this.shear <= SHEKRILADZE || this.shear === NO_SHEAR)
     const flowLaw = this.inundation === CONDENSATE_FLOW
     const shearConstant = this.shear === BUTTERWORTH ? 0.416 : 0.64
@@ -644,15 +650,15 @@ export class RowMarch {
             }
           } else {
             for (let i = 0; i < 60; i++) {
-              dh = hfg + FILM_SUBCOOLING * cp * x
-              const q1 = this.singleFlux(x, r, film)
-              q = this.rowLaw(q1, arriving, r, x, dh)
-              const beside = 1.000001 * x
-              e = Math.log(this.rowLaw(this.singleFlux(beside, r, film), arriving, r, beside, dh) / q) / 1e-6
-              const f = q - U * (T - x)
+              const line = U * (T - x)
+              const single = this.lineFlux(x, r, film)
+              const row = single * this.flowFactor(line, arriving, r, hfg + FILM_SUBCOOLING * cp * x)
+              e = (this.lineFlux(1.000001 * x, r, film) / single - 1) * 1e6
+              const f = row - line
+              const slope = row * (e / x - (this.flowPower * U) / line) + U
               if (f > 0) high = x
               else low = x
-              const step = f / ((e * q) / x + U)
+              const step = f / slope
               const next = x - step
               if (Math.abs(step) <= STEP * T && next > 0 && next < T) {
                 x = next
@@ -660,6 +666,7 @@ export class RowMarch {
               }
               x = next > low && next < high ? next : 0.5 * (low + high)
             }
+            e /= 1 - this.flowPower
           }
           q = U * (T - x)
           dh = hfg + FILM_SUBCOOLING * cp * x
@@ -701,7 +708,7 @@ export class RowMarch {
       } else {
         x = s.wallSubcooling
         dh = hfg + FILM_SUBCOOLING * cp * x
-        q = this.rowLaw(this.singleFlux(x, r, film), arriving, r, x, dh)
+        q = this.rowFluxAt(x, r, film, arriving, dh)
       }
       const heat = q * perMetre * L * tubes
       const made = heat / dh
@@ -919,29 +926,56 @@ export class RowMarch {
     return fujiiUeharaKurataFlux(kD, re, drive, x, suction, this.staggered)
   }
 
-  /** Flux of row `row` from the single tube's, under the condensate that arrives (as the flux that would make it). */
-  private rowLaw(single: number, arriving: number, row: number, x: number, dh: number): number {
+  /** Flux of row `row` under the condensate that arrives (as the flux that would make it). */
+  private rowFluxAt(x: number, row: number, velocity: number, arriving: number, dh: number): number {
+    const q1 = this.lineFlux(x, row, velocity)
+    if (this.inundation === CONDENSATE_FLOW) return inundatedFlux(q1, arriving, this.exponent)
+    if (this.inundation !== DRAINAGE_MODE) return q1
+    const perFlux = this.reynoldsPerFlux(row, dh)
+    return drainageModeFlux(
+      q1,
+      arriving,
+      perFlux,
+      this.rowColumnLine[row],
+      this.rowSheetLine[row],
+      this.staggered,
+    )
+  }
+
+  /** Flux of the single tube under what a law makes of its place in a vertical line, W/m². */
+  private lineFlux(x: number, row: number, velocity: number): number {
+    const single = this.singleFlux(x, row, velocity)
     const q1 = row > 0 ? this.factors.inundation * single : single
-    switch (this.inundation) {
-      case CONDENSATE_FLOW:
-        return inundatedFlux(q1, arriving, this.exponent)
-      case DRAINAGE_MODE:
-        return drainageModeFlux(
-          q1,
-          arriving,
-          (2 * Math.PI * this.s.outsideDiameter) / (dh * this.rowViscosity[row]),
-          this.rowColumnLine[row],
-          this.rowSheetLine[row],
-          this.staggered,
-        )
-      case NO_INUNDATION:
-        return q1
-    }
+    if (this.inundation < 2 || this.inundation === NO_INUNDATION) return q1
     const n = tubesInVerticalLine(row + 1, this.staggered)
     if (this.inundation === 2) return q1 * nusseltRowLocal(n)
     if (this.inundation === 3) return q1 * kernRowLocal(n)
     if (this.inundation === 4) return q1 * eissenbergRowLocal(n)
     return q1 * chenRowLocal(n, (this.rowSpecificHeat[row] * x) / this.rowLatent[row])
+  }
+
+  /** Film Reynolds number under a row per flux that falls from it, (m² K)/W times K. */
+  private reynoldsPerFlux(row: number, dh: number): number {
+    return (2 * Math.PI * this.s.outsideDiameter) / (dh * this.rowViscosity[row])
+  }
+
+  /** Factor (q/(q + a))^s of a law in condensate flow at the flux q; leaves d ln factor/d ln q in `flowPower`. */
+  private flowFactor(q: number, arriving: number, row: number, dh: number): number {
+    this.flowPower = 0
+    if (this.inundation > DRAINAGE_MODE || !(arriving > 0)) return 1
+    const total = q + arriving
+    const lnShare = Math.log(q / total)
+    if (this.inundation === CONDENSATE_FLOW) {
+      this.flowPower = (this.exponent * arriving) / total
+      return Math.exp(this.exponent * lnShare)
+    }
+    const re = this.reynoldsPerFlux(row, dh) * total
+    const columns = this.rowColumnLine[row]
+    const sheets = this.rowSheetLine[row]
+    const s = drainageExponent(re, columns, sheets, this.staggered)
+    const rise = (drainageExponent(1.000001 * re, columns, sheets, this.staggered) - s) * 1e6
+    this.flowPower = (s * arriving + rise * q * lnShare) / total
+    return Math.exp(s * lnShare)
   }
 
   /** Flux of a clean tube at the subcooling and vapour velocity that row `row` was left with, W/m². */
@@ -1034,6 +1068,8 @@ export class RowMarch {
       T += rise
       this.passOut[j] = T
     }
+    this.changedBefore = this.changed
+    this.changed = change
     return change
   }
 }
