@@ -124,7 +124,8 @@ export function fitGroup(
   result: Measurable,
   group: MultiplierGroup,
 ): Fit | null {
-  const single = points.map((point) => ({ name: point.name, ...factorFor(point, result, group) }))
+  const search = new FactorSearch(result, group)
+  const single = points.map((point) => ({ name: point.name, ...search.find(point) }))
   const scores = robustScores(single.map(({ factor }) => (factor === null ? null : Math.log(factor))))
   const rows = single.map((row, k) => ({ ...row, score: scores[k], outlier: isOutlier(scores[k]) }))
   const logs = (kept: typeof rows) =>
@@ -158,50 +159,78 @@ export function correctionFrom({ group, factor }: Fit, name: string, source: str
   return { name, group, factor: Number(factor.toPrecision(6)), source }
 }
 
-/** The factor that brings a point's prediction to what was measured, by halving in its logarithm. */
-function factorFor(
-  { case: kase, measured }: MeasuredPoint,
-  result: Measurable,
-  group: MultiplierGroup,
-): { factor: number | null; reason: string | null } {
-  const column = KEY_RESULT_INDEX[result]
-  const solver = new PointSolver()
-  const key = new Float64Array(KEY_RESULTS.length)
-  const factors = unitMultipliers()
-  solver.load(kase)
-  const predicted = (factor: number): number => {
-    factors[group] = factor
-    solver.setMultipliers(factors)
-    if (solver.solve() !== 0) return Number.NaN
-    solver.keyResults(key, 0, 1)
-    return key[column]
+type Single = { factor: number | null; reason: string | null }
+
+/** Brings points to what was measured, one after another. */
+class FactorSearch {
+  private readonly solver = new PointSolver()
+  private readonly key = new Float64Array(KEY_RESULTS.length)
+  private readonly factors = unitMultipliers()
+  private readonly column: number
+  private readonly group: MultiplierGroup
+
+  constructor(result: Measurable, group: MultiplierGroup) {
+    this.column = KEY_RESULT_INDEX[result]
+    this.group = group
   }
-  const middle = predicted(1)
-  if (!Number.isFinite(middle)) return { factor: null, reason: OUTCOMES[solver.outcome].text }
-  const low = predicted(LEAST)
-  const high = predicted(MOST)
-  const rises = (Number.isFinite(high) ? high : middle) > (Number.isFinite(low) ? low : middle)
-  if (!(Math.abs((Number.isFinite(high) ? high : middle) / (Number.isFinite(low) ? low : middle) - 1) > 1e-9))
-    return { factor: null, reason: 'the factor does not move this result' }
-  const below = (value: number) => (rises ? value < measured : value > measured)
-  let a = Math.log(LEAST)
-  let b = Math.log(MOST)
-  if (Number.isFinite(low) && !below(low))
-    return { factor: null, reason: `no factor from ${LEAST} to ${MOST} comes to what was measured` }
-  if (Number.isFinite(high) && below(high))
-    return { factor: null, reason: `no factor from ${LEAST} to ${MOST} comes to what was measured` }
-  for (let n = 0; n < 60 && b - a > 1e-9; n++) {
-    const s = 0.5 * (a + b)
-    const value = predicted(Math.exp(s))
-    // Where there is no result, towards the factor of 1, where there is one.
-    if (Number.isFinite(value) ? below(value) : s < 0) a = s
-    else b = s
+
+  /** The factor of a point: regula falsi in the logarithms of factor and result, in which most laws are nearly straight. */
+  find({ case: kase, measured }: MeasuredPoint): Single {
+    this.solver.load(kase)
+    const aim = Math.log(measured)
+    let s = 0
+    let off = this.off(s, aim)
+    if (Number.isNaN(off)) return { factor: null, reason: OUTCOMES[this.solver.outcome].text }
+    const near = this.off(0.01, aim)
+    const slope = Number.isNaN(near) ? (off - this.off(-0.01, aim)) / 0.01 : (near - off) / 0.01
+    if (!(Math.abs(slope) > 1e-6)) return { factor: null, reason: 'the factor does not move this result' }
+    if (off === 0) return { factor: 1, reason: null }
+    // From 1 towards what was measured, in growing steps until it lies between two factors.
+    const way = off * slope > 0 ? -1 : 1
+    const end = way > 0 ? Math.log(MOST) : Math.log(LEAST)
+    let far = s
+    let offFar = off
+    for (let step = Math.min(Math.abs(off / slope) * 1.1, 0.4); offFar * off > 0; step *= 1.6) {
+      if (far === end || Number.isNaN(offFar))
+        return { factor: null, reason: `no factor from ${LEAST} to ${MOST} comes to what was measured` }
+      s = far
+      off = offFar
+      far = way > 0 ? Math.min(end, far + step) : Math.max(end, far - step)
+      offFar = this.off(far, aim)
+    }
+    let kept = 0
+    for (let n = 0; n < 60; n++) {
+      if (Math.abs(far - s) < 1e-9 || offFar === 0) break
+      const share = Math.min(0.95, Math.max(0.05, off / (off - offFar)))
+      const next = Number.isFinite(share) ? s + share * (far - s) : 0.5 * (s + far)
+      const there = this.off(next, aim)
+      if (Math.abs(there) < 1e-10) return { factor: Math.exp(next), reason: null }
+      if (there * off > 0) {
+        s = next
+        off = there
+        if (kept > 0) offFar *= 0.5
+        kept = 1
+      } else {
+        far = next
+        offFar = there
+        if (kept < 0) off *= 0.5
+        kept = -1
+      }
+    }
+    const factor = Math.exp(0.5 * (s + far))
+    return Math.abs(this.off(Math.log(factor), aim)) < 1e-5
+      ? { factor, reason: null }
+      : { factor: null, reason: 'no factor comes to what was measured' }
   }
-  const factor = Math.exp(0.5 * (a + b))
-  const reached = predicted(factor)
-  return Math.abs(reached / measured - 1) < 1e-5
-    ? { factor, reason: null }
-    : { factor: null, reason: 'no factor comes to what was measured' }
+
+  /** ln predicted − ln measured at a factor's logarithm. */
+  private off(log: number, aim: number): number {
+    this.factors[this.group] = Math.exp(log)
+    this.solver.setMultipliers(this.factors)
+    if (this.solver.solve() !== 0) return Number.NaN
+    this.solver.keyResults(this.key, 0, 1)
+    return Math.log(this.key[this.column]) - aim
+  }
 }
 
 /** 0.6745 (value − median)/MAD; where more than half of the values agree the mean deviation stands in for it. */
