@@ -25,6 +25,7 @@ export default [
       route('explore', 'routes/studies/explore.tsx'),
       route('decide', 'routes/studies/decide.tsx'),
       route('optimum', 'routes/studies/optimum.tsx'),
+      route('changes', 'routes/studies/changes.tsx'),
       route('points/:point', 'routes/studies/point.tsx'),
     ]),
 
@@ -38,6 +39,7 @@ export default [
     route('caught-mail', 'routes/account/caught-mail.tsx'),
 
     layout('routes/admin/layout.tsx', [
+      route('admin/operations', 'routes/admin/operations.tsx'),
       route('admin/people', 'routes/admin/people.tsx'),
       route('admin/audit', 'routes/admin/audit.tsx'),
     ]),

@@ -49,6 +49,7 @@ export const rules: Record<string, UrlRules> = {
   '/studies/:studyId/run': { loader: readStudy, action: runStudy },
   '/studies/:studyId/explore': { loader: readStudy },
   '/studies/:studyId/decide': { loader: readStudy, action: readStudy },
+  '/studies/:studyId/changes': { loader: readStudy },
   '/studies/:studyId/optimum': { loader: readStudy, action: runStudy },
   '/studies/:studyId/views': { action: readStudy, resource: true },
   '/studies/:studyId/points/:point': { loader: readStudy },
@@ -72,6 +73,7 @@ export const rules: Record<string, UrlRules> = {
   // The link in an e-mail carries its own right, for one kind of e-mail of one person.
   '/mail/stop/:token': { loader: 'anyone', action: 'anyone' },
 
+  '/admin/operations': { loader: administer, action: administer },
   '/admin/people': { loader: administer, action: administer },
   '/admin/audit': { loader: administer },
   '/admin/audit.csv': { loader: administer, resource: true },

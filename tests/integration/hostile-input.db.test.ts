@@ -40,6 +40,7 @@ const INTENTS: Record<string, string[]> = {
   '/projects/:projectId/records/:recordId': ['baseline'],
   '/account': ['mail', 'revoke', 'revokeOthers'],
   '/notices': ['open', 'readAll'],
+  '/admin/operations': ['drain', 'retry', 'pause', 'resume', 'cancel', 'keep'],
   '/admin/people': ['map', 'unmap', 'remove', 'restore'],
 }
 const intentsOf = (pattern: string) => [...(INTENTS[pattern] ?? []), 'constructor']
@@ -66,6 +67,8 @@ const FIELDS = [
     'view',
     'runMinutes',
     'analysis',
+    'worker',
+    'months',
     'x',
     'session',
     'notice',

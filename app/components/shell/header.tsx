@@ -61,7 +61,7 @@ export function Header({ person }: { person: HeaderPerson }) {
           </NavLink>
           {person.administers ? (
             <NavLink
-              to="/admin/people"
+              to="/admin/operations"
               className="rounded-md px-2 py-1 hover:text-verdigris-ink aria-[current]:text-verdigris-ink max-lg:hidden"
             >
               Administration
@@ -157,7 +157,7 @@ function PersonMenu({ person }: { person: HeaderPerson }) {
             Your account
           </Link>
           {person.administers ? (
-            <Link to="/admin/people" className="menu-item" data-closes>
+            <Link to="/admin/operations" className="menu-item" data-closes>
               Administration
             </Link>
           ) : null}

@@ -2,8 +2,9 @@
 import { desc, eq, inArray, sql } from 'drizzle-orm'
 import { db } from '#app/db.server.ts'
 import { AppError } from '#app/http/errors.ts'
+import { queue } from '#app/jobs/queue.server.ts'
 import { type Acting, recordAct } from '#app/modules/audit/audit.server.ts'
-import { project, run, study, type WorkerHolding, worker } from '#drizzle/schema/index.ts'
+import { project, run, runTally, study, type WorkerHolding, worker } from '#drizzle/schema/index.ts'
 import { WORKER_SILENT_SECONDS } from './progress.server.ts'
 
 export type WorkerStatus = {
@@ -57,6 +58,8 @@ export type OpenRun = {
 
 /** Runs that are under way, and the latest that failed. */
 export async function listOpenRuns(limit = 200): Promise<OpenRun[]> {
+  // The queue's tables are made at its first use.
+  await queue()
   const jobs = (states: string[]) => sql<number>`(
     select count(*)::int from pgboss.job j
     where j.data->>'runId' = ${run.id}::text and j.state::text = any(${sql.param(states)}::text[]))`
@@ -71,7 +74,7 @@ export async function listOpenRuns(limit = 200): Promise<OpenRun[]> {
       plannedAt: run.plannedAt,
       startedAt: run.startedAt,
       points: run.points,
-      done: sql<number>`(select coalesce(sum(c.points), 0)::int from run_chunk c where c.run_id = ${run.id})`,
+      done: sql<number>`coalesce(${runTally.points}, 0)`,
       waiting: jobs(['created', 'retry']),
       held: jobs(['active']),
       engineVersion: run.engineVersion,
@@ -80,6 +83,7 @@ export async function listOpenRuns(limit = 200): Promise<OpenRun[]> {
     .from(run)
     .innerJoin(study, eq(study.id, run.studyId))
     .innerJoin(project, eq(project.id, study.projectId))
+    .leftJoin(runTally, eq(runTally.runId, run.id))
     .where(inArray(run.state, ['queued', 'running', 'failed']))
     .orderBy(sql`${run.state} = 'failed'`, desc(run.plannedAt))
     .limit(limit)

@@ -2,11 +2,12 @@
 import { NavLink, Outlet } from 'react-router'
 
 const PAGES = [
+  { to: '/admin/operations', label: 'Operations' },
   { to: '/admin/people', label: 'People' },
   { to: '/admin/audit', label: 'Audit trail' },
 ]
 
-export const handle = { crumbs: () => [{ label: 'Administration', to: '/admin/people' }] }
+export const handle = { crumbs: () => [{ label: 'Administration', to: '/admin/operations' }] }
 
 /** The breadcrumb needs data on both sides. */
 export const loader = () => ({})

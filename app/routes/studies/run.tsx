@@ -406,7 +406,17 @@ function Failures({
 
 function EarlierRuns({ runs, shown, studyId }: { runs: RunPage['runs']; shown: string; studyId: string }) {
   return (
-    <Sheet title="All runs of this study" flush>
+    <Sheet
+      title="All runs of this study"
+      flush
+      acts={
+        runs.filter(({ state }) => state === 'done').length > 1 ? (
+          <LinkButton to={`/studies/${studyId}/changes`} small>
+            What changed between two
+          </LinkButton>
+        ) : null
+      }
+    >
       <Scroll label="Runs of this study">
         <table className="data-table">
           <caption className="visually-hidden">Runs of this study, the latest first</caption>
