@@ -6,6 +6,7 @@ import { evaluateRange } from '#engine/sweep/evaluate-range.ts'
 import { planSweep } from '#engine/sweep/plan.ts'
 import { uniform } from '#engine/sweep/random.ts'
 import { parseStudy, type Study } from '#engine/sweep/study.ts'
+import { bestOfCombination, QUICK, THOROUGH } from './combination.ts'
 import { createOptimiser, optimise } from './optimise.ts'
 import type { SearchState } from './search.ts'
 import { spaceOf } from './space.ts'
@@ -206,6 +207,27 @@ describe('the optimum of a study', () => {
     }
     expect(tried).toBeGreaterThan(0)
   })
+
+  it.each(['ammonia-condenser', 'chiller-condenser', 'low-pressure-steam-condenser'])(
+    '%s: combinations taken as falling come to what a search without that knowledge comes to',
+    (name) => {
+      const { problem } = createOptimiser(study(name, () => {}))
+      let feasible = 0
+      for (let i = 0; i < (problem.axes.length > 1 ? 4 : 30); i++) {
+        const k = Math.floor(uniform(3, 1, i) * problem.combinations)
+        const known = bestOfCombination(problem.open(k), problem.axes, QUICK)
+        const general = bestOfCombination({ ...problem.open(k), falling: null }, problem.axes, {
+          ...THOROUGH,
+          tolerance: 1e-6,
+        })
+        expect(known.status).toBe(general.status)
+        if (known.status !== 'feasible' || general.status !== 'feasible') continue
+        feasible++
+        expect(known.objective / general.objective).toBeCloseTo(1, 5)
+      }
+      expect(feasible).toBeGreaterThan(1)
+    },
+  )
 
   it('of one value each is that one point, as the sweep has it', () => {
     const single = study('ammonia-condenser', (raw) => {
