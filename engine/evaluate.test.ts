@@ -169,6 +169,30 @@ describe.each(Object.entries(PLAUSIBLE))('plausibility, common practice: %s', (_
   })
 })
 
+describe('tubes so long that the coolant comes to saturation within a pass', () => {
+  it('never warm it beyond', () => {
+    for (const passes of [1, 2, 6])
+      for (const length of [2, 6, 20, 60]) {
+        const r = result({
+          ...bank(),
+          fluid: 'r227ea',
+          saturationTemperature: 357.26,
+          drive: { kind: 'coolant', coolant: 'pg-20', inletTemperature: 297.26, velocity: 1 },
+          tube: { outsideDiameter: 0.0074, wallThickness: 0.0011, material: 'copper' },
+          bundle: { layout: 'square90', pitchRatio: 1.7, rows: 22, tubesPerRow: 118, passes, length },
+          methods: {},
+        })
+        for (const pass of r.passes)
+          expect(pass.outletTemperature, `${passes} passes of ${length} m`).toBeLessThan(357.26 + 1e-7)
+        const gained = r.passes.reduce((sum, { inletTemperature, outletTemperature }) => {
+          expect(outletTemperature).toBeGreaterThan(inletTemperature - 1e-7)
+          return sum + outletTemperature - inletTemperature
+        }, 0)
+        expect(gained).toBeLessThan(60 + 1e-7)
+      }
+  })
+})
+
 describe('a given subcooling with the coolant that would hold it', () => {
   it('comes back to its duty in the coolant drive at the flow found', () => {
     const base = { ...PLAUSIBLE.r134a.case, duty: undefined }

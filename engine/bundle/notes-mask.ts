@@ -11,22 +11,16 @@ import {
   COOLANT_K,
   COOLANT_LENGTH,
   COOLANT_MU,
-  CP_L,
   fillCoolant,
-  fillFilm,
   findFluid,
-  MU_L,
   outsideRange,
-  RHO_L,
-  SATURATION_LENGTH,
-  SIGMA,
+  surfaceTension,
 } from '#engine/fluids/index.ts'
 import { NOTE_BIT, type NoteCode } from '#engine/notes.ts'
 import { inTransition } from './multipliers.ts'
 import type { PointSolver } from './point-solver.ts'
 import { DROP, SHEAR } from './point-state.ts'
 
-const liquid = new Float64Array(SATURATION_LENGTH)
 const water = new Float64Array(COOLANT_LENGTH)
 const BIT = Object.fromEntries(Object.entries(NOTE_BIT).map(([code, bit]) => [code, 2 ** bit])) as Record<
   NoteCode,
@@ -60,12 +54,11 @@ export function notesMask(point: PointSolver): number {
     if (march.rowFlux[r] === 0) idle = true
     const x = march.rowX[r]
     const T = march.rowTs[r] - x + march.weight * x
-    fillFilm(fluid, T, liquid)
     if (!fluid.fixed && outsideRange(fluid, T)) reference = true
     const flow = march.rowArriving[r] + march.rowCondensate[r] / (march.rowTubes[r] * march.length)
-    const re = (2 * flow) / liquid[MU_L]
+    const re = (2 * flow) / march.rowViscosity[r]
     if (re > high) high = re
-    const ja = (liquid[CP_L] * x) / march.rowLatent[r]
+    const ja = (march.rowSpecificHeat[r] * x) / march.rowLatent[r]
     if (ja > jakob) jakob = ja
   }
   if (high > 3600) mask += BIT.filmReynoldsHigh
@@ -74,7 +67,9 @@ export function notesMask(point: PointSolver): number {
   if (reference) mask += BIT.referenceTemperatureOutsideTable
   if (idle) mask += BIT.idleRows
   if (rows > 30) mask += BIT.manyRows
-  const ga = galileo(liquid[RHO_L], liquid[SIGMA], liquid[MU_L])
+  const last = rows - 1
+  const tension = surfaceTension(fluid, march.rowTs[last] - (1 - march.weight) * march.rowX[last])
+  const ga = galileo(march.rowDensity[last], tension, march.rowViscosity[last])
   if (Number.isNaN(ga)) mask += BIT.noSurfaceTension
   else if (march.inundation === 0) {
     if (high > dropletColumnToColumn(ga)) mask += BIT.drainageModeArea

@@ -49,6 +49,8 @@ import {
   dittusBoelter,
   gnielinski,
   siederTate,
+  WALL_PRANDTL_POWER,
+  WALL_VISCOSITY_POWER,
   wallPrandtlFactor,
   wallViscosityFactor,
 } from '#engine/correlations/tube-side.ts'
@@ -66,25 +68,29 @@ import {
 } from '#engine/correlations/vapour-drop.ts'
 import {
   COOLANT_CP,
-  COOLANT_K,
   COOLANT_LENGTH,
-  COOLANT_MU,
+  COOLANT_LINE,
   COOLANT_RHO,
   type CoolantModel,
   CP_V,
   FILM_LINE,
   fillCoolant,
+  fillCoolantLine,
   fillFilmLine,
   fillVapour,
   fillVapourLine,
   H_FG,
+  LINE_CP,
   LINE_CP_L,
   LINE_H_FG,
+  LINE_K,
   LINE_K_L,
+  LINE_MU,
   LINE_MU_L,
   LINE_MU_V,
   LINE_P,
   LINE_REFERENCE,
+  LINE_RHO,
   LINE_RHO_L,
   LINE_RHO_V,
   LINE_T,
@@ -105,8 +111,8 @@ const OUTCOME = OUTCOME_INDEX as Readonly<Record<string, number>>
 
 /** Vapour pressure is held above this share of the inlet's inside trials. */
 const PRESSURE_FLOOR = 0.2
-/** Coolant properties, and film properties where a law switches on them, are taken again when their temperature has moved by more [K]. */
-const SAME_TEMPERATURE = 2e-8
+/** Coolant properties follow straight lines as far as this [K], to 1e-10. */
+const COOLANT_WINDOW = 3e-4
 /** Film properties follow straight lines as far as this [K]: their curvature leaves 1e-11 of a flux. */
 const FILM_WINDOW = 1e-3
 /** As far in the first sweep, which only has to come near [K]. */
@@ -227,13 +233,13 @@ export class RowMarch {
   /** Resistance inside the film [m² K/W], and the coolant's rise per flux [m² K/W], of the sweep at hand. */
   private readonly passInner = new Float64Array(MAX_PASSES)
   private readonly passRise = new Float64Array(MAX_PASSES)
-  private readonly passViscosity = new Float64Array(MAX_PASSES)
-  private readonly passConductivity = new Float64Array(MAX_PASSES)
+  /** Lines that each pass follows its coolant's properties by, at its mean and at its wall temperature. */
+  private readonly passLines = new Float64Array(2 * MAX_PASSES * COOLANT_LINE)
+  /** Wall factor of the coefficient where the lines were made, and the ratio it is a power of. */
+  private readonly passRatio = new Float64Array(MAX_PASSES)
   private readonly passWallFactor = new Float64Array(MAX_PASSES)
   private readonly passWall = new Float64Array(MAX_PASSES)
   private readonly passMean = new Float64Array(MAX_PASSES)
-  private readonly passWallAt = new Float64Array(MAX_PASSES)
-  private readonly passMeanAt = new Float64Array(MAX_PASSES)
 
   protected readonly inlet = new Float64Array(SATURATION_LENGTH)
   protected readonly water = new Float64Array(COOLANT_LENGTH)
@@ -391,7 +397,7 @@ export class RowMarch {
       this.passIn[j] = s.inletTemperature
       this.passMean[j] = s.inletTemperature
       this.passWall[j] = s.inletTemperature
-      this.passMeanAt[j] = Number.NaN
+      this.passLines[2 * j * COOLANT_LINE + LINE_REFERENCE] = Number.NaN
       this.passHeat[j] = 0
     }
   }
@@ -436,45 +442,50 @@ export class RowMarch {
 
   /** Coolant properties and inside coefficient of each pass at its mean temperature of the last sweep. */
   protected coolantSide(): void {
-    const { s, water } = this
+    const { s, passLines: lines } = this
     const coolant = s.coolant as CoolantModel
     const Di = this.insideDiameter
     const perLength = Di / this.length
     for (let j = 0; j < s.passes; j++) {
       const mean = this.passMean[j]
       const wall = this.passWall[j]
-      if (
-        !(
-          Math.abs(mean - this.passMeanAt[j]) < SAME_TEMPERATURE &&
-          Math.abs(wall - this.passWallAt[j]) < SAME_TEMPERATURE
-        )
-      ) {
-        this.passMeanAt[j] = mean
-        this.passWallAt[j] = wall
-        fillCoolant(coolant, wall, water)
-        const muWall = water[COOLANT_MU]
-        const prWall = (muWall * water[COOLANT_CP]) / water[COOLANT_K]
-        fillCoolant(coolant, mean, water)
-        const mu = water[COOLANT_MU]
-        this.passDensity[j] = water[COOLANT_RHO]
-        this.passSpecificHeat[j] = water[COOLANT_CP]
-        this.passViscosity[j] = mu
-        this.passConductivity[j] = water[COOLANT_K]
-        const pr = (mu * water[COOLANT_CP]) / water[COOLANT_K]
-        this.passWallFactor[j] =
-          this.tubeSide === 0
-            ? wallPrandtlFactor(pr, prWall)
-            : this.tubeSide === 1
-              ? wallViscosityFactor(mu, muWall)
-              : 1
+      const at = 2 * j * COOLANT_LINE
+      const atWall = at + COOLANT_LINE
+      let off = mean - lines[at + LINE_REFERENCE]
+      let offWall = wall - lines[atWall + LINE_REFERENCE]
+      const anew = !(Math.abs(off) < COOLANT_WINDOW && Math.abs(offWall) < COOLANT_WINDOW)
+      if (anew) {
+        fillCoolantLine(coolant, mean, lines, at)
+        fillCoolantLine(coolant, wall, lines, atWall)
+        off = 0
+        offWall = 0
       }
-      const rho = this.passDensity[j]
-      const mu = this.passViscosity[j]
-      const k = this.passConductivity[j]
-      const pr = (mu * this.passSpecificHeat[j]) / k
+      const rho = lines[at + LINE_RHO] + off * lines[at + LINE_RHO + 1]
+      const cp = lines[at + LINE_CP] + off * lines[at + LINE_CP + 1]
+      const mu = lines[at + LINE_MU] + off * lines[at + LINE_MU + 1]
+      const k = lines[at + LINE_K] + off * lines[at + LINE_K + 1]
+      const pr = (mu * cp) / k
+      let factor = 1
+      if (this.tubeSide < 2) {
+        const muWall = lines[atWall + LINE_MU] + offWall * lines[atWall + LINE_MU + 1]
+        const cpWall = lines[atWall + LINE_CP] + offWall * lines[atWall + LINE_CP + 1]
+        const kWall = lines[atWall + LINE_K] + offWall * lines[atWall + LINE_K + 1]
+        const byPrandtl = this.tubeSide === 0
+        const ratio = byPrandtl ? (pr * kWall) / (muWall * cpWall) : mu / muWall
+        if (anew) {
+          this.passRatio[j] = ratio
+          this.passWallFactor[j] = byPrandtl
+            ? wallPrandtlFactor(pr, (muWall * cpWall) / kWall)
+            : wallViscosityFactor(mu, muWall)
+        }
+        const d = ratio / this.passRatio[j] - 1
+        const power = byPrandtl ? WALL_PRANDTL_POWER : WALL_VISCOSITY_POWER
+        factor = this.passWallFactor[j] * (1 + power * d * (1 + ((power - 1) / 2) * d))
+      }
+      this.passDensity[j] = rho
+      this.passSpecificHeat[j] = cp
       const v = this.flow / (rho * this.boreArea * this.passTubes[j])
       const re = (rho * v * Di) / mu
-      const factor = this.passWallFactor[j]
       const nusselt =
         this.tubeSide === 0
           ? gnielinski(re, pr, perLength, factor)
@@ -1091,11 +1102,9 @@ function riseShare(T: number, rise: number, star: number, p: number): number {
   else {
     integral = units * (star / T) ** power
     const left = 1 - power * integral
-    if (left > 0) end = left ** (1 / power)
-    else {
-      end = 0
-      integral = 1 / power
-    }
+    // The difference is used up within the row: the rise is all of it, whatever lies beyond.
+    if (!(left > 0)) return Math.max(0.5, 1 - star / T)
+    end = left ** (1 / power)
   }
   const whole = 1 - end
   return (1 - (whole / integral) ** (1 / p)) / whole

@@ -57,14 +57,17 @@ export function gnielinskiTurbulent(re: number, pr: number, diameterOverLength: 
   return gnielinskiFromFriction(re, pr, konakov(re)) * entryFactor(diameterOverLength)
 }
 
+export const WALL_PRANDTL_POWER = 0.11
+export const WALL_VISCOSITY_POWER = 0.14
+
 /** Wall factor K = (Pr/Prw)^0.11 of a liquid; above 1 when the coolant is heated. */
 export function wallPrandtlFactor(prBulk: number, prWall: number): number {
-  return Math.exp(0.11 * Math.log(prBulk / prWall))
+  return Math.exp(WALL_PRANDTL_POWER * Math.log(prBulk / prWall))
 }
 
 /** Wall factor (µ/µw)^0.14 of Sieder and Tate. */
 export function wallViscosityFactor(viscosityBulk: number, viscosityWall: number): number {
-  return Math.exp(0.14 * Math.log(viscosityBulk / viscosityWall))
+  return Math.exp(WALL_VISCOSITY_POWER * Math.log(viscosityBulk / viscosityWall))
 }
 
 /**

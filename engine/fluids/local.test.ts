@@ -1,7 +1,17 @@
 import { describe, expect, it } from 'vitest'
 import {
+  COOLANT_CP,
+  COOLANT_K,
+  COOLANT_LENGTH,
+  COOLANT_LINE,
+  COOLANT_MU,
+  COOLANT_RHO,
   CP_L,
+  coolantModel,
+  coolants,
   FILM_LINE,
+  fillCoolant,
+  fillCoolantLine,
   fillFilm,
   fillFilmLine,
   fillVapour,
@@ -10,12 +20,16 @@ import {
   fluids,
   H_FG,
   K_L,
+  LINE_CP,
   LINE_CP_L,
   LINE_H_FG,
+  LINE_K,
   LINE_K_L,
+  LINE_MU,
   LINE_MU_L,
   LINE_MU_V,
   LINE_P,
+  LINE_RHO,
   LINE_RHO_L,
   LINE_RHO_V,
   LINE_T,
@@ -100,6 +114,29 @@ describe.each(fluids.map((fluid) => fluid.id))('the series about one temperature
       const film = new Float64Array(FILM_LINE)
       fillFilmLine(model, T, film, 0)
       expect([film[LINE_RHO_L + 1], film[LINE_MU_L + 1]].map(Math.abs)).toEqual([0, 0])
+    }
+  })
+})
+
+describe.each(coolants.map((coolant) => coolant.id))('a coolant’s series about one temperature: %s', (id) => {
+  const model = coolantModel(id)
+  const line = new Float64Array(COOLANT_LINE)
+  const water = new Float64Array(COOLANT_LENGTH)
+
+  it('follow its properties as far as their window', () => {
+    for (const share of [0.03, 0.27, 0.52, 0.88]) {
+      const T = model.minTemperature + share * (model.maxTemperature - model.minTemperature)
+      fillCoolantLine(model, T, line, 0)
+      for (const off of [0, 3e-4, -3e-4]) {
+        fillCoolant(model, T + off, water)
+        for (const [place, at] of [
+          [COOLANT_RHO, LINE_RHO],
+          [COOLANT_CP, LINE_CP],
+          [COOLANT_MU, LINE_MU],
+          [COOLANT_K, LINE_K],
+        ])
+          near(line[at] + off * line[at + 1], water[place], 1e-9, `place ${place} at ${T} + ${off} K`)
+      }
     }
   })
 })

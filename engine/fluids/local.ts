@@ -3,6 +3,9 @@
  * of the whole series again. Nothing is allocated; a caller keeps many of them in one array.
  */
 import {
+  COOLANT_SERIES,
+  COOLANT_STRIDE,
+  type CoolantModel,
   type FluidModel,
   LIQUID,
   outsideRange,
@@ -29,6 +32,13 @@ export const LINE_CP_L = 3
 export const LINE_MU_L = 5
 export const LINE_K_L = 7
 export const FILM_LINE = 9
+
+/** Places of a coolant line, as those of a film line. */
+export const LINE_RHO = 1
+export const LINE_CP = 3
+export const LINE_MU = 5
+export const LINE_K = 7
+export const COOLANT_LINE = 9
 
 /** Value, slope and half the curvature in temperature of the series last asked for. */
 const about = new Float64Array(3)
@@ -127,4 +137,20 @@ export function fillFilmLine(model: FluidModel, T: number, out: Float64Array, at
   slope(c, first + TERMS, x, scale, out, at + LINE_CP_L)
   slope(c, first + 2 * TERMS, x, scale, out, at + LINE_MU_L)
   slope(c, first + 3 * TERMS, x, scale, out, at + LINE_K_L)
+}
+
+/** Density, specific heat, viscosity and conductivity of a coolant, with their slopes, at `T` [K]. */
+export function fillCoolantLine(model: CoolantModel, T: number, out: Float64Array, at: number): void {
+  const c = model.data
+  const t = Math.min(Math.max(T, model.minTemperature), model.maxTemperature)
+  let base = 0
+  while (t > c[base]) base += COOLANT_STRIDE
+  const x = (t - c[base + 1]) * c[base + 2]
+  const scale = t === T ? c[base + 2] : 0
+  const first = base + COOLANT_SERIES
+  out[at + LINE_REFERENCE] = T
+  slope(c, first, x, scale, out, at + LINE_RHO)
+  slope(c, first + TERMS, x, scale, out, at + LINE_CP)
+  slope(c, first + 2 * TERMS, x, scale, out, at + LINE_MU)
+  slope(c, first + 3 * TERMS, x, scale, out, at + LINE_K)
 }
