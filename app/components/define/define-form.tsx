@@ -1,12 +1,13 @@
 // The Define form: the base case, what is varied, limits; with the live margin beside it.
 import { type FormEvent, useCallback, useEffect, useMemo, useRef, useState } from 'react'
-import { Form } from 'react-router'
+import { Form, useLocation } from 'react-router'
 import './define.css'
 import { BundleDrawing } from '#app/components/bundle-drawing/bundle-drawing.tsx'
 import { bundleGeometry } from '#app/components/bundle-drawing/layout.ts'
 import { Button, StatusButton } from '#app/components/ui/button.tsx'
 import { MarginNote } from '#app/components/ui/margin-note.tsx'
 import { MarginPage, PageHead } from '#app/components/ui/page.tsx'
+import { tell } from '#app/components/ui/toast.tsx'
 import type { UnitSystem } from '#engine/units.ts'
 import { Bundle, Drive, DutyAndFluid, Economics, Methods, NameAndDescription, Tube } from './case-fields.tsx'
 import { DefineMargin, type MarginFault } from './define-margin.tsx'
@@ -15,6 +16,7 @@ import { type Definition, definitionFromFields, fieldOfFault } from './form-fiel
 import type { FormOptions } from './options.ts'
 import type { Preview } from './preview.ts'
 import { Limits, SweepDesign } from './sweep-fields.tsx'
+import { takeUnsaved } from './unsaved.ts'
 import { type SaveState, useAutosave } from './use-autosave.ts'
 import { useFields } from './use-fields.ts'
 import { usePreview } from './use-preview.ts'
@@ -48,13 +50,21 @@ export function DefineForm({
   refusal,
   acts,
 }: DefineFormProps) {
-  const { fields, set, setAll, undo, canUndo } = useFields(definition, units)
+  const { fields, set, setAll, undo, canUndo, replace } = useFields(definition, units)
+  const place = useLocation().pathname
   const [left, setLeft] = useState<ReadonlySet<string>>(new Set())
   const [tried, setTried] = useState(refusal !== null)
   const form = useRef<HTMLFormElement>(null)
   const current = useMemo(() => definitionFromFields(fields, units), [fields, units])
   const { preview, settled } = usePreview(current, initialPreview)
-  const save = useAutosave(current, draft, mayEdit)
+  const save = useAutosave(current, draft, mayEdit, place)
+  const begun = useRef(JSON.stringify(current))
+  useEffect(() => {
+    const held = mayEdit ? takeUnsaved(place, draft.version, begun.current) : null
+    if (!held) return
+    replace(held)
+    tell('What you had typed before is back.')
+  }, [mayEdit, place, draft.version, replace])
 
   const faults = useMemo(
     () =>

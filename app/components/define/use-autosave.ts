@@ -3,6 +3,7 @@
 import { useEffect, useRef, useState } from 'react'
 import { useFetcher } from 'react-router'
 import type { Definition } from './form-fields.ts'
+import { dropUnsaved, keepUnsaved } from './unsaved.ts'
 
 export type SaveAnswer =
   | { saved: { version: number; savedAt: string } }
@@ -23,6 +24,8 @@ export function useAutosave(
   definition: Definition,
   initial: { version: number; savedAt: string | null },
   enabled: boolean,
+  /** Names what is typed, for the tab to keep until it is saved. */
+  place: string,
 ) {
   const fetcher = useFetcher<SaveAnswer>()
   const written = JSON.stringify(definition)
@@ -55,6 +58,7 @@ export function useAutosave(
     if (answer && 'saved' in answer) {
       version.current = answer.saved.version
       saved.current = sent
+      dropUnsaved(place)
       setState({ kind: 'kept', at: answer.saved.savedAt })
     } else if (answer && 'conflict' in answer) setState({ kind: 'conflict', at: answer.conflict.savedAt })
     else
@@ -63,10 +67,13 @@ export function useAutosave(
         message:
           answer && 'refused' in answer ? answer.refused : 'The draft could not be saved; trying again.',
       })
-  }, [fetcher.state, fetcher.data])
+  }, [fetcher.state, fetcher.data, place])
 
   // Leaving with something unsaved asks once.
   const unsaved = enabled && written !== saved.current
+  useEffect(() => {
+    if (unsaved) keepUnsaved(place, version.current, written)
+  }, [unsaved, place, written])
   useEffect(() => {
     if (!unsaved) return
     const ask = (event: BeforeUnloadEvent) => event.preventDefault()

@@ -29,7 +29,16 @@ const DEFECT: Explanation = {
     'Nothing that was saved is lost. Try again; if it happens twice, tell your administrator what you did.',
 }
 
+/** What browsers say of a script that is not there any more: the page is older than the server. */
+const GONE = /dynamically imported module|importing a module script|error loading route module/i
+
+const OUTDATED: Explanation = {
+  title: 'Rowfall has been updated',
+  reason: 'This page is of the version before. Reload it to go on; drafts and runs are kept.',
+}
+
 export function explain(error: unknown): Explanation & { status: number } {
+  if (error instanceof Error && GONE.test(error.message)) return { ...OUTDATED, status: 503 }
   const status = isRouteErrorResponse(error) ? error.status : 500
   const failure = failureOf(error)
   const known = BY_STATUS[status] ?? (failure ? { title: 'This cannot be done', reason: '' } : DEFECT)
@@ -42,7 +51,11 @@ export function ErrorPage({ error }: { error: unknown }) {
   const here = `${pathname}${search}`
   return (
     <PlainPage>
-      <PageHead over={`Error ${status}`} title={title} reason={reason} />
+      <PageHead
+        over={title === OUTDATED.title ? undefined : `Error ${status}`}
+        title={title}
+        reason={reason}
+      />
       <div className="flex flex-wrap gap-2">
         {signIn ? (
           <Link className={buttonClass('main')} to={`/sign-in?returnTo=${encodeURIComponent(here)}`}>
@@ -55,7 +68,7 @@ export function ErrorPage({ error }: { error: unknown }) {
         )}
         {status >= 500 ? (
           <a className={buttonClass()} href={here}>
-            Try again
+            {title === OUTDATED.title ? 'Reload' : 'Try again'}
           </a>
         ) : null}
       </div>
