@@ -7,6 +7,7 @@ const scene = await Scene.open((line) => console.error(line))
 const outcomes: Outcome[] = []
 try {
   outcomes.push(await scene.killWorkers(kills, Math.max(10, 1.5 * kills)))
+  outcomes.push(await scene.killWeb(10))
   outcomes.push(await scene.freezeWorker(12))
   for (let k = 0; k < 3; k++) outcomes.push(await scene.restartDatabase(10))
   outcomes.push(await scene.cutConnections(10))

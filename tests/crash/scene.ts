@@ -4,15 +4,20 @@ import { existsSync, mkdirSync, readdirSync, rmSync } from 'node:fs'
 import net from 'node:net'
 import { dirname, join } from 'node:path'
 import { fileURLToPath } from 'node:url'
+import { eq } from 'drizzle-orm'
 import pg from 'pg'
 import { db, pool } from '#app/db.server.ts'
 import { queue } from '#app/jobs/queue.server.ts'
+import { cookie } from '#app/modules/accounts/cookies.server.ts'
+import { beginSession } from '#app/modules/accounts/sessions.server.ts'
 import { runProgress } from '#app/modules/runs/progress.server.ts'
+import type { RunProgress } from '#app/modules/runs/progress.ts'
 import { measurePointCost } from '#app/modules/runs/run-plan.server.ts'
 import { hashOfColumns } from '#app/modules/runs/store.server.ts'
 import { migrateDatabase } from '#app/start/migrate.ts'
 import { type Cluster, startCluster } from '#drizzle/local-postgres/cluster.mjs'
-import type { Run } from '#drizzle/schema/index.ts'
+import { freePort } from '#drizzle/local-postgres/processes.mjs'
+import { person, projectMember, type Run, study } from '#drizzle/schema/index.ts'
 import { KEY_RESULTS } from '#engine/bundle/key-results.ts'
 import { COLUMNS, evaluateRange } from '#engine/sweep/evaluate-range.ts'
 import { planSweep, type SweepPlan } from '#engine/sweep/plan.ts'
@@ -103,6 +108,8 @@ export class Scene {
     mkdirSync(folder, { recursive: true })
     const cluster = await startCluster(settings(folder))
     process.env.DATABASE_URL = cluster.url
+    process.env.SESSION_SECRET ??= 'only-for-tests-only-for-tests-only-for-tests'
+    process.env.BASE_URL ??= 'http://127.0.0.1:3000'
     await migrateDatabase(cluster.url)
     await queue()
     return new Scene(folder, cluster, log)
@@ -158,6 +165,58 @@ export class Scene {
       this.#cluster = await startCluster(settings(this.#folder))
       this.#log('PostgreSQL is back')
     })
+  }
+
+  /** SIGKILL of the web process while a page polls it; another takes its place and answers where the run is. */
+  async killWeb(seconds: number): Promise<Outcome> {
+    return this.#disturb('web process killed (SIGKILL)', 1, seconds, async (under) => {
+      const cookie = await visitorOf(under)
+      const first = await this.#serve()
+      const before = await askProgress(first.address, under.id, cookie)
+      first.web.kill('SIGKILL')
+      this.#log(`killed the web process ${first.web.pid} at ${before.done} of ${before.points} points`)
+      const second = await this.#serve()
+      try {
+        const after = await askProgress(second.address, under.id, cookie)
+        this.#log(`the next web process says ${after.done} of ${after.points} points`)
+        if (after.points !== under.points || after.done < before.done || after.runId !== under.id)
+          throw new Error(`the web process came back with ${JSON.stringify(after)}`)
+      } finally {
+        second.web.kill('SIGKILL')
+      }
+    })
+  }
+
+  async #serve(): Promise<{ web: ChildProcess; address: string }> {
+    const built = join(ROOT, 'build', 'server', 'web.js')
+    if (!existsSync(built)) throw new Error('The application is not built; npm test and npm start build it.')
+    const port = (await freePort(0)) as number
+    const address = `http://127.0.0.1:${port}`
+    const web = spawn(process.execPath, [built], {
+      cwd: ROOT,
+      env: {
+        ...process.env,
+        NODE_ENV: 'production',
+        DATABASE_URL: this.#cluster.url,
+        BASE_URL: address,
+        HOST: '127.0.0.1',
+        PORT: String(port),
+        OIDC_ISSUER: 'http://127.0.0.1:9',
+        OIDC_CLIENT_ID: 'none',
+        OIDC_CLIENT_SECRET: 'none',
+        ROLE_GROUPS: 'none=engineer',
+        SMTP_URL: '',
+        MAIL_FROM: '',
+        LOCAL_DEMO: '1',
+      },
+      stdio: ['ignore', 'ignore', 'pipe'],
+    })
+    web.stderr?.on('data', (data) => this.#log(`web ${web.pid}: ${String(data).trimEnd()}`))
+    const orphaned = () => web.kill('SIGKILL')
+    process.once('exit', orphaned)
+    web.once('exit', () => process.off('exit', orphaned))
+    await until('the web process answers', async () => (await fetch(`${address}/health`)).ok)
+    return { web, address }
   }
 
   async refuseWrites(seconds: number): Promise<Outcome> {
@@ -278,6 +337,27 @@ export class Scene {
     await admin.query('select pg_reload_conf()')
     await admin.end()
   }
+}
+
+/** Someone who may read the run, as their cookie. */
+async function visitorOf(of: Run): Promise<string> {
+  const subject = crypto.randomUUID()
+  const [{ id }] = await db
+    .insert(person)
+    .values({ name: 'Visitor', email: `${subject}@example.com`, issuer: 'crash', subject, role: 'engineer' })
+    .returning()
+  const [{ projectId }] = await db
+    .select({ projectId: study.projectId })
+    .from(study)
+    .where(eq(study.id, of.studyId))
+  await db.insert(projectMember).values({ projectId, personId: id })
+  return cookie('session', await beginSession(id, { userAgent: 'crash' }), 3600).split(';')[0]
+}
+
+async function askProgress(address: string, runId: string, cookie: string): Promise<RunProgress> {
+  const answer = await fetch(`${address}/runs/${runId}/progress`, { headers: { cookie } })
+  if (!answer.ok) throw new Error(`the progress route answered ${answer.status}: ${await answer.text()}`)
+  return (await answer.json()) as RunProgress
 }
 
 const settings = (folder: string) => ({ folder, packages: join(PRIVATE, 'postgresql'), durable: false })

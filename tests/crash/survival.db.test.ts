@@ -12,6 +12,7 @@ afterAll(() => scene.close())
 
 test.each([
   ['workers killed', () => scene.killWorkers(2, 4)],
+  ['the web process killed', () => scene.killWeb(3)],
   ['a worker frozen', () => scene.freezeWorker(2)],
   ['PostgreSQL restarted', () => scene.restartDatabase(2)],
   ['connections cut', () => scene.cutConnections(2)],
