@@ -7,10 +7,12 @@ import { planOfRevision } from '#app/modules/runs/run-plan.server.ts'
 import { type Analysis, type AnalysisProgress, analysis, run } from '#drizzle/schema/index.ts'
 import { KEY_RESULTS } from '#engine/bundle/key-results.ts'
 import { frontSteps, joinFront } from '#engine/optimise/front.ts'
-import { createOptimiser } from '#engine/optimise/optimise.ts'
+import { createOptimiser, type Optimiser } from '#engine/optimise/optimise.ts'
 import type { SearchState } from '#engine/optimise/search.ts'
+import { isSizing } from '#engine/optimise/space.ts'
 import { objectiveColumn } from '#engine/sweep/objective.ts'
 import type { Study } from '#engine/sweep/study.ts'
+import { joinRobust } from '#engine/uncertainty/robust.ts'
 import { ENGINE_VERSION } from '#engine/version.ts'
 import type { EnginePool } from './pool.server.ts'
 import { holdJob, type Lease, queue, within } from './queue.server.ts'
@@ -163,7 +165,32 @@ async function optimum(work: Work): Promise<AnalysisOf['optimum']['result']> {
     work.part('why', { state }),
     work.part('band', { case: found.case, options: { samples: BAND_SAMPLES, ...work.study.uncertainty } }),
   ])
-  return { found: true, optimum: found, certificate, why, band }
+  const robust = isSizing(work.study) ? await robustOf(work, optimiser, state) : null
+  return { found: true, optimum: found, certificate, why, band, robust }
+}
+
+/** The probability with which a robust optimum meets the duty. */
+const ENOUGH = 0.9
+
+async function robustOf(work: Work, optimiser: Optimiser, state: SearchState) {
+  const { samples, seed, sigmas } = {
+    samples: undefined,
+    seed: undefined,
+    sigmas: undefined,
+    ...work.study.uncertainty,
+  }
+  const options = { probability: ENOUGH, samples, seed, sigmas }
+  let done = 0
+  await work.reached({ stage: 'robust', done, of: state.leaders.length })
+  const candidates = await Promise.all(
+    state.leaders.map(async ({ combination }) => {
+      const candidate = await work.part('robust', { combination, options })
+      done += 1
+      await work.reached({ stage: 'robust', done, of: state.leaders.length })
+      return candidate
+    }),
+  )
+  return joinRobust(optimiser, candidates, options)
 }
 
 /** What a finished run of the same revision by the same engine found: it saves sweeping the study again. */
@@ -205,7 +232,13 @@ async function front(work: Work): Promise<AnalysisOf['front']['result']> {
     }
   }
   await Promise.all(Array.from({ length: work.threads }, go))
-  return { front: joinFront(ends, between, axes), seconds: (performance.now() - begun) / 1000 }
+  const joined = await Promise.all(
+    joinFront(ends, between, axes).map(async (point) => ({
+      ...point,
+      band: await work.part('band', { case: point.case, options: { ...work.study.uncertainty } }),
+    })),
+  )
+  return { front: joined, seconds: (performance.now() - begun) / 1000 }
 }
 
 async function band(work: Work): Promise<AnalysisOf['band']['result']> {

@@ -71,6 +71,9 @@ test('a worker finds the optimum that one thread finds, with certificate, reason
   expect(result.certificate.holds).toBe(true)
   expect(result.why.worth.length).toBeGreaterThan(0)
   expect(result.band?.p10).toBeLessThan(result.band?.p90 as number)
+  // More length than without scatter, and so no less area.
+  expect(result.robust?.margin).toBeGreaterThan(0)
+  expect(result.robust?.objective).toBeGreaterThan(result.optimum.objective)
 })
 
 test('a search that another worker began goes on from where it stood', async () => {

@@ -21,6 +21,7 @@ import { MAX_COMBINATIONS, type Optimum } from '#engine/optimise/optimise.ts'
 import { spaceOf } from '#engine/optimise/space.ts'
 import type { Why } from '#engine/optimise/why.ts'
 import type { Band } from '#engine/uncertainty/bands.ts'
+import type { RobustOptimum } from '#engine/uncertainty/robust.ts'
 import { ENGINE_VERSION } from '#engine/version.ts'
 import { planOfRevision } from '../runs/run-plan.server.ts'
 
@@ -29,10 +30,21 @@ export type AnalysisOf = {
   optimum: {
     request: object
     result:
-      | { found: true; optimum: Optimum; certificate: Certificate; why: Why; band: Band | null }
+      | {
+          found: true
+          optimum: Optimum
+          certificate: Certificate
+          why: Why
+          band: Band | null
+          /** Null where the study gives lengths, or nothing is long enough within the limits. */
+          robust: RobustOptimum | null
+        }
       | { found: false; infeasibility: Infeasibility }
   }
-  front: { request: { axes: FrontAxes; points: number }; result: { front: FrontPoint[]; seconds: number } }
+  front: {
+    request: { axes: FrontAxes; points: number }
+    result: { front: (FrontPoint & { band: Band | null })[]; seconds: number }
+  }
   band: { request: { case: Case; samples: number; seed: number }; result: { band: Band | null } }
 }
 

@@ -51,13 +51,18 @@ export async function optimumPage(studyId: string) {
       revision: front.revision,
       progress: front.progress,
       fault: front.fault,
-      points: (front.result?.front ?? []).map(({ x, y, inputs }) => ({ x, y, inputs: inputsNamed(inputs) })),
+      points: (front.result?.front ?? []).map(({ x, y, inputs, band }) => ({
+        x,
+        y,
+        inputs: inputsNamed(inputs),
+        band: band && { quantity: band.quantity, p10: band.p10, p90: band.p90 },
+      })),
     },
   }
   const { result } = optimum ?? {}
   if (!result) return { ...base, found: null, infeasibility: null }
   if (!result.found) return { ...base, found: null, infeasibility: result.infeasibility }
-  const { optimum: best, certificate, why, band } = result
+  const { optimum: best, certificate, why, band, robust } = result
   return {
     ...base,
     infeasibility: null,
@@ -74,6 +79,13 @@ export async function optimumPage(studyId: string) {
       trace: best.trace.map(({ objective, evaluations }) => ({ objective, evaluations })),
       certificate,
       band,
+      robust: robust && {
+        objective: robust.objective,
+        length: robust.length,
+        margin: robust.margin,
+        statement: robust.statement,
+        inputs: inputsNamed(robust.inputs),
+      },
       worth: why.worth,
       neighbours: why.neighbours.map(({ path, label, from, to, best: near, breaks, reason }) => ({
         path,

@@ -15,6 +15,7 @@ import type { SearchState, Task, TaskResult } from '#engine/optimise/search.ts'
 import { type Why, whyOptimum } from '#engine/optimise/why.ts'
 import type { Study } from '#engine/sweep/study.ts'
 import { type Band, type BandOptions, bandOf } from '#engine/uncertainty/bands.ts'
+import { type RobustCandidate, type RobustOptions, robustCandidate } from '#engine/uncertainty/robust.ts'
 
 /** What each part is asked and what it answers. */
 export type Parts = {
@@ -24,6 +25,7 @@ export type Parts = {
   infeasible: { ask: object; answer: Infeasibility }
   frontEnds: { ask: { axes: FrontAxes }; answer: FrontEnds | null }
   frontPoint: { ask: { axes: FrontAxes; bound: number }; answer: FrontPoint | null }
+  robust: { ask: { combination: number; options: RobustOptions }; answer: RobustCandidate | null }
   band: { ask: { case: Case; options: BandOptions }; answer: Band | null }
 }
 export type Part = keyof Parts
@@ -54,6 +56,8 @@ export function computePart(asked: PartAsked): Parts[Part]['answer'] {
       return frontEnds(JSON.parse(asked.study) as Study, asked.axes)
     case 'frontPoint':
       return frontPointAt(JSON.parse(asked.study) as Study, asked.axes, asked.bound)
+    case 'robust':
+      return robustCandidate(optimiserOf(asked.study), asked.combination, asked.options)
     case 'band':
       return bandOf(asked.case, asked.options)
   }

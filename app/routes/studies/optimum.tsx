@@ -29,7 +29,7 @@ import { actingOf } from '../acting.ts'
 import type { Route } from './+types/optimum'
 import { SafetyNote } from './explore/point-margin.tsx'
 import { Named, objectiveDimension } from './optimum/named.tsx'
-import { BestWithEach, Certificate, FrontSheet, Neighbours, Worth } from './optimum/why.tsx'
+import { BestWithEach, Certificate, FrontSheet, Neighbours, Robust, Worth } from './optimum/why.tsx'
 
 export const meta: Route.MetaFunction = () => [{ title: 'Optimum · Rowfall' }]
 
@@ -168,6 +168,7 @@ export default function Optimum({ loaderData, actionData, params }: Route.Compon
 const STAGES: Record<string, string> = {
   search: 'combinations bounded or searched',
   certificate: 'Checking on dense grids, pricing the limits, drawing samples',
+  robust: 'combinations lengthened until nine of ten samples meet the duty',
   infeasible: 'Nothing meets every limit; finding out which one to relax',
   front: 'points of the front',
 }
@@ -404,6 +405,7 @@ function Found({
           <BandTable band={found.band} />
         </Sheet>
       ) : null}
+      {found.robust ? <Robust robust={found.robust} objective={objective} /> : null}
       <Certificate certificate={found.certificate} searched={searched} rerated={found.rerated} />
     </MarginPage>
   )

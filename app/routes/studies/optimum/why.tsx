@@ -239,6 +239,16 @@ export function FrontSheet({
               x: points.map(({ x }) => toDisplay(x, 'pressure', units).value),
               y: points.map(({ y }) => toDisplay(y, 'area', units).value),
             },
+            ...(points.every(({ band }) => band?.quantity === 'outsideArea')
+              ? (['p10', 'p90'] as const).map((end) => ({
+                  label: end === 'p10' ? '10 % of cases need at most' : '90 % of cases need at most',
+                  x: points.map(({ x }) => toDisplay(x, 'pressure', units).value),
+                  y: points.map(({ band }) => {
+                    const value = band?.[end] ?? null
+                    return value === null ? null : toDisplay(value, 'area', units).value
+                  }),
+                }))
+              : []),
           ]}
         />
       ) : following ? null : (
@@ -252,6 +262,31 @@ export function FrontSheet({
       {stale && points.length > 1 ? (
         <p className="mt-2 text-note text-soft">Of an earlier revision; draw it again.</p>
       ) : null}
+    </Sheet>
+  )
+}
+
+export function Robust({
+  robust,
+  objective,
+}: {
+  robust: NonNullable<Found['robust']>
+  objective: Objective
+}) {
+  return (
+    <Sheet title="The least that is enough in nine of ten cases">
+      <p className="mb-2 text-lead font-bold">
+        <Quantity value={robust.objective} dimension={objectiveDimension(objective)} digits={4} />, with tubes
+        of <Quantity value={robust.length} dimension="length" digits={4} />
+      </p>
+      <p className="max-w-[75ch] text-soft">{robust.statement}</p>
+      <p className="mt-2 text-note">
+        {robust.inputs.map((input) => (
+          <span key={input.path} className="me-3 inline-block">
+            <span className="text-soft">{input.label}</span> <Named shown={input.shown} />
+          </span>
+        ))}
+      </p>
     </Sheet>
   )
 }
