@@ -1,5 +1,6 @@
 // One method: its equation and symbols, where it holds, how it scatters, its source and how well its numbers are known.
 import { Link } from 'react-router'
+import { LineChart } from '#app/components/charts/line-chart.tsx'
 import { Formula } from '#app/components/library/formula-text.tsx'
 import { CHOICE_LABELS, evidenceTone } from '#app/components/library/words.ts'
 import { MarginNote } from '#app/components/ui/margin-note.tsx'
@@ -8,6 +9,7 @@ import { MarginPage, PageHead, Sheet } from '#app/components/ui/page.tsx'
 import { Tag } from '#app/components/ui/tag.tsx'
 import { AppError } from '#app/http/errors.ts'
 import { type Evidence, RANGE_QUANTITIES, type Range, type RangeQuantity } from '#engine/correlations/card.ts'
+import { curvePlot } from '#engine/correlations/curves.ts'
 import { cardsFor, findCard } from '#engine/correlations/registry.ts'
 import type { Route } from './+types/method'
 
@@ -25,8 +27,15 @@ export const handle = {
 export function loader({ params }: Route.LoaderArgs) {
   const card = findCard(params.methodId)
   if (!card) throw new AppError('not-found', `There is no method "${params.methodId}" in the library.`)
+  const plot = curvePlot(card.choice)
   return {
     card,
+    plot: plot?.curves.some(({ id }) => id === card.id)
+      ? {
+          ...plot,
+          curves: [...plot.curves].sort((a, b) => Number(b.id === card.id) - Number(a.id === card.id)),
+        }
+      : null,
     ranges: Object.entries(card.range).map(([quantity, range]) => ({
       quantity,
       ...RANGE_QUANTITIES[quantity as RangeQuantity],
@@ -61,7 +70,7 @@ const EVIDENCE: Record<Evidence, string> = {
 }
 
 export default function Method({ loaderData }: Route.ComponentProps) {
-  const { card, ranges, neighbours } = loaderData
+  const { card, plot, ranges, neighbours } = loaderData
   return (
     <MarginPage
       marginLabel="How well it is known"
@@ -127,6 +136,18 @@ export default function Method({ loaderData }: Route.ComponentProps) {
           </dl>
         ) : null}
       </Sheet>
+      {plot ? (
+        <Sheet title={`${plot.title}, beside its neighbours`}>
+          <LineChart
+            name={plot.title}
+            height={320}
+            x={plot.x}
+            y={plot.y}
+            lines={plot.curves.map(({ name, x, y }) => ({ label: name, x, y }))}
+          />
+          <p className="mt-2 max-w-[70ch] text-note text-soft">Reference case: {plot.reference}.</p>
+        </Sheet>
+      ) : null}
       <Sheet title="Where it holds">
         {card.rangeText ? <p className="mb-3 max-w-[70ch]">{card.rangeText}</p> : null}
         {ranges.length > 0 ? (
