@@ -1,10 +1,12 @@
 // One point’s calculation sheet, printable: its body, and what the present engine finds otherwise.
+import { Link } from 'react-router'
 import { BandTable } from '#app/components/sheet/band.tsx'
 import { PrintButton } from '#app/components/sheet/print-button.tsx'
 import { Said } from '#app/components/sheet/said.tsx'
 import { LinkButton } from '#app/components/ui/button.tsx'
 import { Quantity, useUnits } from '#app/components/ui/number.tsx'
 import { PageHead, Sheet } from '#app/components/ui/page.tsx'
+import { type ByOtherMethods, byOtherMethods } from '#app/modules/explore/alternatives.ts'
 import { describeCase } from '#app/modules/explore/case-words.ts'
 import { resultColumns } from '#app/modules/explore/columns.ts'
 import { type SheetPage, sheetPage } from '#app/modules/explore/explore.server.ts'
@@ -12,10 +14,17 @@ import { keyResultOf, limitStandings } from '#app/modules/explore/limits.ts'
 import { formatQuantity } from '#engine/units.ts'
 import type { Route } from './+types/point'
 import { pointName } from './explore/point-margin.tsx'
+import { OtherMethods } from './point/other-methods.tsx'
 import { SheetBody } from './sheet-body.tsx'
 
 export async function loader({ params, request }: Route.LoaderArgs) {
-  return sheetPage(params.studyId, params.point, new URL(request.url).searchParams.get('run'))
+  const search = new URL(request.url).searchParams
+  const page = await sheetPage(params.studyId, params.point, search.get('run'))
+  return {
+    ...page,
+    // Some twenty evaluations, for whoever asks.
+    byOthers: search.has('methods') ? byOtherMethods(page.sheet.case, page.sheet.result) : null,
+  }
 }
 
 export function meta({ loaderData }: Route.MetaArgs) {
@@ -32,7 +41,13 @@ export default function Point({ loaderData, params }: Route.ComponentProps) {
   return <SheetOfPoint page={loaderData} studyId={params.studyId} />
 }
 
-function SheetOfPoint({ page, studyId }: { page: SheetPage; studyId: string }) {
+function SheetOfPoint({
+  page,
+  studyId,
+}: {
+  page: SheetPage & { byOthers: ByOtherMethods | null }
+  studyId: string
+}) {
   const units = useUnits()
   const { sheet, run, limits, cards } = page
   const { result, names } = sheet
@@ -76,6 +91,15 @@ function SheetOfPoint({ page, studyId }: { page: SheetPage; studyId: string }) {
         cards={cards}
         name={pointName(sheet.point)}
       />
+      {page.byOthers ? (
+        <OtherMethods by={page.byOthers} />
+      ) : (
+        <p className="screen-only">
+          <Link to={`?run=${run.id}&methods=1`} preventScrollReset className="link font-semibold">
+            What other methods say of this point
+          </Link>
+        </p>
+      )}
       {sheet.band ? (
         <Sheet title="How sure the number is">
           <BandTable band={sheet.band} />
