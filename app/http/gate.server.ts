@@ -1,6 +1,6 @@
 // The gate in front of every loader and action: who asks, what the URL's rule says, and what every answer carries.
 import { randomBytes } from 'node:crypto'
-import { and, eq, getTableColumns } from 'drizzle-orm'
+import { and, eq, getTableColumns, sql } from 'drizzle-orm'
 import type { MiddlewareFunction } from 'react-router'
 import { redirect } from 'react-router'
 import { db } from '#app/db.server.ts'
@@ -143,42 +143,45 @@ async function scopeOf(
   personId: string,
 ): Promise<ProjectScope> {
   const id = params[`${scope}Id`]
-  const found = isId(id) ? await find[scope](id, personId) : undefined
+  const found = isId(id) ? await find(scope, id, personId) : undefined
   if (!found)
     throw new AppError('not-found', `There is no such ${scope}, or you are not a member of its project.`)
   return found
 }
 
 const { id: projectId, name: projectName } = getTableColumns(project)
-const member = (personId: string) =>
-  and(eq(projectMember.projectId, projectId), eq(projectMember.personId, personId))
+const wanted = sql.placeholder('id')
+const member = and(
+  eq(projectMember.projectId, projectId),
+  eq(projectMember.personId, sql.placeholder('personId')),
+)
 
-const find: Record<Scope, (id: string, personId: string) => Promise<ProjectScope | undefined>> = {
-  project: async (id, personId) => {
-    const [row] = await db
-      .select({ projectId, projectName })
-      .from(project)
-      .innerJoin(projectMember, member(personId))
-      .where(eq(projectId, id))
-    return row && { ...row, studyId: null, runId: null }
-  },
-  study: async (id, personId) => {
-    const [row] = await db
-      .select({ projectId, projectName, studyId: study.id })
-      .from(study)
-      .innerJoin(project, eq(projectId, study.projectId))
-      .innerJoin(projectMember, member(personId))
-      .where(eq(study.id, id))
-    return row && { ...row, runId: null }
-  },
-  run: async (id, personId) => {
-    const [row] = await db
-      .select({ projectId, projectName, studyId: study.id, runId: run.id })
-      .from(run)
-      .innerJoin(study, eq(study.id, run.studyId))
-      .innerJoin(project, eq(projectId, study.projectId))
-      .innerJoin(projectMember, member(personId))
-      .where(eq(run.id, id))
-    return row
-  },
+/** Asked at every request for something of a project: parsed and planned once a connection. */
+const owners = {
+  project: db
+    .select({ projectId, projectName })
+    .from(project)
+    .innerJoin(projectMember, member)
+    .where(eq(projectId, wanted))
+    .prepare('scope_of_project'),
+  study: db
+    .select({ projectId, projectName, studyId: study.id })
+    .from(study)
+    .innerJoin(project, eq(projectId, study.projectId))
+    .innerJoin(projectMember, member)
+    .where(eq(study.id, wanted))
+    .prepare('scope_of_study'),
+  run: db
+    .select({ projectId, projectName, studyId: study.id, runId: run.id })
+    .from(run)
+    .innerJoin(study, eq(study.id, run.studyId))
+    .innerJoin(project, eq(projectId, study.projectId))
+    .innerJoin(projectMember, member)
+    .where(eq(run.id, wanted))
+    .prepare('scope_of_run'),
+} satisfies Record<Scope, unknown>
+
+async function find(scope: Scope, id: string, personId: string): Promise<ProjectScope | undefined> {
+  const [row] = await owners[scope].execute({ id, personId })
+  return row && { studyId: null, runId: null, ...row }
 }

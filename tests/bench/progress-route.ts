@@ -17,7 +17,8 @@ import { openBenchDatabase } from './database.ts'
 const ROOT = fileURLToPath(new URL('../..', import.meta.url))
 const RUNS = 10
 const PAGES = 50
-const SECONDS = 15
+const WARM_UP_SECONDS = 5
+const SECONDS = 20
 const POLL_MS = 1000
 
 export async function benchProgressRoute(): Promise<{ p95Ms: number | null }> {
@@ -50,7 +51,9 @@ export async function benchProgressRoute(): Promise<{ p95Ms: number | null }> {
     }
     await answering(`${base}/health`)
     const waits: number[] = []
-    const until = performance.now() + SECONDS * 1000
+    // A web process that has just begun compiles its first answers; what is measured is one that serves.
+    const since = performance.now() + WARM_UP_SECONDS * 1000
+    const until = since + SECONDS * 1000
     await Promise.all(
       Array.from({ length: PAGES }, async (_, page) => {
         await pause((page / PAGES) * POLL_MS)
@@ -60,7 +63,7 @@ export async function benchProgressRoute(): Promise<{ p95Ms: number | null }> {
           const progress = (await response.json()) as { points: number }
           if (!response.ok || progress.points !== 1_000_000)
             throw new Error(`answered ${response.status}: ${JSON.stringify(progress)}`)
-          waits.push(performance.now() - started)
+          if (started >= since) waits.push(performance.now() - started)
           await pause(POLL_MS)
         }
       }),

@@ -29,30 +29,34 @@ export async function beginSession(
   return token
 }
 
+/** Asked at every request: parsed and planned once a connection. */
+const openSession = db
+  .select({
+    personId: person.id,
+    name: person.name,
+    email: person.email,
+    role: person.role,
+    units: person.units,
+    theme: person.theme,
+    sessionId: session.publicId,
+    stale: sql<boolean>`${session.seenAt} < now() - make_interval(secs => ${sql.raw(String(TOUCH_SECONDS))})`,
+  })
+  .from(session)
+  .innerJoin(person, eq(person.id, session.personId))
+  .where(
+    and(
+      eq(session.idHash, sql.placeholder('idHash')),
+      isNull(session.revokedAt),
+      gt(session.expiresAt, sql`now()`),
+      isNull(person.removedAt),
+    ),
+  )
+  .prepare('open_session')
+
 /** The person a token stands for, with the role they have now; null when it stands for nobody any more. */
 export async function viewerOfSession(token: string): Promise<Viewer | null> {
   const idHash = tokenHash('session', token)
-  const [row] = await db
-    .select({
-      personId: person.id,
-      name: person.name,
-      email: person.email,
-      role: person.role,
-      units: person.units,
-      theme: person.theme,
-      sessionId: session.publicId,
-      stale: sql<boolean>`${session.seenAt} < now() - make_interval(secs => ${TOUCH_SECONDS})`,
-    })
-    .from(session)
-    .innerJoin(person, eq(person.id, session.personId))
-    .where(
-      and(
-        eq(session.idHash, idHash),
-        isNull(session.revokedAt),
-        gt(session.expiresAt, sql`now()`),
-        isNull(person.removedAt),
-      ),
-    )
+  const [row] = await openSession.execute({ idHash })
   if (!row?.role) return null
   const { stale, role, ...viewer } = row
   if (stale) {
