@@ -48,6 +48,22 @@ test('the CSV file’s numbers are the stored ones, every point, in order', asyn
   })
 })
 
+test('a filtered CSV file has the points that pass, and no other', async () => {
+  const max = 60_000
+  const response = await csvResponse(done.id, {
+    outcome: 'evaluated',
+    ranges: { coolantPressureDrop: { max } },
+  })
+  const [head, ...lines] = (await response.text()).trimEnd().split('\r\n')
+  const at = head.split(',').indexOf('point')
+  const expected = stored.flatMap(({ point, outcome, coolant_pressure_drop_pa: drop }) =>
+    outcome === 0 && drop !== null && drop <= max ? Number(point) : [],
+  )
+  expect(expected.length).toBeGreaterThan(0)
+  expect(expected.length).toBeLessThan(done.points)
+  expect(lines.map((line) => Number(line.split(',')[at]))).toEqual(expected)
+})
+
 test('the workbook’s numbers are the stored ones, every point, in order', async () => {
   const response = await workbookResponse(done.id)
   const book = new ExcelJS.Workbook()

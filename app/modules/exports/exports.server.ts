@@ -3,7 +3,8 @@ import { PassThrough, Readable } from 'node:stream'
 import { createReadableStreamFromReadable } from '@react-router/node'
 import { AppError } from '#app/http/errors.ts'
 import { readTable } from '#app/modules/points/column-copy.server.ts'
-import { pointSheet, refinedBest } from '#app/modules/points/points.server.ts'
+import type { PointFilters } from '#app/modules/points/point-types.ts'
+import { columnsOfPoints, pointSheet, refinedBest } from '#app/modules/points/points.server.ts'
 import { planOfRevision } from '#app/modules/runs/run-plan.server.ts'
 import { getRun } from '#app/modules/runs/runs.server.ts'
 import { getRevision, getStudy } from '#app/modules/studies/studies.server.ts'
@@ -99,13 +100,28 @@ export async function workbookResponse(runId: string): Promise<Response> {
   })
 }
 
-export async function csvResponse(runId: string): Promise<Response> {
+/** All points, or those that pass the filters. */
+export async function csvResponse(runId: string, filters: PointFilters = {}): Promise<Response> {
   const { name, report } = await reportOfRun(runId)
-  return new Response(createReadableStreamFromReadable(Readable.from(csvLines(report))), {
+  const only = isFilter(filters) ? await markOf(runId, report.points, filters) : undefined
+  return new Response(createReadableStreamFromReadable(Readable.from(csvLines({ ...report, only }))), {
     headers: {
       'Content-Type': 'text/csv; charset=utf-8',
       'Content-Disposition': attachment(name, 'csv'),
       ...NO_STORE,
     },
   })
+}
+
+const isFilter = ({ outcome, meetingLimits, ranges = {}, inputs = {} }: PointFilters): boolean =>
+  outcome !== undefined ||
+  meetingLimits === true ||
+  Object.keys(ranges).length > 0 ||
+  Object.keys(inputs).length > 0
+
+async function markOf(runId: string, points: number, filters: PointFilters): Promise<Uint8Array> {
+  const { points: found } = await columnsOfPoints(runId, [], filters)
+  const mark = new Uint8Array(points)
+  for (const point of found) mark[point] = 1
+  return mark
 }

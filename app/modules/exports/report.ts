@@ -26,6 +26,8 @@ export type StudyReport = {
   origin: readonly (readonly [string, string])[]
   /** Points reported, from 0: fewer than the plan's where a run was cancelled. */
   points: number
+  /** Where given, only points marked here are listed. */
+  only?: Uint8Array
   /** Key results of `count` points from `first`, column by column; a point without results is NaN throughout. */
   table(first: number, count: number): Promise<Float64Array>
   /** The best point, and the refined one where there is one. */

@@ -87,7 +87,7 @@ export async function action({ request, params, context }: Route.ActionArgs) {
   const acting = actingOf(context)
   const form = await readForm(request)
   const text = (name: string) => String(form.get(name) ?? '')
-  const require = (permission: Permission) => {
+  const demand = (permission: Permission) => {
     if (!can(role, permission))
       throw new AppError('forbidden', `Your role, ${role}, does not include this; ask a lead of the project.`)
   }
@@ -95,7 +95,7 @@ export async function action({ request, params, context }: Route.ActionArgs) {
   try {
     switch (intent) {
       case 'ask':
-        require('study.edit')
+        demand('study.edit')
         await askReview(
           studyId,
           { runId: text('run'), point: readPoint(text('point')), note: text('note') },
@@ -103,15 +103,15 @@ export async function action({ request, params, context }: Route.ActionArgs) {
         )
         return null
       case 'withdraw':
-        require('study.edit')
+        demand('study.edit')
         await withdrawReview(studyId, acting)
         return null
       case 'return':
-        require('study.accept')
+        demand('study.accept')
         await returnReview(studyId, text('reason'), acting)
         return null
       case 'accept':
-        require('study.accept')
+        demand('study.accept')
         return redirect(
           `/projects/${projectId}/records/${await acceptReview(studyId, text('reason'), acting)}`,
         )
