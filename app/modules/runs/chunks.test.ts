@@ -5,7 +5,8 @@ import { chunkCount, chunkPointsFor, chunkRange, slicePointsFor, summarise } fro
 test('a chunk holds 0.15 s of one core, within bounds', () => {
   expect(chunkPointsFor(65e-6, 1_000_000)).toBe(2308)
   expect(chunkPointsFor(5e-6, 1_000_000)).toBe(5000)
-  expect(chunkPointsFor(1, 1_000_000)).toBe(50)
+  expect(chunkPointsFor(1, 20_000)).toBe(50)
+  expect(chunkPointsFor(1, 1_000_000)).toBe(1000)
   expect(chunkPointsFor(65e-6, 12)).toBe(12)
 })
 

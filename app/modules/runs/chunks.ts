@@ -9,11 +9,14 @@ const CHUNK_SECONDS = 0.15
 /** More rows in a stored array read no faster. */
 const CHUNK_POINTS_MAX = 5000
 const CHUNK_POINTS_MIN = 50
+/** More chunks cost the queue and every reader more than they save, however dear a point was when it was measured. */
+const CHUNKS_MAX = 1000
 
 /** Points a chunk holds when one point costs so much. */
 export function chunkPointsFor(secondsPerPoint: number, points: number): number {
   const wanted = Math.round(CHUNK_SECONDS / Math.max(secondsPerPoint, 1e-9))
-  return Math.min(points, Math.max(CHUNK_POINTS_MIN, Math.min(CHUNK_POINTS_MAX, wanted)))
+  const least = Math.max(CHUNK_POINTS_MIN, Math.ceil(points / CHUNKS_MAX))
+  return Math.min(points, Math.max(least, Math.min(CHUNK_POINTS_MAX, wanted)))
 }
 
 export const chunkCount = (run: { points: number; chunkPoints: number }): number =>

@@ -46,6 +46,7 @@ export function readStudy(definition: Record<string, unknown>): Study {
 
 const SAMPLE_POINTS = 32
 const SAMPLE_MS = 200
+const PASSES_MIN = 3
 
 /** Seconds that one point costs one core, measured on points spread over the study. */
 export function measurePointCost(plan: SweepPlan): number {
@@ -54,12 +55,12 @@ export function measurePointCost(plan: SweepPlan): number {
   const begun = performance.now()
   // The first passes compile; the least of whole passes is what a warm thread needs.
   let least = Number.POSITIVE_INFINITY
-  do {
+  for (let pass = 0; pass < PASSES_MIN || performance.now() - begun < SAMPLE_MS; pass++) {
     const started = performance.now()
     for (let k = 0; k < sample; k++)
       evaluateRange(plan, Math.floor(((k + 0.5) * plan.points) / sample), 1, out)
     least = Math.min(least, (performance.now() - started) / 1000 / sample)
-  } while (performance.now() - begun < SAMPLE_MS)
+  }
   return least
 }
 
