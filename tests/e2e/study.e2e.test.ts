@@ -113,6 +113,20 @@ test('runs it and explores the finding', async () => {
   expect(await page.locator('tbody tr').count()).toBeGreaterThan(5)
 })
 
+test('keeps the view under a name and comes back to it', async () => {
+  const address = `${inject('applicationUrl')}/studies/${study}/explore`
+  await page.goto(`${address}?sort=tubeLength&dir=down&all=1`)
+  await page.locator('summary[aria-label="Saved views"]').click()
+  await page.getByLabel('Save this view as').fill('Longest first')
+  await page.getByRole('button', { name: 'Save', exact: true }).click()
+  await page.getByRole('link', { name: 'Longest first' }).waitFor()
+  await page.goto(address)
+  await page.locator('summary[aria-label="Saved views"]').click()
+  await page.getByRole('link', { name: 'Longest first' }).click()
+  await page.waitForURL(/sort=tubeLength/)
+  await page.goto(address)
+})
+
 test('takes the workbook, whose numbers are the page’s', async () => {
   const area = Number(/kPa: ([\d.]+)/.exec((await page.locator('h1').textContent()) ?? '')?.[1])
   const point = Number(

@@ -8,6 +8,7 @@ import {
   useNavigation,
   useRevalidator,
 } from 'react-router'
+import { type SavedViewEntry, SavedViews } from '#app/components/explore/saved-views.tsx'
 import { Said } from '#app/components/sheet/said.tsx'
 import { ColumnChoice } from '#app/components/table/column-choice.tsx'
 import { PointsTable, type TableColumn, type TableRow } from '#app/components/table/points-table.tsx'
@@ -18,6 +19,8 @@ import { Digits, Quantity, useUnits } from '#app/components/ui/number.tsx'
 import { groupedText } from '#app/components/ui/number-format.ts'
 import { EmptyState, PageHead, PlainPage, Sheet } from '#app/components/ui/page.tsx'
 import { ProgressBar } from '#app/components/ui/progress.tsx'
+import { viewerContext } from '#app/http/context.ts'
+import { listViews } from '#app/modules/comparisons/saved.server.ts'
 import { describeCase } from '#app/modules/explore/case-words.ts'
 import { type PointColumn, pointColumns, shown, unitOf, usualColumns } from '#app/modules/explore/columns.ts'
 import { type ExploreRun, explorePage } from '#app/modules/explore/explore.server.ts'
@@ -37,8 +40,16 @@ import { PointMargin, pointName } from './explore/point-margin.tsx'
 import { useSteady } from './explore/use-steady.ts'
 import '#app/components/explore/explore.css'
 
-export async function loader({ params, request }: Route.LoaderArgs) {
-  return explorePage(params.studyId, new URL(request.url).searchParams)
+export async function loader({ params, request, context }: Route.LoaderArgs) {
+  const { personId } = context.get(viewerContext)
+  const [page, views] = await Promise.all([
+    explorePage(params.studyId, new URL(request.url).searchParams),
+    listViews(params.studyId, personId),
+  ])
+  return {
+    ...page,
+    views: views.map(({ createdBy, ...view }) => ({ ...view, own: createdBy === personId })),
+  }
 }
 
 /** A jump within the page changes nothing that is shown. */
@@ -73,10 +84,18 @@ export default function Explore({ loaderData, params }: Route.ComponentProps) {
         </EmptyState>
       </PlainPage>
     )
-  return <ExploreRunPage page={loaderData} studyId={params.studyId} />
+  return <ExploreRunPage page={loaderData} views={loaderData.views} studyId={params.studyId} />
 }
 
-function ExploreRunPage({ page, studyId }: { page: ExploreRun; studyId: string }) {
+function ExploreRunPage({
+  page,
+  views,
+  studyId,
+}: {
+  page: ExploreRun
+  views: readonly SavedViewEntry[]
+  studyId: string
+}) {
   const units = useUnits()
   const { search: searchText } = useLocation()
   const search = useMemo(() => new URLSearchParams(searchText), [searchText])
@@ -160,7 +179,7 @@ function ExploreRunPage({ page, studyId }: { page: ExploreRun; studyId: string }
           <PageHead
             title={<Said>{headline}</Said>}
             reason={<Said>{reason.join(' ')}</Said>}
-            acts={<RunActs page={page} search={search} studyId={studyId} />}
+            acts={<RunActs page={page} views={views} search={search} studyId={studyId} />}
           />
           {isFinal(progress.state) ? null : (
             <div className="grid gap-2">
@@ -305,7 +324,17 @@ function ExploreLayout({
   )
 }
 
-function RunActs({ page, search, studyId }: { page: ExploreRun; search: URLSearchParams; studyId: string }) {
+function RunActs({
+  page,
+  views,
+  search,
+  studyId,
+}: {
+  page: ExploreRun
+  views: readonly SavedViewEntry[]
+  search: URLSearchParams
+  studyId: string
+}) {
   const { run, runs } = page
   const filtered = new URLSearchParams(
     [...search].filter(
@@ -316,6 +345,8 @@ function RunActs({ page, search, studyId }: { page: ExploreRun; search: URLSearc
   const query = filtered === '' ? '' : `?${filtered}`
   return (
     <>
+      <LinkButton to={`/studies/${studyId}/optimum`}>Optimum</LinkButton>
+      <SavedViews studyId={studyId} views={views} />
       {runs.length > 1 ? (
         <Menu
           label={`Run of revision ${run.revision}`}
