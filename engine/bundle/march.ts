@@ -528,7 +528,11 @@ export class BundleMarch extends RowMarch {
     let T = s.inletTemperature
     for (let j = 0; j < s.passes; j++) {
       this.passIn[j] = T
-      T += this.passHeat[j] / (this.flow * this.passSpecificHeat[j])
+      // The pass's own mean temperature, which sweeps that settle slowly may have left a little behind.
+      let rise = this.passHeat[j] / (this.flow * this.passSpecificHeat[j])
+      for (let n = 0; n < 2; n++)
+        rise = this.passHeat[j] / (this.flow * this.specificHeatAt(j, T + 0.5 * rise))
+      T += rise
       this.passOut[j] = T
     }
     if (outsideRange(s.coolant as CoolantModel, T)) return OUTCOME.coolantOutletOutsideRange

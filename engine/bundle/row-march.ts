@@ -213,6 +213,10 @@ export class RowMarch {
   private readonly rowLossPerVapour = new Float64Array(MAX_ROWS)
   private readonly rowLossPerLiquid = new Float64Array(MAX_ROWS)
   private readonly rowLossPerDensity = new Float64Array(MAX_ROWS)
+  private readonly rowLossPerLiquidDensity = new Float64Array(MAX_ROWS)
+  private readonly rowLossPerLiquidViscosity = new Float64Array(MAX_ROWS)
+  private readonly rowLossWetShare = new Float64Array(MAX_ROWS)
+  private readonly rowLossWetPower = new Float64Array(MAX_ROWS)
   private readonly rowLossByVapour = new Float64Array(MAX_ROWS)
   private readonly rowLossByLiquid = new Float64Array(MAX_ROWS)
   private readonly rowLossByDensity = new Float64Array(MAX_ROWS)
@@ -819,7 +823,10 @@ export class RowMarch {
       const a = this.rowLossByVapour[r] * more
       const b = this.rowLossByLiquid[r] * wetter
       const c = -this.rowLossByDensity[r] * denser
-      const sum = a + b + c
+      // The film's own properties move by little here: their first order is enough.
+      const thicker = this.rowDensity[r] * this.rowLossPerLiquidDensity[r] - 1
+      const slower = this.rowViscosity[r] * this.rowLossPerLiquidViscosity[r] - 1
+      const sum = a + b + c - this.rowLossWetShare[r] * (thicker + this.rowLossWetPower[r] * slower)
       return this.rowLoss[r] * (1 + sum + 0.5 * (sum * sum - a * more - b * wetter - c * denser))
     }
     const throat = vapourFlux / (rhoV * this.fmin)
@@ -828,6 +835,7 @@ export class RowMarch {
     let byVapour = 2 + this.loss[XI_POWER]
     let byLiquid = 0
     let byDensity = 1
+    this.rowLossWetShare[r] = 0
     if (this.twoPhase) {
       const rhoL = this.rowDensity[r]
       const slow = liquidFlux / (rhoL * this.fmin)
@@ -837,7 +845,12 @@ export class RowMarch {
       const shared = 0.5 * (both - loss - wet)
       byDensity = (loss + shared) / both
       byVapour *= byDensity
-      byLiquid = ((2 + this.loss[XI_POWER]) * (wet + shared)) / both
+      const share = (wet + shared) / both
+      byLiquid = (2 + this.loss[XI_POWER]) * share
+      this.rowLossWetShare[r] = share
+      this.rowLossWetPower[r] = this.loss[XI_POWER]
+      this.rowLossPerLiquidDensity[r] = 1 / rhoL
+      this.rowLossPerLiquidViscosity[r] = 1 / this.rowViscosity[r]
       loss = this.factors.twoPhase * both
     }
     loss *= this.factors.vapourDrop
@@ -1028,6 +1041,13 @@ export class RowMarch {
     const gamma = cp > R ? Math.min(5 / 3, Math.max(1, cp / (cp - R))) : 1.1
     const speed = Math.sqrt((gamma * p) / this.rowVapourDensity[row])
     return Number.isFinite(speed) ? speed : Number.POSITIVE_INFINITY
+  }
+
+  /** Specific heat of the coolant in pass `j` at `T`, along the pass's line. */
+  protected specificHeatAt(j: number, T: number): number {
+    const at = 2 * j * COOLANT_LINE
+    const off = T - this.passLines[at + LINE_REFERENCE]
+    return this.passLines[at + LINE_CP] + off * this.passLines[at + LINE_CP + 1]
   }
 
   /** Heat of pass `j` if it started at `T`: one that starts warmer takes up less, in proportion to its driving difference. */
