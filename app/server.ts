@@ -1,4 +1,5 @@
 // The web process: static files, then React Router. Stateless; any number may serve one database.
+import { readdirSync } from 'node:fs'
 import { createRequestHandler } from '@react-router/express'
 import compression from 'compression'
 import express from 'express'
@@ -23,7 +24,13 @@ app.use((request, response, next) => {
 })
 const files = { setHeaders: (response: express.Response) => void response.set(FIXED_HEADERS) }
 app.use('/assets', express.static('build/client/assets', { immutable: true, maxAge: '1y', ...files }))
-app.use(express.static('build/client', { maxAge: '1h', ...files }))
+const outside = express.static('build/client', { maxAge: '1h', ...files })
+// Asking the disk at every request whether it is for a file would take longer than some answers.
+const outsideNames = new Set(readdirSync('build/client'))
+app.use((request, response, next) => {
+  if (outsideNames.has(request.path.slice(1))) outside(request, response, next)
+  else next()
+})
 app.all(
   '*path',
   createRequestHandler({

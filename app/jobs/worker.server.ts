@@ -60,9 +60,9 @@ export class JobWorker {
     this.#log = options.log ?? (() => {})
   }
 
-  /** While one chunk is computed another is stored; many threads share a chunk for too short a time to hide that. */
+  /** While one chunk is computed another is stored and a third fetched; many threads share a chunk too briefly for that. */
   get #capacity(): number {
-    return 2 + Math.floor(this.pool.threads / 4)
+    return 3 + Math.floor(this.pool.threads / 4)
   }
 
   /** Works until drained. */

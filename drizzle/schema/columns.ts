@@ -9,18 +9,18 @@ const FLOAT8_OID = 701
 
 /** PostgreSQL's binary form of a one-dimensional float8[] without nulls; node-postgres sends a Buffer unchanged. */
 export function encodeFloat8Array(values: Float64Array): Buffer {
-  const bytes = Buffer.allocUnsafe(20 + values.length * 12)
-  bytes.writeInt32BE(values.length === 0 ? 0 : 1, 0)
-  bytes.writeInt32BE(0, 4)
-  bytes.writeInt32BE(FLOAT8_OID, 8)
-  if (values.length === 0) return bytes.subarray(0, 12)
-  bytes.writeInt32BE(values.length, 12)
-  bytes.writeInt32BE(1, 16)
-  let at = 20
-  for (let i = 0; i < values.length; i++) {
-    bytes.writeInt32BE(8, at)
-    bytes.writeDoubleBE(values[i], at + 4)
-    at += 12
+  const bytes = Buffer.allocUnsafe(values.length === 0 ? 12 : 20 + values.length * 12)
+  // A view writes several times faster than the buffer's own methods.
+  const view = new DataView(bytes.buffer, bytes.byteOffset, bytes.byteLength)
+  view.setInt32(0, values.length === 0 ? 0 : 1)
+  view.setInt32(4, 0)
+  view.setInt32(8, FLOAT8_OID)
+  if (values.length === 0) return bytes
+  view.setInt32(12, values.length)
+  view.setInt32(16, 1)
+  for (let i = 0, at = 20; i < values.length; i++, at += 12) {
+    view.setInt32(at, 8)
+    view.setFloat64(at + 4, values[i])
   }
   return bytes
 }
