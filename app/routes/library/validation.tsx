@@ -22,7 +22,7 @@ export const handle = {
 export function loader() {
   const rows = validationReport()
   const printed = new Set(
-    rows.filter(({ evidence }) => evidence.startsWith('printed')).flatMap((row) => row.cards),
+    rows.filter(({ evidence }) => evidence.startsWith('printed value')).flatMap((row) => row.cards),
   )
   const unverified = cards
     .filter((card) => card.default && card.methodId !== undefined && !printed.has(card.id))
