@@ -15,6 +15,7 @@ export default [
     route('projects', 'routes/projects/list.tsx'),
     route('projects/:projectId', 'routes/projects/project.tsx'),
     route('projects/:projectId/compare', 'routes/projects/compare.tsx'),
+    route('projects/:projectId/bench-data', 'routes/projects/bench-data.tsx'),
     route('projects/:projectId/records/:recordId', 'routes/projects/record.tsx'),
     route('projects/:projectId/history', 'routes/projects/history.tsx'),
 

@@ -38,6 +38,7 @@ export const rules: Record<string, UrlRules> = {
   // Whoever may read may also save comparisons and views, and comment; decisions are checked act by act.
   '/projects/:projectId/compare': { loader: readProject, action: readProject },
   '/projects/:projectId/compare.csv': { loader: readProject, resource: true },
+  '/projects/:projectId/bench-data': { loader: readProject, action: { can: 'study.edit', scope: 'project' } },
   '/projects/:projectId/records/:recordId': {
     loader: readProject,
     action: { can: 'study.accept', scope: 'project' },

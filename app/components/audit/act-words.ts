@@ -3,6 +3,10 @@
 const WORDS: Record<string, string> = {
   'analysis.ask': 'asked for an analysis',
   'analysis.cancel': 'cancelled an analysis',
+  'benchData.delete': 'deleted measured points',
+  'benchData.fit': 'fitted a factor to measured points',
+  'benchData.map': 'chose the columns of measured points',
+  'benchData.upload': 'uploaded measured points',
   'comment.add': 'wrote a comment',
   'comment.withdraw': 'withdrew a comment',
   'comparison.delete': 'deleted a comparison',

@@ -277,7 +277,9 @@ export function definitionFromFields(fields: Fields, units: UnitSystem): Definit
         setPath(limits, `${limit.id}.${side}`, writtenAs(text, limit.dimension, undefined, units))
     }
   if (Object.keys(limits).length > 0) definition.limits = limits
-  return { ...definition, ...restOf(fields) }
+  const rest = restOf(fields)
+  if (Array.isArray(rest.corrections)) kase.corrections = rest.corrections
+  return { ...definition, ...pick(rest, REST_KEYS) }
 }
 
 /** What a study file may hold and the form does not show goes through unchanged. */
@@ -285,7 +287,7 @@ function restOf(fields: Fields): Raw {
   if (!fields.rest) return {}
   try {
     const rest: unknown = JSON.parse(fields.rest)
-    return isRecord(rest) ? pick(rest, REST_KEYS) : {}
+    return isRecord(rest) ? rest : {}
   } catch {
     return {}
   }
@@ -526,7 +528,7 @@ export function fieldsFromDefinition(definition: Definition, units: UnitSystem):
     }
   }
   fields['sweep.order'] = order.join(' ')
-  const rest = pick(definition, REST_KEYS)
+  const rest = { ...pick(definition, REST_KEYS), ...pick(kase, ['corrections']) }
   if (Object.keys(rest).length > 0) fields.rest = JSON.stringify(rest)
   return fields
 }

@@ -124,6 +124,9 @@ export default function Project({ loaderData, actionData }: Route.ComponentProps
                 Compare the chosen
               </Button>
             ) : null}
+            <LinkButton to={`/projects/${project.id}/bench-data`} look="quiet">
+              Bench data
+            </LinkButton>
             <LinkButton to={`/projects/${project.id}/history`} look="quiet">
               History
             </LinkButton>
