@@ -284,7 +284,7 @@ export class Scene {
     this.#log(`${what}: run of ${planned.points} points in chunks of ${planned.chunkPoints}`)
     await until('the run is under way', async () => (await runProgress(planned.id)).done > 0, 120_000)
     await disturb(planned)
-    const done = await ended(planned.id, 300_000)
+    const done = await endedUnlessStuck(planned.id)
     return {
       what,
       times,
@@ -336,6 +336,19 @@ export class Scene {
     await admin.query(`alter system set default_transaction_read_only = ${on ? 'on' : 'off'}`)
     await admin.query('select pg_reload_conf()')
     await admin.end()
+  }
+}
+
+/** However slow the machine: a run is stuck when nothing of it was stored for so long. */
+const STUCK_MS = 90_000
+
+async function endedUnlessStuck(runId: string): Promise<Run> {
+  for (let before = -1; ; ) {
+    const { done } = await runProgress(runId)
+    if (done === before) throw new Error(`the run is stuck at ${done} points`)
+    before = done
+    const run = await ended(runId, STUCK_MS).catch(() => null)
+    if (run) return run
   }
 }
 

@@ -214,6 +214,7 @@ export async function limitEffects(runId: string): Promise<LimitEffect[]> {
   ])
   const effects: LimitEffect[] = []
   for (const [bit, { id, result }] of LIMITS.entries()) {
+    if (!limits[id]) continue
     const values = await points.column(result)
     for (const side of ['min', 'max'] as const) {
       const bound = limits[id]?.[side]
