@@ -31,6 +31,7 @@ const definition: Definition = {
       velocity: '1.5 m/s',
       foulingResistance: 1.76e-4,
     },
+    corrections: [{ name: 'Stand B', group: 'film', factor: 0.92, source: '8 measured points' }],
     tube: {
       outsideDiameter: '3/4 in',
       wallThickness: '1.245 mm',
