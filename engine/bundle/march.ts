@@ -31,7 +31,7 @@ const SLOWEST_PACE = 0.95
 /** Sweeps after which the quick loop gives way to the bracketed search. */
 const QUICK_SWEEPS = 80
 /** Sweeps that one trial of the bracketed search may take. */
-const TRIAL_SWEEPS = 200
+const TRIAL_SWEEPS = 1000
 /** Rounds that a point's first guess takes. */
 const GUESSES = 4
 /** Sweeps after which what swings from one to the next is damped. */
