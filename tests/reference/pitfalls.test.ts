@@ -270,3 +270,11 @@ describe('plates', () => {
     expect(shearedPlate(1, 10, 990.2, 0.0831, 5.96e-4, 0.6375, 2.382e6, -1)).toBeNaN()
   })
 })
+
+describe('one law for all fluids', () => {
+  it('does not hold: steam drips at low pressure where R134a falls in sheets', () => {
+    const last = (rows: readonly { drainageMode: string | null }[]) => rows[rows.length - 1].drainageMode
+    expect(last(vacuum().rows)).toBe('droplet')
+    expect(['columnSheet', 'sheet', 'column']).toContain(last(chiller({}, { rows: 16 }).rows))
+  })
+})
