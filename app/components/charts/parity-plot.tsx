@@ -74,7 +74,7 @@ export function ParityPlot({
         </Frame>
       </div>
       <details className="text-note">
-        <summary className="font-semibold text-verdigris-ink">Points as a table</summary>
+        <summary className="list-inside font-semibold text-verdigris-ink">Points as a table</summary>
         <div className="scroll-thin mt-2 max-h-96 overflow-auto">
           <table className="data-table">
             <caption className="visually-hidden">{name}</caption>

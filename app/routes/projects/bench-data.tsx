@@ -512,7 +512,8 @@ function Columns({ bench: { mapping }, answer }: { bench: BenchView; answer: Ans
                 options={TARGET_OPTIONS}
               />
               <SelectField
-                label={<span className="sm:visually-hidden">Unit of {head || `column ${i + 1}`}</span>}
+                label={`Unit of ${head || `column ${i + 1}`}`}
+                hideLabel
                 name={`unit.${i}`}
                 defaultValue={mapping.columns[i]?.unit ?? ''}
                 options={UNIT_OPTIONS}
