@@ -81,6 +81,7 @@ const FIELDS = [
     'length',
     'result',
     'correction',
+    'study',
   ],
   ...[
     'scripted',
@@ -168,7 +169,7 @@ const QUERIES = [
   'min.outsideArea=NaN&max.outsideArea=Infinity&min.__proto__=1&max.=1&outcome=constructor',
   'x=outsideArea&x=duty&y=outsideArea&y=&sort=outsideArea&sort=duty',
   `q=${'%F0%9F%A7%8A'.repeat(1000)}&x=${'x'.repeat(5000)}`,
-  'code=x&state=x&error=x&iss=x',
+  'code=x&state=x&error=x&iss=x&data=%00&result=constructor',
   'returnTo=%00&returnTo=//evil.example&signedOut=%00',
   '%ff=%ff&%00=%00&=&&&',
 ]
