@@ -24,6 +24,7 @@ import {
   columnFaults,
   guessColumns,
   type Measured,
+  MOST_FITTED,
   measuredPoints,
   type RowFault,
   type StoredPoint,
@@ -34,8 +35,6 @@ import { readWorkbook } from './workbook.server.ts'
 type Person = Acting & { personId: string }
 type Raw = Record<string, unknown>
 
-/** A fit evaluates a point some ten times, inside the request: this many take about a second. */
-export const MOST_FITTED = 100
 const MOST_FAULTS = 200
 
 export type Mapping = {

@@ -6,6 +6,9 @@ import type { MeasuredPoint } from '#engine/uncertainty/measured.ts'
 import { acceptedUnits, type Dimension, parseQuantity } from '#engine/units.ts'
 import type { Sheet } from './read.ts'
 
+/** A fit evaluates a point some ten times, inside the request: this many take about a second. */
+export const MOST_FITTED = 100
+
 export const MEASURED = [
   'duty',
   'overallCoefficient',

@@ -20,13 +20,19 @@ import {
   fitBenchData,
   getBenchData,
   listBenchData,
-  MOST_FITTED,
   mapBenchData,
   removeCorrection,
   studyCorrections,
   uploadBenchData,
 } from '#app/modules/bench-data/bench-data.server.ts'
-import { IN_CELL, isMeasured, MEASURED, TARGETS, UNITS } from '#app/modules/bench-data/columns.ts'
+import {
+  IN_CELL,
+  isMeasured,
+  MEASURED,
+  MOST_FITTED,
+  TARGETS,
+  UNITS,
+} from '#app/modules/bench-data/columns.ts'
 import { listStudies } from '#app/modules/studies/studies.server.ts'
 import { KEY_RESULT_INDEX, KEY_RESULTS } from '#engine/bundle/key-results.ts'
 import { MULTIPLIER_GROUPS } from '#engine/bundle/multipliers.ts'

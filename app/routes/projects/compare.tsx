@@ -54,7 +54,7 @@ export const handle = {
   ],
 }
 
-export async function loader({ params, request, context }: Route.LoaderArgs) {
+export async function loader({ request, context }: Route.LoaderArgs) {
   const search = new URL(request.url).searchParams
   const { projectId, projectName } = context.get(projectContext)
   const { personId } = context.get(viewerContext)
