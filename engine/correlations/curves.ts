@@ -193,7 +193,6 @@ const PLOTS: Partial<Record<CardChoice, Plot>> = {
         'inundation.kern': kernRowLocal,
         'inundation.eissenberg': eissenbergRowLocal,
         'inundation.chen': (n) => chenRowLocal(n, jakobNumber),
-        'inundation.none': () => 1,
       }
     },
   },
@@ -223,7 +222,6 @@ const PLOTS: Partial<Record<CardChoice, Plot>> = {
         'vapourShear.rose': (u) => rose(re(u), g4),
         'vapourShear.fujiiUeharaKurata': (u) => fujiiUeharaKurata(re(u), g4, suction, true),
         'vapourShear.fujiiHonda': (u) => fujiiHonda(re(u), g4 / re(u) ** 2),
-        'vapourShear.none': () => nusseltTubeNumber(g4),
       }
     },
   },
@@ -262,7 +260,6 @@ const PLOTS: Partial<Record<CardChoice, Plot>> = {
       'vapourPressureDrop.gaddisGnielinski': (re) => gaddisGnielinski(re, BANK.a, BANK.b, true, 20),
       'vapourPressureDrop.zukauskas': (re) => zukauskas(re, BANK.a, BANK.b, true),
       'vapourPressureDrop.jakob': (re) => jakob(re, BANK.a, BANK.b, true),
-      'vapourPressureDrop.none': () => 0,
     }),
   },
   twoPhase: {
@@ -273,7 +270,6 @@ const PLOTS: Partial<Record<CardChoice, Plot>> = {
     grid: octaves(1e-5, 1e-1, 41),
     laws: () => ({
       'twoPhase.ishihara': (ratio) => ishihara(1, ratio),
-      'twoPhase.none': () => 1,
     }),
   },
 }

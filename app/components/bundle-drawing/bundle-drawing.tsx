@@ -587,7 +587,7 @@ function RowTable({ rows, shape, units }: { rows: readonly RowResult[]; shape: S
   return (
     <details className="screen-only text-note">
       <summary className="font-semibold text-verdigris-ink">Row by row as a table</summary>
-      <div className="scroll-thin mt-2 overflow-x-auto">
+      <div className="scroll-thin relative mt-2 overflow-x-auto">
         <table className="data-table">
           <caption className="visually-hidden">Results of each row, from the top</caption>
           <thead>

@@ -82,11 +82,7 @@ export function DefineMargin({
         ))}
       </section>
 
-      <section
-        aria-labelledby="the-base-case"
-        className={`grid gap-3 ${settled ? '' : 'opacity-70'}`}
-        aria-busy={!settled}
-      >
+      <section aria-labelledby="the-base-case" className="grid gap-3" aria-busy={!settled}>
         <h2 id="the-base-case" className="text-body font-bold">
           The base case
         </h2>

@@ -162,7 +162,7 @@ function ColumnsTable<Row>({
     return <Digits>{dimension === 'temperature' ? shown.toFixed(2) : formatNumber(shown, digits)}</Digits>
   }
   return (
-    <div className="scroll-thin overflow-x-auto">
+    <div className="scroll-thin relative overflow-x-auto">
       <table className="data-table rows-table">
         <caption className="visually-hidden">{caption}</caption>
         <thead>

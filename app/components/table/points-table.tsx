@@ -68,7 +68,10 @@ export function PointsTable(props: PointsTableProps) {
   const stop = rows.some((row) => row.point === selected) ? selected : rows[0]?.point
   return (
     <div>
-      <div className={`scroll-thin overflow-x-auto ${props.busy ? 'opacity-60' : ''}`} aria-busy={props.busy}>
+      <div
+        className={`scroll-thin relative overflow-x-auto ${props.busy ? 'opacity-60' : ''}`}
+        aria-busy={props.busy}
+      >
         <table className="data-table points-table">
           <caption className="visually-hidden">{caption}</caption>
           <thead>

@@ -100,8 +100,12 @@ export function Scroll({
   className?: string
 }) {
   return (
-    // biome-ignore lint/a11y/noNoninteractiveTabindex: what scrolls must be reachable by keyboard
-    <section aria-label={label} tabIndex={0} className={`scroll-thin overflow-x-auto ${className}`}>
+    <section
+      aria-label={label}
+      // biome-ignore lint/a11y/noNoninteractiveTabindex: what scrolls must be reachable by keyboard
+      tabIndex={0}
+      className={`scroll-thin relative min-w-0 overflow-x-auto ${className}`}
+    >
       {children}
     </section>
   )

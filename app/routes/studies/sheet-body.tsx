@@ -130,7 +130,7 @@ function agreement(differs: number): string {
 function LimitsTable({ standings }: { standings: readonly LimitStanding[] }) {
   return (
     <Sheet flush title="Limits">
-      <div className="scroll-thin overflow-x-auto">
+      <div className="scroll-thin relative overflow-x-auto">
         <table className="data-table">
           <caption className="visually-hidden">Limits with their margins</caption>
           <thead>

@@ -57,7 +57,7 @@ export function PinnedPoints({
   const results = resultColumns().filter(({ id }) => RESULTS.has(id))
   return (
     <Sheet flush title={points.length === 1 ? 'Pinned point' : `${points.length} pinned points side by side`}>
-      <div className="scroll-thin overflow-x-auto">
+      <div className="scroll-thin relative overflow-x-auto">
         <table className="data-table">
           <caption className="visually-hidden">Pinned points side by side</caption>
           <thead>

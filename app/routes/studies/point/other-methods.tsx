@@ -24,7 +24,7 @@ export function OtherMethods({ by }: { by: ByOtherMethods }) {
 }
 
 const percent = (change: number) =>
-  change === 0
+  Math.abs(change) < 5e-5
     ? 'the same'
     : `${change > 0 ? '+' : '−'}${significant(Math.abs(change) * 100, Math.abs(change) < 0.1 ? 2 : 3)} %`
 
@@ -41,10 +41,10 @@ function Choice({
 }) {
   const label = CHOICE_LABELS[choice] ?? choice
   return (
-    <section aria-label={label} className="break-inside-avoid">
+    <section aria-label={label} className="min-w-0 break-inside-avoid">
       <h3 className="mb-1 text-note font-bold">
         {label}
-        {spread && spread.greatest > spread.least ? (
+        {spread && spread.greatest > spread.least * 1.00005 ? (
           <span className="font-normal text-soft">
             : <Quantity value={spread.least} dimension={dimension} unit={false} digits={3} /> to{' '}
             <Quantity value={spread.greatest} dimension={dimension} digits={3} />, a spread of{' '}
