@@ -59,7 +59,7 @@ test('the engineer runs a study and puts its best point forward', async () => {
   await page.goto(`${address}/studies/${study}/decide`)
   await page.getByLabel('Note to the lead').fill('The least within the limit.\nSee the vapour side.')
   await page.getByRole('button', { name: 'Ask for a review' }).click()
-  await page.getByText('review asked', { exact: true }).waitFor()
+  await page.locator('.tag', { hasText: 'review asked' }).first().waitFor()
   await page.getByLabel('Your comment').fill('@Lead, the velocity is at its upper end.')
   await page.getByRole('button', { name: 'Comment', exact: true }).click()
   await page.getByText('the velocity is at its upper end').waitFor()
@@ -86,7 +86,7 @@ test('the lead is told, finds the review, and returns it with a reason', async (
     .waitFor()
   await page.getByLabel('Reason').fill('Keep the pressure drop under 35 kPa.')
   await page.getByRole('button', { name: 'Return it' }).click()
-  await page.getByText('returned', { exact: true }).waitFor()
+  await page.locator('.tag', { hasText: 'returned' }).first().waitFor()
 })
 
 test('the engineer reads the reason, amends the limit, runs again and asks again', async () => {
@@ -103,7 +103,7 @@ test('the engineer reads the reason, amends the limit, runs again and asks again
   await run(page)
   await page.goto(`${address}/studies/${study}/decide`)
   await page.getByRole('button', { name: 'Ask for a review' }).click()
-  await page.getByText('review asked', { exact: true }).waitFor()
+  await page.locator('.tag', { hasText: 'review asked' }).first().waitFor()
 })
 
 let record = ''
