@@ -75,6 +75,7 @@ describe('the workbook', async () => {
     expect(text('Summary')).toContain('Invented demo data')
     expect(text('Summary')).toContain('licensed practice')
     expect(text('Summary')).toContain('B2L')
+    expect(text('Summary')).toMatch(/mmonia: viscosity by .+, conductivity by .+\./)
   })
 
   it('has no cell that computes', () => {

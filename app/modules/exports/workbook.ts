@@ -105,18 +105,22 @@ function bandCells(band: Band): [string, Cell][] {
   ]
 }
 
-/** Flammable and toxic fluids, wherever one of the study's points holds one. */
+/** Of each fluid that one of the study's points holds: how well its properties are known, and its safety class. */
 function fluidCautions({ plan }: StudyReport): string[] {
   const swept = plan.variables.find(({ path }) => path === 'fluid')?.values ?? []
   const ids = new Set([plan.study.case.fluid, ...swept].filter((id): id is string => typeof id === 'string'))
   return [...ids].flatMap((id) => {
     const card = findFluid(id)
-    const safety = card?.safetyClass?.value
-    return card && safety && safety !== 'A1'
+    if (!card) return []
+    const { viscosity, conductivity } = card.grades
+    const grades = `${card.name}: viscosity by ${viscosity}, conductivity by ${conductivity}.`
+    const safety = card.safetyClass?.value
+    return safety && safety !== 'A1'
       ? [
+          grades,
           `${card.name}: safety class ${safety}; charge, ventilation and detection follow local codes and licensed practice.`,
         ]
-      : []
+      : [grades]
   })
 }
 
