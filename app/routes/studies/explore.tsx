@@ -336,12 +336,15 @@ function RunActs({
   studyId: string
 }) {
   const { run, runs } = page
-  const filtered = new URLSearchParams(
+  const only = new URLSearchParams(
     [...search].filter(
       ([key]) =>
         /^(min|max)\./.test(key) || key === 'outcome' || page.variables.some(({ path }) => path === key),
     ),
-  ).toString()
+  )
+  // The table leaves out what misses a limit unless asked for all, and so does its file.
+  if (search.get('all') !== '1' && page.aggregates.meetingLimits > 0) only.set('meets', '1')
+  const filtered = only.toString()
   const query = filtered === '' ? '' : `?${filtered}`
   return (
     <>
